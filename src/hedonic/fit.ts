@@ -1,0 +1,66 @@
+/**
+ * Shapes that the computing rooms share. X is n × p without the intercept; groups tie columns to attributes, so that a
+ * choice moves as one attribute. Made by buildDesign and fitColumns; read by valuation and explanation.
+ */
+import type { AttributeForm, ResponseForm } from "../domain/priceModel.ts";
+import type { LeastSquaresSolution } from "../numerics/solveLeastSquares.ts";
+import type { Moments } from "../numerics/accumulateMoments.ts";
+
+export interface DesignColumn {
+  /** Attribute key, CHANNEL_KEY or MARKET_KEY. */
+  readonly attribute: string;
+  /** Level of a choice ("yes" for yes/no), null for numbers. */
+  readonly level: string | null;
+  /** n values in the form's own scale (ln already taken; built → age in years; market → months from the first sale). */
+  readonly values: Float64Array;
+  readonly mean: number;
+}
+
+export interface AttributeGroup {
+  readonly key: string;
+  readonly label: string;
+  readonly form: AttributeForm;
+  readonly unit: string | null;
+  readonly decimals: number;
+  /** One step in the attribute's own unit, and in words: "1,000 h", "against Brannock", "yes", "12 months", "1 % more". */
+  readonly step: number;
+  /** Indexes into Design.columns. */
+  readonly columns: readonly number[];
+  /** Choice: reference level. */
+  readonly reference: string | null;
+  readonly isMarket: boolean;
+}
+
+/** Everything of the reference set, included or not; column order is the order of the model, market last. */
+export interface Design {
+  readonly n: number;
+  readonly responseForm: ResponseForm;
+  /** n responses: price or ln price. */
+  readonly response: Float64Array;
+  /** n prices in major units. */
+  readonly prices: Float64Array;
+  readonly soldOn: Float64Array;
+  readonly columns: readonly DesignColumn[];
+  readonly groups: readonly AttributeGroup[];
+  /** Moments of [...columns, response]. */
+  readonly moments: Moments;
+}
+
+/** A fit of some groups of a design. */
+export interface Fit {
+  readonly design: Design;
+  readonly groups: readonly AttributeGroup[];
+  /** Design column indexes in the order of solution.slopes. */
+  readonly columns: readonly number[];
+  readonly solution: LeastSquaresSolution;
+  readonly leverages: Float64Array;
+  /** HC3 standard errors of the slopes; null when leverage 1 or no residual df forbids them. */
+  readonly hc3StandardErrors: Float64Array | null;
+  readonly hc3InterceptStandardError: number | null;
+}
+
+/** The subject on the design's columns: NaN where not known. */
+export interface SubjectRow {
+  readonly x: Float64Array;
+  readonly notKnown: readonly string[];
+}
