@@ -22,8 +22,10 @@ export interface AttributeGroup {
   readonly form: AttributeForm;
   readonly unit: string | null;
   readonly decimals: number;
-  /** One step in the attribute's own unit, and in words: "1,000 h", "against Brannock", "yes", "12 months", "1 % more". */
+  /** One step on the column's own scale, the one that coefficients are read at: 1000 for hours, ln 1.1 for a ln form, 1 for a choice. */
   readonly step: number;
+  /** The step in words: "1,000 h", "10 % more", "12 months"; null for choice and yes/no, whose words depend on the level. */
+  readonly stepWords: string | null;
   /** Indexes into Design.columns. */
   readonly columns: readonly number[];
   /** Choice: reference level. */
@@ -34,6 +36,8 @@ export interface AttributeGroup {
 /** Everything of the reference set, included or not; column order is the order of the model, market last. */
 export interface Design {
   readonly n: number;
+  /** n indexes into the SaleColumns the design was built from, in the design's own row order (sold on, then id). */
+  readonly rows: Int32Array;
   readonly responseForm: ResponseForm;
   /** n responses: price or ln price. */
   readonly response: Float64Array;
