@@ -1,0 +1,126 @@
+/**
+ * Opens a store: one SQLite file in write-ahead mode, every commit on disk before it returns (synchronous = FULL), brought to
+ * the newest layout first. Other windows and commands may have the same file open.
+ */
+import { existsSync } from "node:fs";
+import { dirname } from "node:path";
+import BetterSqlite3, { type Database } from "better-sqlite3";
+import { AppError } from "../domain/errors.ts";
+import { type AssetClasses, assetClassesOf } from "./assetClasses.ts";
+import { type Attributes, attributesOf } from "./attributes.ts";
+import { type Batches, batchesOf } from "./batches.ts";
+import { type ColumnMatches, columnMatchesOf } from "./columnMatches.ts";
+import { type Drafts, draftsOf } from "./drafts.ts";
+import { type Editions, editionsOf } from "./editions.ts";
+import { type HeldBack, heldBackOf } from "./heldBack.ts";
+import { type Journal, journalOf } from "./journal.ts";
+import { MIGRATIONS, type Migration, migrate } from "./migrate.ts";
+import { type Sales, salesOf } from "./sales.ts";
+import { type SettingsTable, settingsOf } from "./settings.ts";
+import { type Sheets, sheetsOf } from "./sheets.ts";
+import { storeFailure } from "./storeErrors.ts";
+
+export interface Store {
+  readonly path: string;
+  /** Copy that was made before the layout was brought up to date, or null. */
+  readonly backupPath: string | null;
+  readonly assetClasses: AssetClasses;
+  readonly attributes: Attributes;
+  readonly sales: Sales;
+  readonly batches: Batches;
+  readonly heldBack: HeldBack;
+  readonly columnMatches: ColumnMatches;
+  readonly editions: Editions;
+  readonly drafts: Drafts;
+  readonly sheets: Sheets;
+  readonly journal: Journal;
+  readonly settings: SettingsTable;
+  /** Runs `work` (synchronous) whole or not at all. SQLite's own failures come out as AppErrors. */
+  transaction<T>(work: () => T): T;
+  close(): void;
+}
+
+export interface OpenOptions {
+  /** False: refuse when there is no file at the path. */
+  readonly create?: boolean;
+  readonly migrations?: readonly Migration[];
+}
+
+const BUSY_TIMEOUT_MS = 5000;
+
+function refuseMissing(path: string, create: boolean): void {
+  if (path === ":memory:" || existsSync(path)) return;
+  if (create && existsSync(dirname(path))) return;
+  throw new AppError({
+    family: "store",
+    code: create ? "no-such-folder" : "no-such-store",
+    what: create ? "The folder for the store does not exist." : "There is no store at this place.",
+    where: path,
+    whatToDo: create
+      ? "Make the folder, or choose another one."
+      : "Check the name, or import a file of sales to make a store.",
+  });
+}
+
+function connect(path: string): Database {
+  const db = new BetterSqlite3(path, { timeout: BUSY_TIMEOUT_MS });
+  try {
+    db.pragma("foreign_keys = ON");
+    // Without it, INSERT OR REPLACE would delete rows past the triggers that guard them.
+    db.pragma("recursive_triggers = ON");
+    return db;
+  } catch (cause) {
+    db.close();
+    throw cause;
+  }
+}
+
+function prepare(db: Database, path: string, migrations: readonly Migration[]): Store {
+  // Refusals come before the first write, so that a foreign or newer file is left as it was.
+  const backupPath = migrate(db, path, migrations);
+  db.pragma("journal_mode = WAL");
+  db.pragma("synchronous = FULL");
+  const attributes = attributesOf(db);
+  const assetClasses = assetClassesOf(db, attributes);
+  return {
+    path,
+    backupPath,
+    assetClasses,
+    attributes,
+    sales: salesOf(db, assetClasses, attributes),
+    batches: batchesOf(db),
+    heldBack: heldBackOf(db),
+    columnMatches: columnMatchesOf(db),
+    editions: editionsOf(db),
+    drafts: draftsOf(db),
+    sheets: sheetsOf(db),
+    journal: journalOf(db),
+    settings: settingsOf(db),
+    transaction<T>(work: () => T): T {
+      try {
+        return db.transaction(work).immediate();
+      } catch (cause) {
+        throw storeFailure(cause, path);
+      }
+    },
+    close: () => {
+      db.close();
+    },
+  };
+}
+
+/**
+ * Opens or makes the store at `path` (":memory:" for none on disk). Refuses (AppError) a missing folder, a file that is no
+ * database, a database of another program, a damaged file and a store of a newer program.
+ */
+export function openStore(path: string, options: OpenOptions = {}): Store {
+  refuseMissing(path, options.create ?? true);
+  let db: Database | null = null;
+  try {
+    db = connect(path);
+    return prepare(db, path, options.migrations ?? MIGRATIONS);
+  } catch (cause) {
+    db?.close();
+    throw storeFailure(cause, path);
+  }
+}
