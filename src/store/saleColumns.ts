@@ -11,7 +11,16 @@ import { priceBasisOf } from "./saleRows.ts";
 /** Sale numbers per block: large enough to make a call cheap, small enough to keep the rows of one block in cache. */
 const BLOCK = 8192;
 
-type BaseRow = [number, number, number, string, number, number, number, string, string | null, number, string | null];
+/** Price in minor units, packed small columns (see PACKED), currency, title, reference. */
+type BaseRow = [number, number, string, string, string | null];
+
+/**
+ * Crossing from SQLite costs the same for every column, so the small ones cross as one whole number below 2^53:
+ * (((day + DAY_SHIFT) × 6 + price basis) × 4 + channel) × 2 + verified, times SOURCE_LIMIT, plus the source's number.
+ */
+const DAY_SHIFT = 1_000_000;
+const SOURCE_LIMIT = 2 ** 26;
+const PACKED = `((((sold_on + ${DAY_SHIFT}) * 6 + price_basis) * 4 + channel) * 2 + (verified_on IS NOT NULL)) * ${SOURCE_LIMIT} + source_id`;
 
 interface Filling {
   readonly ids: Float64Array;
@@ -39,7 +48,7 @@ function emptyColumns(count: number): Filling {
     sources: new Array(count),
     verified: new Uint8Array(count),
     priceBases: new Array(count),
-    setAsideReasons: new Array(count),
+    setAsideReasons: new Array<string | null>(count).fill(null),
   };
 }
 
@@ -72,8 +81,7 @@ export function readSaleColumns(db: Database, classId: number, attributes: reado
   // "+class_id" keeps SQLite on the row number instead of a class index, which would have to be sorted.
   const selectBase = db
     .prepare<[number, number, number], BaseRow>(
-      `SELECT id, sold_on, price_minor, currency_code, price_basis, channel, source_id, title, reference,
-         verified_on IS NOT NULL, set_aside_reason
+      `SELECT price_minor, ${PACKED}, currency_code, title, reference
        FROM sales WHERE id >= ? AND id < ? AND +class_id = ? ORDER BY id`,
     )
     .raw();
@@ -88,9 +96,10 @@ export function readSaleColumns(db: Database, classId: number, attributes: reado
   for (let low = extent.low ?? 1; low <= (extent.high ?? 0); low += BLOCK) {
     const base = selectBase.all(low, low + BLOCK, classId);
     fillBase(columns, base, at, unitsOf, sourceNames);
-    fillValues(arrays, selectValues.all(low, low + BLOCK), at);
+    fillValues(columns.ids, arrays, selectValues.all(low, low + BLOCK), at);
     at += base.length;
   }
+  fillSetAside(db, classId, columns);
   const values = Object.fromEntries(attributes.map(({ attribute }, k) => [attribute.key, arrays[k]!]));
   return { count: extent.count, ...columns, values };
 }
@@ -104,23 +113,44 @@ function fillBase(
 ): void {
   for (let r = 0, i = at; r < rows.length; r++, i++) {
     const row = rows[r]!;
-    columns.ids[i] = row[0];
-    columns.soldOn[i] = row[1];
-    columns.price[i] = row[2] / unitsOf(row[3]);
-    columns.currencyCodes[i] = row[3];
-    columns.priceBases[i] = BASIS_WORDS[row[4]]!;
-    columns.channels[i] = CHANNELS[row[5]]!;
-    columns.sources[i] = sourceNames.get(row[6])!;
-    columns.titles[i] = row[7];
-    columns.references[i] = row[8];
-    columns.verified[i] = row[9];
-    columns.setAsideReasons[i] = row[10];
+    const small = Math.floor(row[1] / SOURCE_LIMIT);
+    const basisAndDay = Math.floor(small / 8);
+    columns.price[i] = row[0] / unitsOf(row[2]);
+    columns.sources[i] = sourceNames.get(row[1] - small * SOURCE_LIMIT)!;
+    columns.verified[i] = small % 2;
+    columns.channels[i] = CHANNELS[Math.floor(small / 2) % 4]!;
+    columns.priceBases[i] = BASIS_WORDS[basisAndDay % 6]!;
+    columns.soldOn[i] = Math.floor(basisAndDay / 6) - DAY_SHIFT;
+    columns.currencyCodes[i] = row[2];
+    columns.titles[i] = row[3];
+    columns.references[i] = row[4];
   }
 }
 
-function fillValues(arrays: readonly Float64Array[], rows: readonly (number | null)[][], at: number): void {
+/** Few sales are set aside: their reasons come by the index and find their place by the sale number. */
+function fillSetAside(db: Database, classId: number, columns: Filling): void {
+  const rows = db
+    .prepare<[number], [number, string]>(
+      "SELECT id, set_aside_reason FROM sales WHERE class_id = ? AND set_aside_on IS NOT NULL ORDER BY id",
+    )
+    .raw()
+    .all(classId);
+  let i = 0;
+  for (const [id, reason] of rows) {
+    while (columns.ids[i]! < id) i++;
+    columns.setAsideReasons[i] = reason;
+  }
+}
+
+function fillValues(
+  ids: Float64Array,
+  arrays: readonly Float64Array[],
+  rows: readonly (number | null)[][],
+  at: number,
+): void {
   for (let r = 0, i = at; r < rows.length; r++, i++) {
     const row = rows[r]!;
+    ids[i] = row[0]!;
     for (let k = 0; k < arrays.length; k++) {
       const value = row[k + 1]!;
       arrays[k]![i] = value === null ? Number.NaN : value;

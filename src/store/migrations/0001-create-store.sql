@@ -91,7 +91,8 @@ CREATE TABLE sales (
   CHECK ((verified_on IS NULL) = (verified_by IS NULL) AND (verified_on IS NULL) = (verified_how IS NULL)),
   CHECK ((set_aside_on IS NULL) = (set_aside_by IS NULL) AND (set_aside_on IS NULL) = (set_aside_reason IS NULL))
 ) STRICT;
-CREATE INDEX sales_by_sold_on ON sales (class_id, sold_on);
+-- Carries what the register filters by most, so that counting the hits needs no look into the rows.
+CREATE INDEX sales_by_sold_on ON sales (class_id, sold_on, id, channel, set_aside_on, verified_on);
 CREATE INDEX sales_by_price ON sales (class_id, price_minor);
 CREATE INDEX sales_by_title ON sales (class_id, title COLLATE NOCASE);
 CREATE INDEX sales_by_reference ON sales (class_id, reference COLLATE NOCASE);
