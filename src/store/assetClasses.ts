@@ -40,7 +40,11 @@ export function assetClassesOf(db: Database, attributes: Attributes) {
     `INSERT INTO asset_classes (name, item_word, currency_code, premium, tax, invented)
      VALUES (@name, @itemWord, @currencyCode, @premium, @tax, @invented)`,
   );
-  const raiseVersion = db.prepare("UPDATE asset_classes SET data_version = data_version + 1 WHERE id = ?");
+  const selectRowsVersion = db.prepare<[number], number>("SELECT rows_version FROM asset_classes WHERE id = ?").pluck();
+  const raiseData = db.prepare("UPDATE asset_classes SET data_version = data_version + 1 WHERE id = ?");
+  const raiseRows = db.prepare(
+    "UPDATE asset_classes SET data_version = data_version + 1, rows_version = rows_version + 1 WHERE id = ?",
+  );
 
   function noSuchClass(where: string): never {
     throw new AppError({
@@ -76,9 +80,15 @@ export function assetClassesOf(db: Database, attributes: Attributes) {
     /** Number of the class with this name (case does not matter), or null. */
     findByName: (name: string): number | null => selectId.get(name.trim()) ?? null,
     dataVersion: (id: number): number => selectVersion.get(id) ?? noSuchClass(`class ${id}`),
-    /** Says that sales or attributes of the class have changed: results that are on screen are stale. */
+    /** Rises only when sales come or go or an attribute changes, not when sales are set aside or verified. */
+    rowsVersion: (id: number): number => selectRowsVersion.get(id) ?? noSuchClass(`class ${id}`),
+    /** Says that sales were set aside, put back or verified: results that are on screen are stale. */
     raiseDataVersion: (id: number): void => {
-      raiseVersion.run(id);
+      raiseData.run(id);
+    },
+    /** Says that sales came or went. */
+    raiseRowsVersion: (id: number): void => {
+      raiseRows.run(id);
     },
     /** Makes the class, its wide table and its attributes. Refuses (AppError) a name that is taken. */
     insert(assetClass: NewAssetClass): AssetClass {

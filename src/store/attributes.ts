@@ -78,7 +78,9 @@ export function attributesOf(db: Database) {
   );
   const insertLevel = db.prepare("INSERT INTO attribute_levels (attribute_id, code, name) VALUES (?, ?, ?)");
   const deleteLevels = db.prepare("DELETE FROM attribute_levels WHERE attribute_id = ?");
-  const raiseVersion = db.prepare("UPDATE asset_classes SET data_version = data_version + 1 WHERE id = ?");
+  const raiseVersion = db.prepare(
+    "UPDATE asset_classes SET data_version = data_version + 1, rows_version = rows_version + 1 WHERE id = ?",
+  );
 
   /** Attributes of a class with their columns, in their stated order. */
   function listStored(classId: number): StoredAttribute[] {

@@ -16,11 +16,11 @@ type BaseRow = [number, number, string, string, string | null];
 
 /**
  * Crossing from SQLite costs the same for every column, so the small ones cross as one whole number below 2^53:
- * (((day + DAY_SHIFT) × 6 + price basis) × 4 + channel) × 2 + verified, times SOURCE_LIMIT, plus the source's number.
+ * ((day + DAY_SHIFT) × 6 + price basis) × 4 + channel, times SOURCE_LIMIT, plus the source's number.
  */
 const DAY_SHIFT = 1_000_000;
 const SOURCE_LIMIT = 2 ** 26;
-const PACKED = `((((sold_on + ${DAY_SHIFT}) * 6 + price_basis) * 4 + channel) * 2 + (verified_on IS NOT NULL)) * ${SOURCE_LIMIT} + source_id`;
+const PACKED = `(((sold_on + ${DAY_SHIFT}) * 6 + price_basis) * 4 + channel) * ${SOURCE_LIMIT} + source_id`;
 
 interface Filling {
   readonly ids: Float64Array;
@@ -31,9 +31,7 @@ interface Filling {
   readonly currencyCodes: string[];
   readonly channels: Channel[];
   readonly sources: string[];
-  readonly verified: Uint8Array;
   readonly priceBases: string[];
-  readonly setAsideReasons: (string | null)[];
 }
 
 function emptyColumns(count: number): Filling {
@@ -46,9 +44,7 @@ function emptyColumns(count: number): Filling {
     currencyCodes: new Array(count),
     channels: new Array(count),
     sources: new Array(count),
-    verified: new Uint8Array(count),
     priceBases: new Array(count),
-    setAsideReasons: new Array<string | null>(count).fill(null),
   };
 }
 
@@ -99,9 +95,8 @@ export function readSaleColumns(db: Database, classId: number, attributes: reado
     fillValues(columns.ids, arrays, selectValues.all(low, low + BLOCK), at);
     at += base.length;
   }
-  fillSetAside(db, classId, columns);
   const values = Object.fromEntries(attributes.map(({ attribute }, k) => [attribute.key, arrays[k]!]));
-  return { count: extent.count, ...columns, values };
+  return { count: extent.count, ...columns, ...readMarks(db, classId, columns.ids), values };
 }
 
 function fillBase(
@@ -114,11 +109,10 @@ function fillBase(
   for (let r = 0, i = at; r < rows.length; r++, i++) {
     const row = rows[r]!;
     const small = Math.floor(row[1] / SOURCE_LIMIT);
-    const basisAndDay = Math.floor(small / 8);
+    const basisAndDay = Math.floor(small / 4);
     columns.price[i] = row[0] / unitsOf(row[2]);
     columns.sources[i] = sourceNames.get(row[1] - small * SOURCE_LIMIT)!;
-    columns.verified[i] = small % 2;
-    columns.channels[i] = CHANNELS[Math.floor(small / 2) % 4]!;
+    columns.channels[i] = CHANNELS[small % 4]!;
     columns.priceBases[i] = BASIS_WORDS[basisAndDay % 6]!;
     columns.soldOn[i] = Math.floor(basisAndDay / 6) - DAY_SHIFT;
     columns.currencyCodes[i] = row[2];
@@ -127,19 +121,40 @@ function fillBase(
   }
 }
 
-/** Few sales are set aside: their reasons come by the index and find their place by the sale number. */
-function fillSetAside(db: Database, classId: number, columns: Filling): void {
-  const rows = db
+/**
+ * What people mark on sales, for the sales numbered `ids` (ascending): verified, set aside with a reason. The marked ones come
+ * by their index, in any order, and are found by halving.
+ */
+export function readMarks(
+  db: Database,
+  classId: number,
+  ids: Float64Array,
+): Pick<SaleColumns, "verified" | "setAsideReasons"> {
+  const verified = new Uint8Array(ids.length);
+  const setAsideReasons = new Array<string | null>(ids.length).fill(null);
+  const verifiedIds = db
+    .prepare<[number], number>("SELECT id FROM sales WHERE class_id = ? AND verified_on IS NOT NULL")
+    .pluck()
+    .all(classId);
+  for (const id of verifiedIds) verified[placeOf(ids, id)] = 1;
+  const reasons = db
     .prepare<[number], [number, string]>(
-      "SELECT id, set_aside_reason FROM sales WHERE class_id = ? AND set_aside_on IS NOT NULL ORDER BY id",
+      "SELECT id, set_aside_reason FROM sales WHERE class_id = ? AND set_aside_on IS NOT NULL",
     )
     .raw()
     .all(classId);
-  let i = 0;
-  for (const [id, reason] of rows) {
-    while (columns.ids[i]! < id) i++;
-    columns.setAsideReasons[i] = reason;
+  for (const [id, reason] of reasons) setAsideReasons[placeOf(ids, id)] = reason;
+  return { verified, setAsideReasons };
+}
+
+function placeOf(ids: Float64Array, id: number): number {
+  let [low, high] = [0, ids.length - 1];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (ids[middle]! < id) low = middle + 1;
+    else high = middle;
   }
+  return low;
 }
 
 function fillValues(

@@ -10,7 +10,7 @@ import type { Attributes } from "./attributes.ts";
 import { levelCodesOf, type StoredAttribute, valuesTable } from "./attributeTables.ts";
 import { withIndexesRebuilt } from "./bulkInsert.ts";
 import { type RegisterQuery, registerOf } from "./register.ts";
-import { readSaleColumns } from "./saleColumns.ts";
+import { readMarks, readSaleColumns } from "./saleColumns.ts";
 import {
   channelCode,
   priceBasisCode,
@@ -62,7 +62,7 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
   );
   const readPage = registerOf(db);
   const sourceIds = new Map<string, number>();
-  let columnsCache: { classId: number; dataVersion: number; columns: SaleColumns } | null = null;
+  let columnsCache: { classId: number; dataVersion: number; rowsVersion: number; columns: SaleColumns } | null = null;
 
   function sourceId(name: string): number {
     const known = selectSource.get(name);
@@ -134,16 +134,24 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
       if (incoming.length === 0) return [];
       const tables = ["sales", valuesTable(classId)];
       const ids = withIndexesRebuilt(db, tables, incoming.length, () => insertAll(classId, batchId, incoming));
-      classes.raiseDataVersion(classId);
+      classes.raiseRowsVersion(classId);
       return ids;
     },
-    /** All sales of the class as typed arrays; the last class read is kept until its data version moves. */
+    /**
+     * All sales of the class as typed arrays. The last class read is kept: only the marks are read again after sales were
+     * set aside or verified, everything after sales came or went. Read-only for whoever gets them.
+     */
     readColumns(classId: number): SaleColumns {
       const dataVersion = classes.dataVersion(classId);
-      if (columnsCache?.classId === classId && columnsCache.dataVersion === dataVersion) return columnsCache.columns;
-      columnsCache = null;
-      const columns = readSaleColumns(db, classId, attributes.listStored(classId));
-      if (!db.inTransaction) columnsCache = { classId, dataVersion, columns };
+      const rowsVersion = classes.rowsVersion(classId);
+      const kept = columnsCache?.classId === classId && columnsCache.rowsVersion === rowsVersion ? columnsCache : null;
+      if (kept?.dataVersion === dataVersion) return kept.columns;
+      const columns =
+        kept === null
+          ? readSaleColumns(db, classId, attributes.listStored(classId))
+          : { ...kept.columns, ...readMarks(db, classId, kept.columns.ids) };
+      // Inside a transaction the versions may still be rolled back and used again for other sales.
+      if (!db.inTransaction) columnsCache = { classId, dataVersion, rowsVersion, columns };
       return columns;
     },
     /** One page of the register and the number of hits. */
@@ -188,7 +196,7 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
           deleteSale.run(sale.id);
         }
       }
-      classes.raiseDataVersion(classId);
+      classes.raiseRowsVersion(classId);
       return ids.length;
     },
   };

@@ -10,7 +10,9 @@ CREATE TABLE asset_classes (
   premium TEXT NOT NULL CHECK (premium IN ('in', 'out', 'none')),
   tax TEXT NOT NULL CHECK (tax IN ('in', 'out')),
   invented INTEGER NOT NULL CHECK (invented IN (0, 1)),
-  data_version INTEGER NOT NULL DEFAULT 1
+  -- data_version rises with every change; rows_version only when sales come or go or an attribute changes.
+  data_version INTEGER NOT NULL DEFAULT 1,
+  rows_version INTEGER NOT NULL DEFAULT 1
 ) STRICT;
 
 CREATE TABLE attributes (
