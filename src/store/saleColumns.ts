@@ -6,6 +6,7 @@ import type { Database } from "better-sqlite3";
 import { minorUnitDigits } from "../domain/format.ts";
 import { CHANNELS, type Channel, priceBasisWords, type SaleColumns } from "../domain/sale.ts";
 import { type StoredAttribute, valuesTable } from "./attributeTables.ts";
+import { type PackedColumn, packColumns, unpackInto } from "./packedColumns.ts";
 import { priceBasisOf } from "./saleRows.ts";
 
 /** Sale numbers per block: large enough to make a call cheap, small enough to keep the rows of one block in cache. */
@@ -81,10 +82,10 @@ export function readSaleColumns(db: Database, classId: number, attributes: reado
        FROM sales WHERE id >= ? AND id < ? AND +class_id = ? ORDER BY id`,
     )
     .raw();
-  const names = attributes.map(({ column }) => `, ${column}`).join("");
+  const packed = packColumns(attributes);
   const selectValues = db
     .prepare<[number, number], (number | null)[]>(
-      `SELECT sale_id${names} FROM ${table} WHERE sale_id >= ? AND sale_id < ? ORDER BY sale_id`,
+      `SELECT sale_id${packed.map(({ sql }) => `, ${sql}`).join("")} FROM ${table} WHERE sale_id >= ? AND sale_id < ? ORDER BY sale_id`,
     )
     .raw();
   const unitsOf = minorPerMajor();
@@ -92,7 +93,7 @@ export function readSaleColumns(db: Database, classId: number, attributes: reado
   for (let low = extent.low ?? 1; low <= (extent.high ?? 0); low += BLOCK) {
     const base = selectBase.all(low, low + BLOCK, classId);
     fillBase(columns, base, at, unitsOf, sourceNames);
-    fillValues(columns.ids, arrays, selectValues.all(low, low + BLOCK), at);
+    fillValues(columns.ids, arrays, packed, selectValues.all(low, low + BLOCK), at);
     at += base.length;
   }
   const values = Object.fromEntries(attributes.map(({ attribute }, k) => [attribute.key, arrays[k]!]));
@@ -160,15 +161,18 @@ function placeOf(ids: Float64Array, id: number): number {
 function fillValues(
   ids: Float64Array,
   arrays: readonly Float64Array[],
+  packed: readonly PackedColumn[],
   rows: readonly (number | null)[][],
   at: number,
 ): void {
   for (let r = 0, i = at; r < rows.length; r++, i++) {
     const row = rows[r]!;
     ids[i] = row[0]!;
-    for (let k = 0; k < arrays.length; k++) {
+    for (let k = 0; k < packed.length; k++) {
+      const { numberAt, digits } = packed[k]!;
       const value = row[k + 1]!;
-      arrays[k]![i] = value === null ? Number.NaN : value;
+      if (numberAt === null) unpackInto(arrays, digits, value!, i);
+      else arrays[numberAt]![i] = value === null ? Number.NaN : value;
     }
   }
 }

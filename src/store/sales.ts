@@ -44,8 +44,8 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
     "INSERT INTO removed_sales (id, class_id, batch_id, removed_at_utc, sale_json) VALUES (?, ?, ?, ?, ?)",
   );
   const selectRemoved = db
-    .prepare<[string], string>(
-      "SELECT sale_json FROM removed_sales WHERE id IN (SELECT value FROM json_each(?)) ORDER BY id",
+    .prepare<[string, number], string>(
+      "SELECT sale_json FROM removed_sales WHERE id IN (SELECT value FROM json_each(?)) AND +class_id = ? ORDER BY id",
     )
     .pluck();
   const deleteSale = db.prepare("DELETE FROM sales WHERE id = ?");
@@ -164,7 +164,7 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
     findSales(classId: number, ids: readonly number[]): Sale[] {
       const live = find(classId, ids, attributes.listStored(classId));
       if (live.length === ids.length) return live;
-      return [...live, ...selectRemoved.all(JSON.stringify(ids)).map((json) => JSON.parse(json) as Sale)];
+      return [...live, ...selectRemoved.all(JSON.stringify(ids), classId).map((json) => JSON.parse(json) as Sale)];
     },
     /** Verbatim cells of the row the sale came from, or null when it was typed. */
     cells(saleId: number): string[] | null {

@@ -1,10 +1,11 @@
 import BetterSqlite3 from "better-sqlite3";
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
+import { dayNumber } from "../../src/domain/day.ts";
 import type { NewSale, Sale } from "../../src/domain/sale.ts";
 import type { Store } from "../../src/store/openStore.ts";
 import { countSql, pageSql, type RegisterFilter, type RegisterQuery } from "../../src/store/register.ts";
-import { attribute, fill, freshStore, sale } from "./filledStore.ts";
+import { attribute, fill, freshStore, HOISTS, sale } from "./filledStore.ts";
 
 const ALL: RegisterFilter = {
   search: "",
@@ -335,6 +336,51 @@ describe("sales as columns", () => {
     expect([...columns.values.make!]).toEqual([1, 0, Number.NaN, 1, 0, Number.NaN]);
     expect([...columns.values.cabin!]).toEqual([1, 0, Number.NaN, Number.NaN, Number.NaN, Number.NaN]);
     expect(columns.values.built![0]).toBe(18262);
+  });
+
+  it("hold every choice, yes/no and built day exactly, however many cross in one number", () => {
+    const store = freshStore();
+    const levels = Array.from({ length: 300 }, (_, i) => `level ${i}`);
+    const kinds = ["choice", "built", "yesNo", "built", "choice", "number", "built", "yesNo", "choice"] as const;
+    const attributes = kinds.map((kind, k) => attribute(`a${k}`, { kind, levels: kind === "choice" ? levels : [] }));
+    const { id: classId } = store.assetClasses.insert({ ...HOISTS, attributes });
+    const day = fc.constantFrom("0101-01-01", "1899-12-31", "1969-12-31", "1970-01-01", "2024-02-29", "9999-12-31");
+    const anyOf = {
+      choice: fc.constantFrom(...levels),
+      built: day,
+      yesNo: fc.boolean(),
+      number: fc.double({ noNaN: true, noDefaultInfinity: true }),
+    };
+    const anyValues = fc.tuple(...kinds.map((kind) => fc.oneof(fc.constant(null), anyOf[kind])));
+    fc.assert(
+      fc.property(fc.array(anyValues, { minLength: 1, maxLength: 20 }), (rows) => {
+        const incoming = rows.map((row) =>
+          sale({ values: Object.fromEntries(row.map((value, k) => [`a${k}`, value])) }),
+        );
+        const ids = store.sales.insertSales(
+          classId,
+          null,
+          incoming.map((each) => ({ row: null, sale: each, cells: null })),
+        );
+        const columns = store.sales.readColumns(classId);
+        for (const [r, row] of rows.entries()) {
+          const i = columns.ids.indexOf(ids[r]!);
+          for (const [k, kind] of kinds.entries()) {
+            const value = row[k]!;
+            const wanted =
+              value === null
+                ? Number.NaN
+                : kind === "choice"
+                  ? levels.indexOf(value as string)
+                  : kind === "built"
+                    ? dayNumber(value as string)!
+                    : Number(value) + 0;
+            expect(columns.values[`a${k}`]![i]).toBe(wanted);
+          }
+        }
+      }),
+      { numRuns: 30 },
+    );
   });
 
   it("are empty for an empty class, and follow a change at once", () => {
