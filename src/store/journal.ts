@@ -71,6 +71,9 @@ export function journalOf(db: Database) {
   const selectSheetDigests = db.prepare<[], { number: string; digest: string }>(
     "SELECT number, digest FROM sheets ORDER BY id",
   );
+  const selectIssued = db.prepare<[string], JournalRow>(
+    `SELECT ${COLUMNS} FROM journal WHERE act = 'sheet-issued' AND json_extract(facts_json, '$.digest') = ? LIMIT 1`,
+  );
   const insertRow = db.prepare(
     `INSERT INTO journal (id, at_utc, by_whom, act, class_id, sentence, facts_json, previous_digest, digest)
      VALUES (@id, @at_utc, @by_whom, @act, @class_id, @sentence, @facts_json, @previous_digest, @digest)`,
@@ -115,6 +118,11 @@ export function journalOf(db: Database) {
     /** Newest first. */
     list: (offset: number, limit: number): JournalEntry[] => selectPage.all(limit, offset).map(rowToEntry),
     count: (): number => selectCount.get()!,
+    /** The entry that tells of the issue of the sheet with this digest, or null. */
+    findSheetIssued(digest: string): JournalEntry | null {
+      const row = selectIssued.get(digest);
+      return row === undefined ? null : rowToEntry(row);
+    },
     /** Walks the whole chain, then asks whether every sheet in the store is told of ("sheet-issued", facts.digest). */
     verifyChain(): ChainVerdict {
       let previous = FIRST_DIGEST;

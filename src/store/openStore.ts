@@ -44,6 +44,8 @@ export interface OpenOptions {
   /** False: refuse when there is no file at the path. */
   readonly create?: boolean;
   readonly migrations?: readonly Migration[];
+  /** How long to wait for another window or command that is writing. */
+  readonly busyTimeoutMs?: number;
 }
 
 const BUSY_TIMEOUT_MS = 5000;
@@ -64,8 +66,8 @@ function refuseMissing(path: string, create: boolean): void {
   });
 }
 
-function connect(path: string): Database {
-  const db = new BetterSqlite3(path, { timeout: BUSY_TIMEOUT_MS });
+function connect(path: string, timeoutMs: number): Database {
+  const db = new BetterSqlite3(path, { timeout: timeoutMs });
   try {
     db.pragma("foreign_keys = ON");
     // Without it, INSERT OR REPLACE would delete rows past the triggers that guard them.
@@ -120,7 +122,7 @@ export function openStore(path: string, options: OpenOptions = {}): Store {
   refuseMissing(path, options.create ?? true);
   let db: Database | null = null;
   try {
-    db = connect(path);
+    db = connect(path, options.busyTimeoutMs ?? BUSY_TIMEOUT_MS);
     return prepare(db, path, options.migrations ?? MIGRATIONS);
   } catch (cause) {
     db?.close();

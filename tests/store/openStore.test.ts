@@ -165,6 +165,24 @@ describe("a transaction", () => {
     expect(store.assetClasses.summary(classId).saleCount).toBe(1);
   });
 
+  it("is seen by another window at once, and waits its turn with a sentence", () => {
+    const first = freshStore();
+    const classId = fill(first, [sale()]);
+    const second = freshStore(first.path, { busyTimeoutMs: 20 });
+    expect(second.sales.readColumns(classId).count).toBe(1);
+    first.transaction(() => {
+      first.sales.insertSales(classId, null, [{ row: null, sale: sale(), cells: null }]);
+      const error = refusal(() =>
+        second.transaction(() => second.sales.setAside(classId, [1], "B", "2026-01-01", "burnt")),
+      );
+      expect(error.code).toBe("store-busy");
+      expect(second.sales.readColumns(classId).count).toBe(1);
+    });
+    expect(second.sales.readColumns(classId).count).toBe(2);
+    expect(second.transaction(() => second.sales.setAside(classId, [1], "B", "2026-01-01", "burnt"))).toBe(1);
+    expect(first.sales.readColumns(classId).setAsideReasons).toEqual(["burnt", null]);
+  });
+
   it("loses nothing committed when the process is killed while it writes", async () => {
     const path = join(temporaryFolder(), "killed.sqlite");
     const store = openStore(path);

@@ -197,6 +197,8 @@ describe("the journal", () => {
     const sheet = issueSheet(store, classId);
     append(store, "Sheet issued.", "sheet-issued", { digest: sheet.digest });
     expect(store.journal.verifyChain().intact).toBe(true);
+    expect(store.journal.findSheetIssued(sheet.digest)!.sentence).toBe("Sheet issued.");
+    expect(store.journal.findSheetIssued("another")).toBeNull();
     const db = new BetterSqlite3(store.path);
     db.exec("DROP TRIGGER journal_is_not_deleted; DELETE FROM journal WHERE id = 2");
     db.close();
