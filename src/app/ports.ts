@@ -2,6 +2,8 @@
 import type { Day } from "../domain/day.ts";
 import type { Store } from "../store/openStore.ts";
 
+export type SheetFonts = Readonly<Record<string, Uint8Array>>;
+
 export interface Ports {
   readonly store: Store;
   /** Now as ISO 8601 in UTC, to the second: "2026-01-02T03:04:05Z". */
@@ -13,4 +15,6 @@ export interface Ports {
   /** Where bugs go, whole. */
   log(cause: unknown): void;
   readonly programVersion: string;
+  /** Bytes of the sheet's font files by face, read when a sheet is made. */
+  readonly fonts: SheetFonts | Promise<SheetFonts>;
 }

@@ -79,6 +79,20 @@ function connect(path: string, timeoutMs: number): Database {
   }
 }
 
+/** The same functions, whose SQLite failures come out as AppErrors. */
+function guarded<T extends object>(aggregate: T, path: string): T {
+  const guard =
+    (work: (...args: unknown[]) => unknown) =>
+    (...args: unknown[]) => {
+      try {
+        return work(...args);
+      } catch (cause) {
+        throw storeFailure(cause, path);
+      }
+    };
+  return Object.fromEntries(Object.entries(aggregate).map(([name, work]) => [name, guard(work)])) as T;
+}
+
 function prepare(db: Database, path: string, migrations: readonly Migration[]): Store {
   // Refusals come before the first write, so that a foreign or newer file is left as it was.
   const backupPath = migrate(db, path, migrations);
@@ -90,17 +104,17 @@ function prepare(db: Database, path: string, migrations: readonly Migration[]): 
   return {
     path,
     backupPath,
-    assetClasses,
-    attributes,
-    sales: salesOf(db, assetClasses, attributes),
-    batches: batchesOf(db),
-    heldBack: heldBackOf(db),
-    columnMatches: columnMatchesOf(db),
-    editions: editionsOf(db),
-    drafts: draftsOf(db),
-    sheets: sheetsOf(db),
-    journal: journalOf(db),
-    settings: settingsOf(db),
+    assetClasses: guarded(assetClasses, path),
+    attributes: guarded(attributes, path),
+    sales: guarded(salesOf(db, assetClasses, attributes), path),
+    batches: guarded(batchesOf(db), path),
+    heldBack: guarded(heldBackOf(db), path),
+    columnMatches: guarded(columnMatchesOf(db), path),
+    editions: guarded(editionsOf(db), path),
+    drafts: guarded(draftsOf(db), path),
+    sheets: guarded(sheetsOf(db), path),
+    journal: guarded(journalOf(db), path),
+    settings: guarded(settingsOf(db), path),
     transaction<T>(work: () => T): T {
       try {
         return db.transaction(work).immediate();

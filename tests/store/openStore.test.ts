@@ -112,6 +112,25 @@ describe("opening a store", () => {
   });
 });
 
+describe("a store that is damaged inside", () => {
+  it("says so when the damaged part is read, and still opens", () => {
+    const path = join(temporaryFolder(), "damaged.sqlite");
+    const store = openStore(path);
+    const classId = fill(
+      store,
+      Array.from({ length: 3000 }, (_, i) => sale({ title: `title ${i}`.padEnd(200, ".") })),
+    );
+    store.close();
+    const bytes = readFileSync(path);
+    bytes.fill(0xa5, Math.floor(bytes.length / 8 / 4096) * 4096, Math.floor(bytes.length / 4096) * 4096);
+    writeFileSync(path, bytes);
+    const damaged = freshStore(path);
+    const error = refusal(() => damaged.sales.readColumns(classId));
+    expect(error.code).toBe("store-damaged");
+    expect(error.where).toBe(path);
+  });
+});
+
 describe("bringing an older store up to date", () => {
   const second = { number: MIGRATIONS.length + 1, name: "later", sql: "ALTER TABLE sales ADD COLUMN later TEXT" };
 
