@@ -1,8 +1,9 @@
 /** What the outside hands to the app: the store, the clock, digests and the log. Nothing in app/ reaches for them itself. */
 import type { Day } from "../domain/day.ts";
+import type { SheetFonts } from "../sheet/sheetFonts.ts";
 import type { Store } from "../store/openStore.ts";
 
-export type SheetFonts = Readonly<Record<string, Uint8Array>>;
+export type { SheetFonts } from "../sheet/sheetFonts.ts";
 
 export interface Ports {
   readonly store: Store;
