@@ -19,4 +19,3 @@ export function programVersion(): string {
 export const rendererFolder = (): string => join(programRoot(), "out", "renderer");
 export const preloadFile = (): string => join(programRoot(), "out", "preload", "index.cjs");
 export const iconFile = (): string => join(programRoot(), "resources", "icon.png");
-export const fontFile = (name: string): string => join(programRoot(), "resources", "fonts", name);

@@ -13,6 +13,8 @@ import { isApiPath, isRequestAllowed, type RequestFacts } from "./isRequestAllow
 /** A file of a million sales, as base64, stays below this; one string in Node can't grow past half a gigabyte. */
 const LARGEST_BODY_BYTES = 256 * 1024 * 1024;
 const TOKEN_BYTES = 32;
+const TICKET_MS = 60_000;
+const TICKET_PATH = "/open/";
 
 export interface LoopbackOptions {
   readonly ask: Transport;
@@ -27,6 +29,11 @@ export interface LoopbackServer {
   readonly token: string;
   /** What to open: the token is in the fragment, which a browser never sends. */
   readonly address: string;
+  /**
+   * An address for a command line, which other people on the machine may be able to read: it leads to `address` once, within
+   * a minute, and then no more.
+   */
+  addressForOnce(): string;
   close(): Promise<void>;
 }
 
@@ -112,14 +119,37 @@ function listen(server: Server, port: number): Promise<number> {
   });
 }
 
+/** Single-use tickets: each is good for one redirect while it is fresh. */
+function createTickets() {
+  const freshUntil = new Map<string, number>();
+  return {
+    issue(): string {
+      const ticket = randomBytes(TOKEN_BYTES).toString("base64url");
+      freshUntil.set(ticket, Date.now() + TICKET_MS);
+      return ticket;
+    },
+    redeem(ticket: string): boolean {
+      const until = freshUntil.get(ticket) ?? 0;
+      freshUntil.delete(ticket);
+      return Date.now() < until;
+    },
+  };
+}
+
 export async function startLoopbackServer(options: LoopbackOptions): Promise<LoopbackServer> {
   const token = randomBytes(TOKEN_BYTES).toString("base64url");
+  const tickets = createTickets();
   let port = 0;
   const server = createServer((request, response) => {
     const facts = factsOf(request);
     const permission = isRequestAllowed(facts, port, token);
     if (!permission.allowed) {
       sendJson(response, permission.status, refusal("not-allowed", permission.why));
+      return;
+    }
+    if (facts.path.startsWith(TICKET_PATH) && tickets.redeem(facts.path.slice(TICKET_PATH.length))) {
+      // A browser keeps the fragment of a redirect to itself.
+      response.writeHead(302, { ...SAFETY_HEADERS, location: `/#token=${token}` }).end();
       return;
     }
     const work = isApiPath(facts.path)
@@ -134,5 +164,7 @@ export async function startLoopbackServer(options: LoopbackOptions): Promise<Loo
       server.close(() => resolve());
       server.closeAllConnections();
     });
-  return { port, token, address: `http://127.0.0.1:${port}/#token=${token}`, close };
+  const base = `http://127.0.0.1:${port}`;
+  const addressForOnce = (): string => `${base}${TICKET_PATH}${tickets.issue()}`;
+  return { port, token, address: `${base}/#token=${token}`, addressForOnce, close };
 }

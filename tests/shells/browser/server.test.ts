@@ -116,6 +116,15 @@ describe("the loopback server", () => {
     await other.close();
   });
 
+  test("an address for a command line leads in once and then no more", async () => {
+    const path = new URL(server.addressForOnce()).pathname;
+    const first = await send("GET", path, {});
+    expect([first.status, first.headers.location]).toEqual([302, `/#token=${server.token}`]);
+    expect((await send("GET", path, {})).status).toBe(404);
+    expect((await send("GET", "/open/guess", {})).status).toBe(404);
+    expect((await send("GET", new URL(server.addressForOnce()).pathname, { host: "example.org" })).status).toBe(403);
+  });
+
   test("does not answer on the machine's other addresses", async () => {
     const outward = Object.values(networkInterfaces())
       .flat()
