@@ -194,7 +194,14 @@ export interface Ledger {
   readonly leftOut: readonly { key: string; label: string }[];
   readonly rows: readonly LedgerRow[];
   /** Coefficients of the left-out attributes beside the full reference set. */
-  readonly leftOutOwn: readonly { key: string; label: string; level: string | null; estimate: number; money: number; stepWords: string }[];
+  readonly leftOutOwn: readonly {
+    key: string;
+    label: string;
+    level: string | null;
+    estimate: number;
+    money: number;
+    stepWords: string;
+  }[];
   readonly headline: string;
   /** max |coefficient − own − Σ carried| / |coefficient|, found. */
   readonly identityError: number;
@@ -239,7 +246,13 @@ export interface Reach {
     sentence: string;
   }[];
   /** Joint reach: leverage of the subject against the largest of the evidence (Montgomery, Peck & Vining). */
-  readonly joint: { leverage: number; highestInEvidence: number; further: number; verdict: ReachVerdict; sentence: string };
+  readonly joint: {
+    leverage: number;
+    highestInEvidence: number;
+    further: number;
+    verdict: ReachVerdict;
+    sentence: string;
+  };
 }
 
 export interface PricePart {

@@ -17,7 +17,8 @@ const NBSP = "\u00a0";
 /** Decimals of a currency's minor unit by ISO 4217 (EUR 2, JPY 0, KWD 3). */
 export function minorUnitDigits(currencyCode: string): number {
   return (
-    new Intl.NumberFormat("en", { style: "currency", currency: currencyCode }).resolvedOptions().maximumFractionDigits ?? 2
+    new Intl.NumberFormat("en", { style: "currency", currency: currencyCode }).resolvedOptions()
+      .maximumFractionDigits ?? 2
   );
 }
 
@@ -38,8 +39,9 @@ function withRealMinus(text: string): string {
 export function formatNumber(value: number, decimals = 0, locale: Locale = DEFAULT_LOCALE): string {
   const rounded = Object.is(Number(value.toFixed(decimals)), -0) ? 0 : value;
   return withRealMinus(
-    new Intl.NumberFormat(locale.tag, { minimumFractionDigits: decimals, maximumFractionDigits: decimals })
-      .format(Number(rounded.toFixed(decimals)) === 0 ? 0 : rounded),
+    new Intl.NumberFormat(locale.tag, { minimumFractionDigits: decimals, maximumFractionDigits: decimals }).format(
+      Number(rounded.toFixed(decimals)) === 0 ? 0 : rounded,
+    ),
   );
 }
 
@@ -50,7 +52,12 @@ export function formatSigned(value: number, decimals = 0, locale: Locale = DEFAU
 }
 
 /** Money with its symbol, whole units unless decimals are asked: €41,800 */
-export function formatMoney(value: number, currencyCode: string, locale: Locale = DEFAULT_LOCALE, decimals = 0): string {
+export function formatMoney(
+  value: number,
+  currencyCode: string,
+  locale: Locale = DEFAULT_LOCALE,
+  decimals = 0,
+): string {
   return withRealMinus(
     new Intl.NumberFormat(locale.tag, {
       style: "currency",
@@ -120,4 +127,15 @@ export function roundToAddUp(parts: readonly number[], total: number, step: numb
     floors[at]! += Math.sign(left);
   }
   return floors.map((part) => (part === 0 ? 0 : part * step));
+}
+
+/** Lower case at the start inside a sentence, unless the word is an abbreviation: "Hours" → "hours", "LPG" stays. */
+export function lowerStart(label: string): string {
+  return /^\p{Lu}\p{Ll}/u.test(label) ? label.charAt(0).toLowerCase() + label.slice(1) : label;
+}
+
+/** "age", "age and hours", "age, hours and make" */
+export function listWords(words: readonly string[]): string {
+  if (words.length <= 1) return words.join("");
+  return `${words.slice(0, -1).join(", ")} and ${words[words.length - 1]}`;
 }

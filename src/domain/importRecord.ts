@@ -17,7 +17,19 @@ export interface ReadingOptions {
 export type ColumnTarget =
   | { readonly to: "attribute"; readonly key: string }
   | { readonly to: "newAttribute"; readonly label: string; readonly kind: AttributeKind; readonly unit: string | null }
-  | { readonly to: "price" | "soldOn" | "currency" | "channel" | "source" | "reference" | "title" | "notes" | "premium" | "tax" }
+  | {
+      readonly to:
+        | "price"
+        | "soldOn"
+        | "currency"
+        | "channel"
+        | "source"
+        | "reference"
+        | "title"
+        | "notes"
+        | "premium"
+        | "tax";
+    }
   | { readonly to: "nothing" };
 
 /** Column match: one target per column of the file, and fixed values for what the file does not say. */
@@ -64,6 +76,8 @@ export interface ImportResult {
   readonly duplicates: readonly DuplicateRow[];
   /** Blank rows are no rows: counted apart. */
   readonly blankRows: number;
+  /** What was converted on the way (units), each a sentence. */
+  readonly notes: readonly string[];
 }
 
 export interface ImportBatch {

@@ -1,0 +1,171 @@
+/**
+ * The carry-over ledger: what each coefficient says itself, and what it carries for attributes left out.
+ * Omitted-variable algebra, exact in sample: with included columns A and left-out columns B of a reference set,
+ *   b_A(short) − b_A(long) = Δ·b_B(long),  Δ = (X_A'X_A)⁻¹X_A'X_B   (X centred; Goldberger 1991, ch. 17; Gelbach 2016, eq. 5).
+ * own part of a = b_a(long); carried part from attribute g = Σ over its columns j of Δ_{a,j}·b_j(long).
+ */
+import type { Ledger, LedgerRow, ModelReport } from "../domain/appraisal.ts";
+import type { Design, Fit } from "../hedonic/fit.ts";
+import { solveLeastSquares } from "../numerics/solveLeastSquares.ts";
+import { ledgerHeadline, rowSentence } from "./ledgerWords.ts";
+
+export interface CarryOverInput {
+  /** Fit of the whole reference set (after exact dependencies). */
+  readonly long: Fit;
+  /** Fit of the included groups, a subset of the long fit's. */
+  readonly short: Fit;
+  /** Report of the short fit: labels, step words and ranges stand there. */
+  readonly report: ModelReport;
+  readonly currencyCode: string;
+}
+
+/** Association of each left-out column with the included ones: slopes[a] of included column a, one array per left-out column. */
+interface Association {
+  readonly column: number;
+  readonly slopes: Float64Array;
+}
+
+/**
+ * Rows in the order of the short fit's columns. Coefficients on the response's scale per unit of the column; money per step
+ * at the average sale. Guards: nothing left out → every carried list is empty and own part = coefficient.
+ */
+export function carryOver({ long, short, report, currencyCode }: CarryOverInput): Ledger {
+  const leftOutGroups = long.groups.filter((group) => !short.groups.some((kept) => kept.key === group.key));
+  const associations = leftOutGroups.flatMap((group) => associate(long.design, short.columns, group.columns));
+  const slopeInLong = new Map(long.columns.map((column, at) => [column, long.solution.slopes[at]!]));
+  let identityError = 0;
+  const rows = short.columns.map((column, at): LedgerRow => {
+    const coefficient = short.solution.slopes[at]!;
+    const ownPart = slopeInLong.get(column)!;
+    const carriedParts = leftOutGroups.map((group) => ({
+      from: group.key,
+      fromLabel: group.label,
+      amount: sumOf(
+        associations
+          .filter((one) => group.columns.includes(one.column))
+          .map((one) => one.slopes[at]! * slopeInLong.get(one.column)!),
+      ),
+    }));
+    const total = ownPart + sumOf(carriedParts.map((part) => part.amount));
+    const size = Math.max(
+      Math.abs(coefficient),
+      Math.abs(ownPart),
+      ...carriedParts.map((part) => Math.abs(part.amount)),
+    );
+    if (size > 0) identityError = Math.max(identityError, Math.abs(coefficient - total) / size);
+    return describeRow({ short, report, column, coefficient, ownPart, carriedParts, associations, at, currencyCode });
+  });
+  const leftOut = leftOutGroups.map((group) => ({ key: group.key, label: group.label }));
+  return {
+    referenceSet: long.groups.map((group) => group.key),
+    leftOut,
+    rows,
+    leftOutOwn: leftOutGroups.flatMap((group) => ownOf(group.key, long, report)),
+    headline: ledgerHeadline(rows, leftOut, currencyCode),
+    identityError,
+  };
+}
+
+/** Δ column by column: each left-out column regressed on the included ones, as carefully as a reported fit. */
+function associate(design: Design, included: readonly number[], leftOut: readonly number[]): Association[] {
+  const columns = included.map((index) => design.columns[index]!.values);
+  return leftOut.map((column) => ({
+    column,
+    slopes:
+      columns.length === 0
+        ? new Float64Array(0)
+        : solveLeastSquares(columns, design.columns[column]!.values, { intercept: true }).slopes,
+  }));
+}
+
+interface RowParts {
+  readonly short: Fit;
+  readonly report: ModelReport;
+  readonly column: number;
+  readonly at: number;
+  readonly coefficient: number;
+  readonly ownPart: number;
+  readonly carriedParts: LedgerRow["carriedParts"];
+  readonly associations: readonly Association[];
+  readonly currencyCode: string;
+}
+
+function describeRow(parts: RowParts): LedgerRow {
+  const { short, report, column, coefficient, ownPart, carriedParts, currencyCode } = parts;
+  const { attribute, level } = short.design.columns[column]!;
+  const group = short.groups.find((one) => one.key === attribute)!;
+  const stated = report.coefficients.find((one) => one.attribute === attribute && one.level === level)!;
+  const perUnit = moneyPerUnit(report, coefficient, group.step);
+  const low = stated.moneyLow95;
+  const high = stated.moneyHigh95;
+  const row = {
+    attribute,
+    label: stated.label,
+    level,
+    stepWords: stated.stepWords,
+    coefficient,
+    ownPart,
+    carriedParts,
+    money: {
+      coefficient: coefficient * perUnit,
+      own: ownPart * perUnit,
+      carried: carriedParts.map((part) => ({ from: part.from, amount: part.amount * perUnit })),
+    },
+    moneyRange95: low === null || high === null ? null : { low, high },
+    signTurned: carriedParts.length > 0 && Math.sign(coefficient) === -Math.sign(ownPart) && ownPart !== 0,
+  };
+  return { ...row, sentence: rowSentence({ ...row, sentence: "" }, comesWith(parts, group.step), currencyCode) };
+}
+
+/** "each 1,000 h comes with 0.88 more years": how a step of this column moves the one column of each left-out number. */
+function comesWith(
+  parts: RowParts,
+  step: number,
+): ReadonlyMap<string, { amount: number; unit: string; decimals: number }> {
+  const { design } = parts.short;
+  const moves = new Map<string, { amount: number; unit: string; decimals: number }>();
+  for (const association of parts.associations) {
+    const { attribute, level } = design.columns[association.column]!;
+    const group = design.groups.find((one) => one.key === attribute)!;
+    if (level !== null || group.form === "ln" || group.unit === null) continue;
+    const amount = association.slopes[parts.at]! * step;
+    moves.set(attribute, { amount, unit: group.unit, decimals: group.decimals });
+  }
+  return moves;
+}
+
+/**
+ * Money per unit of coefficient for one step: after ln, P̄·(e^(b·step) − 1)/b, so that parts are shares of the exact
+ * one-step change and add up; P̄·step in the limit b → 0. Plain response: the step.
+ */
+export function moneyPerUnit(
+  report: Pick<ModelReport, "response" | "averagePrice">,
+  coefficient: number,
+  step: number,
+): number {
+  if (report.response === "price") return step;
+  const change = coefficient * step;
+  return change === 0 ? report.averagePrice * step : (report.averagePrice * Math.expm1(change)) / coefficient;
+}
+
+/** What a left-out attribute itself says beside the whole reference set. */
+function ownOf(key: string, long: Fit, report: ModelReport): Ledger["leftOutOwn"][number][] {
+  const group = long.groups.find((one) => one.key === key)!;
+  return group.columns.map((column) => {
+    const estimate = long.solution.slopes[long.columns.indexOf(column)]!;
+    const { level } = long.design.columns[column]!;
+    const against = group.form === "choice" ? `against ${group.reference}` : level === null ? "" : level;
+    return {
+      key,
+      label: group.label,
+      level,
+      estimate,
+      money: estimate * moneyPerUnit(report, estimate, group.step),
+      stepWords: group.stepWords ?? against,
+    };
+  });
+}
+
+function sumOf(parts: readonly number[]): number {
+  return parts.reduce((sum, part) => sum + part, 0);
+}

@@ -1,0 +1,101 @@
+/**
+ * The ledger in sentences: direction, amount and reason, one true sentence per attribute.
+ * Words only; every number comes from the ledger row, rounded as the printed table rounds it.
+ */
+import type { LedgerRow } from "../domain/appraisal.ts";
+import { formatMoney, formatNumber, listWords, lowerStart, niceStep, roundTo } from "../domain/format.ts";
+
+/** How one step of the row's attribute moves each left-out number, by key. */
+export type ComesWith = ReadonlyMap<string, { amount: number; unit: string; decimals: number }>;
+
+/** A carried part smaller than this share of the row's largest part is not worth a clause. */
+const WORTH_SAYING = 0.05;
+
+/**
+ * Step that a row's money is shown in: three digits of its largest part, never below 1.
+ * Table and sentence share it, so that they never disagree.
+ */
+export function moneyStep(row: Pick<LedgerRow, "money">): number {
+  const largest = Math.max(Math.abs(row.money.own), Math.abs(row.money.coefficient), 1);
+  return Math.max(1, Math.min(10, niceStep(largest / 100)));
+}
+
+function money(amount: number, step: number, currencyCode: string): string {
+  return formatMoney(Math.abs(roundTo(amount, step)), currencyCode);
+}
+
+function moreOrLess(amount: number, step: number, currencyCode: string): string {
+  if (roundTo(amount, step) === 0) return "no difference";
+  return `${money(amount, step, currencyCode)} ${amount < 0 ? "less" : "more"}`;
+}
+
+/** "Each extra 1,000 h", "Orveld against Brannock", "Air conditioning: yes", "12 months of market movement". */
+export function subjectOf(row: Pick<LedgerRow, "attribute" | "label" | "level" | "stepWords">): string {
+  if (row.attribute === "market") return `${row.stepWords} later`;
+  if (row.level === null) return `Each extra ${row.stepWords} of ${lowerStart(row.label)}`;
+  return row.stepWords.startsWith("against")
+    ? `${row.label} ${row.level}, ${row.stepWords},`
+    : `${row.label}: ${row.level}`;
+}
+
+export function rowSentence(row: LedgerRow, comesWith: ComesWith, currencyCode: string): string {
+  const step = moneyStep(row);
+  const now = `${subjectOf(row)} goes with ${moreOrLess(row.money.coefficient, step, currencyCode)}`;
+  const strongest = strongestCarried(row);
+  if (row.carriedParts.length === 0) return `${now}, the other attributes alike.`;
+  if (strongest === null) return `${now}; next to nothing of it is carried for what is left out.`;
+  const part = row.carriedParts.find((one) => one.from === strongest.from)!;
+  const own = `among items alike in what is left out it is ${moreOrLess(row.money.own, step, currencyCode)}`;
+  const turned = row.signTurned ? ", the other way round" : "";
+  const carried = `${money(strongest.amount, step, currencyCode)} ${strongest.amount < 0 ? "less" : "more"} is carried for ${lowerStart(part.fromLabel)}`;
+  return `${now}; ${own}${turned}, and ${carried}${reason(row, comesWith.get(strongest.from))}.`;
+}
+
+function reason(row: LedgerRow, move: { amount: number; unit: string; decimals: number } | undefined): string {
+  if (move === undefined || move.amount === 0) return "";
+  const digits = Math.abs(move.amount) >= 10 ? 0 : Math.abs(move.amount) >= 1 ? 1 : 2;
+  const amount = formatNumber(Math.abs(move.amount), Math.max(digits, 0));
+  const step = row.level === null ? `each ${row.stepWords}` : "it";
+  return `, because among these sales ${step} comes with ${amount} ${move.amount < 0 ? "fewer" : "more"} ${move.unit}`;
+}
+
+function strongestCarried(row: LedgerRow): { from: string; amount: number } | null {
+  const largest = Math.max(Math.abs(row.money.own), Math.abs(row.money.coefficient));
+  let strongest: { from: string; amount: number } | null = null;
+  for (const part of row.money.carried) {
+    if (Math.abs(part.amount) < WORTH_SAYING * largest) continue;
+    if (strongest === null || Math.abs(part.amount) > Math.abs(strongest.amount)) strongest = part;
+  }
+  return strongest;
+}
+
+/** The one sentence over the ledger: the row that carries most. */
+export function ledgerHeadline(
+  rows: readonly LedgerRow[],
+  leftOut: readonly { key: string; label: string }[],
+  currencyCode: string,
+): string {
+  if (rows.length === 0) return "No attribute is in the model: every item is priced at the average of the evidence.";
+  if (leftOut.length === 0) {
+    return "Every attribute of the reference set is in the model, so each coefficient says only its own part.";
+  }
+  const most = rows.reduce((best, row) => (carriedSize(row) > carriedSize(best) ? row : best));
+  const step = moneyStep(most);
+  const names = listWords(leftOut.map((one) => lowerStart(one.label)));
+  if (roundTo(carriedSize(most), step) === 0) {
+    return `With ${names} left out, next to nothing is carried by the attributes that stay.`;
+  }
+  const turned = most.signTurned ? "; the sign has turned" : "";
+  return (
+    `With ${names} left out, ${lowerStart(subjectOf(most))} reads ${signed(most.money.coefficient, step, currencyCode)}. ` +
+    `Among items alike in that it is ${signed(most.money.own, step, currencyCode)}${turned}.`
+  );
+}
+
+function carriedSize(row: LedgerRow): number {
+  return Math.max(0, ...row.money.carried.map((part) => Math.abs(part.amount)));
+}
+
+function signed(amount: number, step: number, currencyCode: string): string {
+  return formatMoney(roundTo(amount, step), currencyCode);
+}
