@@ -33,13 +33,13 @@ export function toEvidenceTable(
       channel: sales.channels[at]!,
       source: sales.sources[at]!,
       verified: sales.verified[at] === 1,
-      values: attributes.map((attribute) => valueOf(attribute, sales.values[attribute.key]![at]!)),
+      values: attributes.map((attribute) => namedValue(attribute, sales.values[attribute.key]![at]!)),
     }),
   );
   return { keys: attributes.map((attribute) => attribute.key), attributes, rows };
 }
 
-function valueOf(attribute: Attribute, stored: number): AttributeValue {
+function namedValue(attribute: Attribute, stored: number): AttributeValue {
   if (!Number.isFinite(stored)) return null;
   if (attribute.kind === "choice") return attribute.levels[stored] ?? null;
   if (attribute.kind === "yesNo") return stored === 1;
