@@ -48,6 +48,9 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
       "SELECT sale_json FROM removed_sales WHERE id IN (SELECT value FROM json_each(?)) AND +class_id = ? ORDER BY id",
     )
     .pluck();
+  const selectDayIds = db
+    .prepare<[number, number], number>("SELECT id FROM sales WHERE class_id = ? AND sold_on = ? ORDER BY id")
+    .pluck();
   const deleteSale = db.prepare("DELETE FROM sales WHERE id = ?");
   const setAsideRow = db.prepare(
     `UPDATE sales SET set_aside_on = ?, set_aside_by = ?, set_aside_reason = ?
@@ -165,6 +168,11 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
       const live = find(classId, ids, attributes.listStored(classId));
       if (live.length === ids.length) return live;
       return [...live, ...selectRemoved.all(JSON.stringify(ids), classId).map((json) => JSON.parse(json) as Sale)];
+    },
+    /** Every sale of one day, set aside or not, by number. */
+    soldOnDay(classId: number, day: Day): Sale[] {
+      const ids = selectDayIds.all(classId, requireDay(day, "sold on"));
+      return ids.length === 0 ? [] : find(classId, ids, attributes.listStored(classId));
     },
     /** Verbatim cells of the row the sale came from, or null when it was typed. */
     cells(saleId: number): string[] | null {

@@ -1,0 +1,102 @@
+/**
+ * Every request with the function that answers it, and the one way in for all shells: check the input, run, reply as plain data.
+ */
+import { checkInput, isRequestName } from "../contract/checkInput.ts";
+import type { Handlers } from "../contract/client.ts";
+import { failure, type Reply } from "../contract/reply.ts";
+import type { RequestName } from "../contract/requests.ts";
+import { AppError } from "../domain/errors.ts";
+import {
+  addAttribute,
+  archiveAttribute,
+  changeAttribute,
+  createClass,
+  describeClass,
+  listClasses,
+} from "./assetClasses.ts";
+import { importSales, startClassFromFile } from "./importSales.ts";
+import { leaveOutHeldBack, listHeldBack, mendHeldBack } from "./mendHeldBack.ts";
+import type { Ports } from "./ports.ts";
+import { previewImport } from "./previewImport.ts";
+import {
+  changeSettings,
+  listEditions,
+  listJournal,
+  listSheets,
+  loadDraft,
+  readSettings,
+  readSheet,
+  saveDraft,
+  withdrawSheet,
+} from "./records.ts";
+import { listSales, putBackSales, setAsideSales, verifySales } from "./saleRegister.ts";
+import { listBatches, undoBatch } from "./undoBatch.ts";
+
+/** Requests that need the price model, the sheet or the demo's files; the others only read and write the store. */
+type ComputingRequest =
+  | "currentModel"
+  | "appraise"
+  | "saveEdition"
+  | "previewSheet"
+  | "issueSheet"
+  | "verifySheet"
+  | "openDemo";
+
+export function createStoreHandlers(ports: Ports): Omit<Handlers, ComputingRequest> {
+  return {
+    listClasses: () => listClasses(ports),
+    createClass: (input) => createClass(ports, input),
+    describeClass: (input) => describeClass(ports, input),
+    addAttribute: (input) => addAttribute(ports, input),
+    changeAttribute: (input) => changeAttribute(ports, input),
+    archiveAttribute: (input) => archiveAttribute(ports, input),
+    listSales: (input) => listSales(ports, input),
+    setAsideSales: (input) => setAsideSales(ports, input),
+    putBackSales: (input) => putBackSales(ports, input),
+    verifySales: (input) => verifySales(ports, input),
+    previewImport: (input) => previewImport(ports, input),
+    importSales: (input) => importSales(ports, input),
+    startClassFromFile: (input) => startClassFromFile(ports, input),
+    listBatches: (input) => listBatches(ports, input),
+    undoBatch: (input) => undoBatch(ports, input),
+    listHeldBack: (input) => listHeldBack(ports, input),
+    mendHeldBack: (input) => mendHeldBack(ports, input),
+    leaveOutHeldBack: (input) => leaveOutHeldBack(ports, input),
+    listEditions: (input) => listEditions(ports, input),
+    saveDraft: (input) => saveDraft(ports, input),
+    loadDraft: (input) => loadDraft(ports, input),
+    listSheets: (input) => listSheets(ports, input),
+    readSheet: (input) => readSheet(ports, input),
+    withdrawSheet: (input) => withdrawSheet(ports, input),
+    listJournal: (input) => listJournal(ports, input),
+    readSettings: () => readSettings(ports),
+    changeSettings: (input) => changeSettings(ports, input),
+  };
+}
+
+function handlerOf(handlers: Partial<Handlers>, name: string): (input: unknown) => unknown {
+  const handler = isRequestName(name) ? handlers[name] : undefined;
+  if (handler !== undefined) return handler as (input: unknown) => unknown;
+  throw new AppError({
+    family: "request",
+    code: "no-such-request",
+    what: `There is no request "${name}".`,
+    where: name,
+    whatToDo: "Check that the window and the program are of the same version.",
+  });
+}
+
+/** Checks the input, runs the handler, and turns whatever happens into a reply. Never throws. */
+export async function dispatch(
+  handlers: Partial<Handlers>,
+  log: Ports["log"],
+  name: string,
+  input: unknown,
+): Promise<Reply<unknown>> {
+  try {
+    const handler = handlerOf(handlers, name);
+    return { ok: true, value: await handler(checkInput(name as RequestName, input)) };
+  } catch (cause) {
+    return failure(cause, log);
+  }
+}
