@@ -30,7 +30,9 @@ export function buildDesign(
       whatToDo: "Widen the filter, put sales back, or leave out the attribute whose values are missing.",
     });
   }
-  const rows = Int32Array.from(used).sort((a, b) => sales.soldOn[a]! - sales.soldOn[b]! || sales.ids[a]! - sales.ids[b]!);
+  const rows = Int32Array.from(used).sort(
+    (a, b) => sales.soldOn[a]! - sales.soldOn[b]! || sales.ids[a]! - sales.ids[b]!,
+  );
   const prices = Float64Array.from(rows, (at) => sales.price[at]!);
   const soldOn = Float64Array.from(rows, (at) => sales.soldOn[at]!);
   const response = model.response === "lnPrice" ? prices.map((price) => Math.log(price)) : prices;
@@ -83,7 +85,11 @@ function refuseUnsuited(kind: string, label: string, { form }: ModelAttribute): 
     what: `${label} cannot enter the model as ${FORMS[form].label}.`,
     where: `Price model, attribute ${label}`,
     whatToDo:
-      kind === "choice" ? "Use it as a choice." : kind === "yesNo" ? "Use it as yes or no." : "Use a straight line or a logarithm.",
+      kind === "choice"
+        ? "Use it as a choice."
+        : kind === "yesNo"
+          ? "Use it as yes or no."
+          : "Use a straight line or a logarithm.",
   });
 }
 
@@ -95,7 +101,18 @@ function addGroup(columns: DesignColumn[], source: FormSource, { key, form }: Mo
   });
   const { unit, reference, step, stepWords } = made;
   const decimals = source.attribute?.decimals ?? 0;
-  return { key, label: source.label, form, unit, decimals, step, stepWords, columns: indexes, reference, isMarket: false };
+  return {
+    key,
+    label: source.label,
+    form,
+    unit,
+    decimals,
+    step,
+    stepWords,
+    columns: indexes,
+    reference,
+    isMarket: false,
+  };
 }
 
 function addMarket(columns: DesignColumn[], soldOn: Float64Array): AttributeGroup {

@@ -3,8 +3,8 @@
  * choice moves as one attribute. Made by buildDesign and fitColumns; read by valuation and explanation.
  */
 import type { AttributeForm, ResponseForm } from "../domain/priceModel.ts";
-import type { LeastSquaresSolution } from "../numerics/solveLeastSquares.ts";
 import type { Moments } from "../numerics/accumulateMoments.ts";
+import type { LeastSquaresSolution } from "../numerics/solveLeastSquares.ts";
 
 export interface DesignColumn {
   /** Attribute key, CHANNEL_KEY or MARKET_KEY. */

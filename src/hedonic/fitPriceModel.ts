@@ -44,7 +44,12 @@ function solve(
   }
 }
 
-function inWords(cause: NumericsError, design: Design, columns: readonly number[], groups: readonly AttributeGroup[]): AppError {
+function inWords(
+  cause: NumericsError,
+  design: Design,
+  columns: readonly number[],
+  groups: readonly AttributeGroup[],
+): AppError {
   const count = columns.length + 1;
   if (cause.code === "tooFewRows") {
     const sales = design.n === 1 ? "1 sale" : `${design.n} sales`;
