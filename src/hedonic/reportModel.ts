@@ -1,0 +1,192 @@
+/**
+ * A fit as the report that screens and sheets show. t ranges at 95 %; money per step at the average sale: after ln,
+ * P̄(e^(b·step) − 1) with P̄ = exp(mean ln price). Leave-one-out: e_i/(1 − h_i) (Allen 1974, PRESS). Smearing: Duan 1983.
+ */
+import type { AttributeEvidence, Coefficient, ModelReport } from "../domain/appraisal.ts";
+import { MARKET_KEY } from "../domain/attribute.ts";
+import type { PriceModel } from "../domain/priceModel.ts";
+import { correlation, inflation, partialCorrelation } from "../numerics/collinearity.ts";
+import { quantileOfSorted } from "../numerics/quantile.ts";
+import { tQuantile } from "../numerics/studentT.ts";
+import type { AttributeGroup, Design, Fit } from "./fit.ts";
+import type { ResolvedSet } from "./resolveDependencies.ts";
+
+export interface ReportInput {
+  readonly fit: Fit;
+  readonly model: PriceModel;
+  readonly resolved: ResolvedSet;
+  readonly leftOut: ModelReport["leftOut"];
+  /** Fit of the whole reference set: what moves together is judged among all of it. */
+  readonly reference: Fit;
+}
+
+export function reportModel({ fit, model, resolved, leftOut, reference }: ReportInput): ModelReport {
+  const { solution, design } = fit;
+  const { residualSumOfSquares: rss, totalSumOfSquares: sst, residualDf } = solution;
+  const press = pressOf(fit);
+  const averagePrice = design.responseForm === "lnPrice" ? Math.exp(solution.responseMean) : solution.responseMean;
+  return {
+    model,
+    response: design.responseForm,
+    attributes: fit.groups.map((group) => group.key),
+    leftOut,
+    n: design.n,
+    p: solution.rank,
+    rank: solution.rank,
+    residualDf,
+    s: solution.residualStandardError,
+    r2: sst > 0 ? 1 - rss / sst : null,
+    adjustedR2: sst > 0 && residualDf > 0 ? 1 - rss / residualDf / (sst / (design.n - 1)) : null,
+    looR2: sst > 0 && press !== null ? 1 - press / sst : null,
+    looTypicalError: press === null ? null : typicalError(press, fit, averagePrice),
+    digitsToTrust: solution.digitsToTrust,
+    condition: solution.condition,
+    path: solution.path,
+    averagePrice,
+    smearing: design.responseForm === "lnPrice" ? smearingOf(solution.residuals) : null,
+    coefficients: coefficientsOf(fit, averagePrice),
+    dependencies: resolved.notices,
+    attributeEvidence: design.groups.map((group) => evidenceOf(design, group, fit)),
+    movingTogether: pairsOf(reference),
+    widening: fit.groups.map((group) => wideningOf(fit, group)),
+  };
+}
+
+/** Σ (e/(1 − h))², or null when a sale is the only one of its kind. */
+function pressOf({ solution, leverages }: Fit): number | null {
+  let sum = 0;
+  for (let i = 0; i < leverages.length; i++) {
+    const rest = 1 - leverages[i]!;
+    if (rest < 1e-9) return null;
+    sum += (solution.residuals[i]! / rest) ** 2;
+  }
+  return sum;
+}
+
+/** Root mean square of the leave-one-out errors as a share of price: after ln, e^rms − 1; plain, rms over the mean price. */
+function typicalError(press: number, { design }: Fit, averagePrice: number): number {
+  const rms = Math.sqrt(press / design.n);
+  return design.responseForm === "lnPrice" ? Math.expm1(rms) : rms / averagePrice;
+}
+
+/** Duan 1983: the mean of e^residual. */
+export function smearingOf(residuals: Float64Array): number {
+  return residuals.reduce((sum, e) => sum + Math.exp(e), 0) / residuals.length;
+}
+
+function coefficientsOf(fit: Fit, averagePrice: number): Coefficient[] {
+  const { solution, design, columns, groups } = fit;
+  const t = solution.residualDf > 0 ? tQuantile(0.975, solution.residualDf) : null;
+  const intercept: Coefficient = {
+    attribute: "intercept",
+    label: "Intercept",
+    level: null,
+    stepWords: "",
+    estimate: solution.intercept!,
+    ...errorsOf(solution.intercept!, solution.interceptStandardError, fit.hc3InterceptStandardError, t),
+    moneyPerStep: null,
+    moneyLow95: null,
+    moneyHigh95: null,
+  };
+  const others = columns.map((index, at): Coefficient => {
+    const { attribute, level } = design.columns[index]!;
+    const group = groups.find((one) => one.key === attribute)!;
+    const estimate = solution.slopes[at]!;
+    const standardError = t === null ? null : solution.standardErrors[at]!;
+    const errors = errorsOf(estimate, standardError, fit.hc3StandardErrors?.[at] ?? null, t);
+    const money = (b: number | null) => (b === null ? null : moneyOf(design, b, group.step, averagePrice));
+    return {
+      attribute,
+      label: group.label,
+      level,
+      stepWords: group.stepWords ?? (group.form === "choice" ? `against ${group.reference}` : "yes against no"),
+      estimate,
+      ...errors,
+      moneyPerStep: money(estimate),
+      moneyLow95: money(errors.low95),
+      moneyHigh95: money(errors.high95),
+    };
+  });
+  return [intercept, ...others];
+}
+
+function errorsOf(estimate: number, standardError: number | null, hc3: number | null, t: number | null) {
+  const isKnown = standardError !== null && t !== null;
+  return {
+    standardError,
+    hc3StandardError: isKnown ? hc3 : null,
+    low95: isKnown ? estimate - t * standardError : null,
+    high95: isKnown ? estimate + t * standardError : null,
+  };
+}
+
+function moneyOf(design: Design, b: number, step: number, averagePrice: number): number {
+  return design.responseForm === "lnPrice" ? averagePrice * Math.expm1(b * step) : b * step;
+}
+
+function evidenceOf(design: Design, group: AttributeGroup, fit: Fit): AttributeEvidence {
+  const included = fit.groups.some((one) => one.key === group.key);
+  const kind = group.isMarket
+    ? ("market" as const)
+    : group.form === "choice"
+      ? ("choice" as const)
+      : group.form === "yesNo"
+        ? ("yesNo" as const)
+        : ("number" as const);
+  const base = {
+    key: group.key,
+    label: group.label,
+    kind,
+    form: group.form,
+    unit: group.unit,
+    decimals: group.decimals,
+  };
+  const columns = group.columns.map((index) => design.columns[index]!);
+  if (group.form === "choice" || group.form === "yesNo") {
+    const counts = columns.map(({ level, values }) => ({
+      level: level!,
+      count: values.reduce((sum, one) => sum + one, 0),
+    }));
+    const rest = design.n - counts.reduce((sum, { count }) => sum + count, 0);
+    const levels = [{ level: group.reference ?? "", count: rest }, ...counts];
+    return { ...base, included, spread: null, levels, reference: group.reference };
+  }
+  const raw = group.form === "ln" ? columns[0]!.values.map((value) => Math.exp(value)) : columns[0]!.values;
+  const sorted = Float64Array.from(raw).sort();
+  const at = (p: number) => quantileOfSorted(sorted, p);
+  const mean = raw.reduce((sum, value) => sum + value, 0) / raw.length;
+  const spread = { low: at(0), q1: at(0.25), median: at(0.5), q3: at(0.75), high: at(1), mean };
+  return { ...base, included, spread, levels: [], reference: null };
+}
+
+/** Pairs of one-column attributes by partial correlation, strongest first; choices of several columns are left to widening. */
+function pairsOf(reference: Fit): ModelReport["movingTogether"] {
+  const k = reference.columns.length;
+  const single = reference.groups.filter((group) => group.columns.length === 1 && group.key !== MARKET_KEY);
+  const pairs: { a: string; b: string; partialCorrelation: number; correlation: number }[] = [];
+  single.forEach((first, i) => {
+    for (const second of single.slice(i + 1)) {
+      const [a, b] = [first.columns[0]!, second.columns[0]!];
+      pairs.push({
+        a: first.key,
+        b: second.key,
+        partialCorrelation: partialCorrelation(
+          reference.solution.inverse,
+          k,
+          reference.columns.indexOf(a),
+          reference.columns.indexOf(b),
+        ),
+        correlation: correlation(reference.design.columns[a]!.values, reference.design.columns[b]!.values),
+      });
+    }
+  });
+  return pairs.sort((x, y) => Math.abs(y.partialCorrelation) - Math.abs(x.partialCorrelation));
+}
+
+/** √VIF, or GVIF^(1/2df) for a choice (Fox & Monette 1992). */
+function wideningOf(fit: Fit, group: AttributeGroup): ModelReport["widening"][number] {
+  const values = fit.columns.map((index) => fit.design.columns[index]!.values);
+  const at = group.columns.map((index) => fit.columns.indexOf(index));
+  const times = inflation(values, fit.solution.inverse, at) ** (1 / (2 * at.length));
+  return { key: group.key, label: group.label, times };
+}

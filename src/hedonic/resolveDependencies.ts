@@ -1,0 +1,142 @@
+/**
+ * Attributes that repeat each other exactly: found over the whole reference set, written as equations in the class's own
+ * labels, and resolved by leaving one out — the person's choice first, else the later attribute. A level of a choice that
+ * other columns already say loses only its own column. The fitted prices are the same whichever is left out.
+ */
+import type { DependencyNotice } from "../domain/appraisal.ts";
+import { formatNumber, listWords, lowerStart } from "../domain/format.ts";
+import type { PriceModel } from "../domain/priceModel.ts";
+import { type Dependency, findDependencies } from "../numerics/findDependencies.ts";
+import type { AttributeGroup, Design } from "./fit.ts";
+
+export interface ResolvedSet {
+  readonly notices: readonly DependencyNotice[];
+  /** Groups that can be fitted together, levels that repeat others taken out. */
+  readonly referenceGroups: readonly AttributeGroup[];
+  /** Attributes left out whole because they repeat others, with a sentence. */
+  readonly exactOut: readonly { readonly key: string; readonly sentence: string }[];
+}
+
+export function resolveDependencies(design: Design, model: PriceModel): ResolvedSet {
+  const order = columnOrder(design, model.leftOut);
+  const found = findDependencies(
+    order.map((index) => design.columns[index]!.values),
+    { intercept: true },
+  );
+  const dropped = new Set(found.dependent.map((one) => order[one.column]!));
+  const referenceGroups = design.groups
+    .map((group) => ({ ...group, columns: group.columns.filter((index) => !dropped.has(index)) }))
+    .filter((group) => group.columns.length > 0);
+  const standing = new Set(referenceGroups.map((group) => group.key));
+  const notices = found.dependent.map((one) => noticeOf(design, model, order, one, standing));
+  const exactOut = design.groups
+    .filter((group) => !standing.has(group.key))
+    .map((group) => ({ key: group.key, sentence: exactSentence(design, group, notices) }));
+  return { notices, referenceGroups, exactOut };
+}
+
+/**
+ * Columns in model order, but attributes that the person left out come last: then they are the ones found dependent, and
+ * the person's choice of what to leave out is what stands.
+ */
+function columnOrder(design: Design, leftOut: readonly string[]): number[] {
+  const isOut = (group: AttributeGroup) => leftOut.includes(group.key);
+  return [...design.groups.filter((group) => !isOut(group)), ...design.groups.filter(isOut)].flatMap((group) => [
+    ...group.columns,
+  ]);
+}
+
+function noticeOf(
+  design: Design,
+  model: PriceModel,
+  order: readonly number[],
+  dependency: Dependency,
+  standing: ReadonlySet<string>,
+): DependencyNotice {
+  const dependentColumn = design.columns[order[dependency.column]!]!;
+  const owner = groupOf(design, dependentColumn.attribute);
+  const isWhole = !standing.has(owner.key);
+  const keys = [
+    ...new Set([owner.key, ...dependency.terms.map((term) => design.columns[order[term.column]!]!.attribute)]),
+  ];
+  const choices = keys.map((key) => ({ key, label: groupOf(design, key).label }));
+  const equation = equationOf(design, order, dependency);
+  const by = model.leftOut.includes(owner.key) ? ("person" as const) : ("program" as const);
+  const resolvedBy = { key: owner.key, label: nameOf(design, order[dependency.column]!), chosenBy: by };
+  return {
+    equation,
+    sentence: sentenceOf(design, dependency, resolvedBy.label, isWhole, by),
+    attributes: keys,
+    choices: dependency.terms.length === 0 ? choices.slice(0, 1) : choices,
+    resolvedBy,
+  };
+}
+
+function sentenceOf(
+  design: Design,
+  dependency: Dependency,
+  label: string,
+  isWhole: boolean,
+  by: "person" | "program",
+): string {
+  const sales = design.n === 1 ? "the one sale" : `all ${formatNumber(design.n)} sales`;
+  if (dependency.terms.length === 0) {
+    return `${label} has the same value in ${sales}, so nothing can be read from it; it is left out.`;
+  }
+  const what = isWhole ? label : `the column ${label}`;
+  const who = by === "person" ? `You left ${lowerStart(what)} out` : `The program left ${lowerStart(what)} out`;
+  return `This holds exactly in ${sales}. With all of them in, no unique answer exists. ${who}; the price is the same whichever is left out.`;
+}
+
+function exactSentence(design: Design, group: AttributeGroup, notices: readonly DependencyNotice[]): string {
+  const notice = notices.find((one) => one.resolvedBy?.key === group.key);
+  const others = (notice?.attributes ?? []).filter((key) => key !== group.key).map((key) => groupOf(design, key).label);
+  if (others.length === 0) return `${group.label} is the same in every sale.`;
+  return `${group.label} is already said by ${listWords(others.map(lowerStart))}.`;
+}
+
+/** "Power (hp) = 1.341 × Power (kW)", "Hours total = hours work + hours idle", "Build year = 2,024 − months used ÷ 12" */
+function equationOf(design: Design, order: readonly number[], { column, constant, terms }: Dependency): string {
+  const left = nameOf(design, order[column]!);
+  const parts = terms.map((term) => ({
+    negative: term.coefficient < 0,
+    text: timesWords(
+      Math.abs(term.coefficient),
+      term.ratio?.denominator ?? 1,
+      term.ratio,
+      nameOf(design, order[term.column]!),
+    ),
+  }));
+  if (constant !== 0 || parts.length === 0) {
+    const decimals = Number.isInteger(constant) ? 0 : 4;
+    const text = Math.abs(constant) < 10_000 ? plain(Math.abs(constant)) : formatNumber(Math.abs(constant), decimals);
+    parts.unshift({ negative: constant < 0, text });
+  }
+  const right = parts.map(({ negative, text }, at) =>
+    at === 0 ? `${negative ? "−" : ""}${text}` : `${negative ? "−" : "+"} ${text}`,
+  );
+  return `${left} = ${right.join(" ")}`;
+}
+
+function timesWords(size: number, denominator: number, ratio: { numerator: number } | null, name: string): string {
+  if (size === 1) return name;
+  if (ratio !== null && Math.abs(ratio.numerator) === 1 && denominator <= 1000)
+    return `${name} ÷ ${plain(denominator)}`;
+  return `${plain(size)} × ${name}`;
+}
+
+/** Up to six significant digits, no grouping: factors and years, not money. */
+function plain(value: number): string {
+  return String(Number(value.toPrecision(6)));
+}
+
+/** "Hours", or "Make Orveld" for a level. */
+function nameOf(design: Design, index: number): string {
+  const { attribute, level } = design.columns[index]!;
+  const group = groupOf(design, attribute);
+  return level === null || group.form === "yesNo" ? group.label : `${group.label} ${level}`;
+}
+
+function groupOf(design: Design, key: string): AttributeGroup {
+  return design.groups.find((group) => group.key === key)!;
+}
