@@ -110,9 +110,25 @@ function faultOf(cell: string, marks: Marks): Reading<never> {
   return unread(/\d/.test(cell) ? "Not a plain number." : "Not a number.");
 }
 
+const POWERED = /^([+-]?)(\d+)(?:([.,])(\d+))?[eE]([+-]?\d{1,2})$/;
+
+/** "1e+05" → "100000", "1.5E-2" → "0.015": some programs write round numbers so. Exact: only the point moves. */
+function plainFromPowered(cell: string, { decimalMark }: Marks): string | null {
+  const match = POWERED.exec(cell);
+  if (match === null || (match[3] ?? decimalMark) !== decimalMark) return null;
+  const [, sign, whole = "", , fraction = "", power] = match;
+  const digits = whole + fraction;
+  const point = whole.length + Number(power);
+  const padded = digits.padStart(digits.length + Math.max(0, 1 - point), "0").padEnd(point, "0");
+  const at = Math.max(1, point);
+  const minus = sign === "-" ? "-" : "";
+  const head = padded.slice(0, at).replace(/^0+(?=\d)/, "");
+  return at < padded.length ? `${minus}${head}.${padded.slice(at)}` : minus + head;
+}
+
 /** The plain decimal text of a trimmed cell, or why it is none. "5l20" → "A letter l among the digits.", 5120. */
 export function readDecimal(cell: string, marks: Marks): Reading<string> {
-  const plain = plainDecimal(cell, marks);
+  const plain = plainDecimal(cell, marks) ?? plainFromPowered(cell, marks);
   return plain === null ? faultOf(cell, marks) : read(plain);
 }
 
