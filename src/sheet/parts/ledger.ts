@@ -1,0 +1,139 @@
+/**
+ * "Which attributes are in, and what the ones left out would say": the carry-over ledger, each coefficient as its own part and
+ * what it carries, and each left-out attribute with its reason. Parts of a row are rounded so that they add up.
+ */
+import type { LedgerRow } from "../../domain/appraisal.ts";
+import { formatMoney, formatSigned, roundTo, roundToAddUp } from "../../domain/format.ts";
+import { listWords, lower, moneyTo, rowStep, signedTo } from "../figures.ts";
+import type { LedgerLine, Part, Section, Words } from "../sheetContent.ts";
+import type { SheetContext } from "./context.ts";
+
+/** Left-out attributes with a column of their own; the rest stand together. */
+const OWN_COLUMNS = 2;
+
+interface Column {
+  readonly head: string;
+  readonly keys: ReadonlySet<string>;
+}
+
+/** The left-out attributes that carry most, then the others together. */
+function columns({ appraisal }: SheetContext): Column[] {
+  const { leftOut, rows } = appraisal.ledger;
+  const size = new Map(leftOut.map(({ key }) => [key, 0]));
+  for (const row of rows) {
+    for (const { from, amount } of row.money.carried) size.set(from, (size.get(from) ?? 0) + Math.abs(amount));
+  }
+  const sorted = leftOut
+    .map((one, index) => ({ ...one, index }))
+    .sort((a, b) => size.get(b.key)! - size.get(a.key)! || a.index - b.index);
+  const own = sorted.length <= OWN_COLUMNS + 1 ? sorted : sorted.slice(0, OWN_COLUMNS);
+  const others = sorted.slice(own.length);
+  const heads: Column[] = own.map(({ key, label }) => ({ head: lower(label), keys: new Set([key]) }));
+  if (others.length > 0) {
+    heads.push({ head: `${others.length} others`, keys: new Set(others.map(({ key }) => key)) });
+  }
+  return heads;
+}
+
+/** Of a choice with several levels only the subject's own is shown; where it is the reference, the level that differs most. */
+function shownRows({ appraisal, priced }: SheetContext): LedgerRow[] {
+  const rows = appraisal.ledger.rows.filter(({ attribute }) => attribute !== "intercept");
+  return rows.filter((row) => {
+    const family = rows.filter(({ attribute }) => attribute === row.attribute);
+    if (row.level === null || family.length === 1) return true;
+    const own = family.find(({ level }) => level === priced.subject.values[row.attribute]);
+    const shown =
+      own ??
+      family.reduce((best, one) => (Math.abs(one.money.coefficient) > Math.abs(best.money.coefficient) ? one : best));
+    return row === shown;
+  });
+}
+
+function lineOf(row: LedgerRow, heads: readonly Column[]): LedgerLine {
+  const step = rowStep(row.money);
+  const carried = heads.map(({ keys }) =>
+    row.money.carried.filter(({ from }) => keys.has(from)).reduce((sum, { amount }) => sum + amount, 0),
+  );
+  const coefficient = roundTo(row.money.coefficient, step);
+  const [own, ...parts] = roundToAddUp([row.money.own, ...carried], coefficient, step);
+  const range = row.moneyRange95;
+  return {
+    label: row.level === null ? row.label : `${row.label} ${row.level}`,
+    unit: row.level === null ? `per ${row.stepWords}` : row.stepWords,
+    coefficient: formatSigned(coefficient),
+    range: range === null ? "not known" : `${signedTo(step, range.low)} to ${signedTo(step, range.high)}`,
+    own: formatSigned(own ?? coefficient),
+    carried: parts.map((part) => formatSigned(part)),
+    sentence: row.sentence,
+    ownMoney: row.money.own,
+    carriedMoney: carried,
+    coefficientMoney: row.money.coefficient,
+  };
+}
+
+export function ledgerSection(context: SheetContext): Section {
+  const { appraisal, sign } = context;
+  const heads = columns(context);
+  const shown = shownRows(context);
+  const lines = shown.map((row) => lineOf(row, heads));
+  const hidden = appraisal.ledger.rows.filter(({ attribute }) => attribute !== "intercept").length - shown.length;
+  const carriedHeads = heads.map(({ head }) => head);
+  const table: Part = {
+    kind: "ledger",
+    table: {
+      currencySign: sign,
+      rangeHead: `95\u00a0% range, ${sign}`,
+      carriedHeads,
+      lines,
+      alt: `Own and carried parts of each coefficient: ${lines
+        .map(
+          (line) =>
+            `${line.label} ${line.unit}: ${line.coefficient}, of it own ${line.own}${carriedHeads.map((head, k) => `, carried for ${head} ${line.carried[k]}`).join("")}`,
+        )
+        .join("; ")}.`,
+    },
+  };
+  const levels =
+    hidden > 0 ? ` Of a choice with several levels only the one that speaks of this ${context.itemWord} is shown.` : "";
+  const note: Part = {
+    kind: "note",
+    text: `As used here = own part + carried parts, exactly. Money is read at the average sale, other attributes alike; see caution 9.${levels}`,
+  };
+  const parts: Part[] = lines.length > 0 ? [table, note] : [];
+  const out = leftOutWords(context);
+  if (out.length > 0) parts.push({ kind: "paragraphs", items: out, size: "small" });
+  return { heading: "Which attributes are in, and what the ones left out would say", lead: leadWords(context), parts };
+}
+
+function leadWords({ appraisal }: SheetContext): string {
+  const { leftOut } = appraisal.ledger;
+  const { headline } = appraisal.ledger;
+  if (headline !== "") return headline;
+  return leftOut.length === 0
+    ? "Nothing of the reference set is left out."
+    : `Left out of the reference set: ${listWords(leftOut.map(({ label }) => lower(label)))}.`;
+}
+
+function leftOutWords({ appraisal, priced, currencyCode, step }: SheetContext): Words[] {
+  const ownOf = new Map<string, string>();
+  for (const one of appraisal.ledger.leftOutOwn) {
+    if (ownOf.has(one.key)) continue;
+    const what = one.level === null ? `${one.stepWords} more` : `${one.level}, ${one.stepWords},`;
+    const sense = one.money < 0 ? "less" : "more";
+    ownOf.set(
+      one.key,
+      ` Beside the full set, ${what} goes with ${moneyTo(Math.min(step, 10), Math.abs(one.money), currencyCode)} ${sense}.`,
+    );
+  }
+  return appraisal.report.leftOut.map(({ key, label, sentence }) => {
+    const effect = priced.notKnown.find((one) => one.key === key);
+    const read =
+      effect?.wouldRead.map(({ value, amount }) => `${formatMoney(roundTo(amount, step), currencyCode)} if ${value}`) ??
+      [];
+    const would = read.length === 0 ? "" : ` The price would read ${listWords(read)}.`;
+    return [
+      { text: `Left out: ${lower(label)}. `, bold: true },
+      { text: `${sentence}${ownOf.get(key) ?? ""}${would}` },
+    ];
+  });
+}
