@@ -71,6 +71,7 @@ function fitsAttribute(heading: string, attribute: Attribute, synonyms: boolean)
   const wanted = attribute.unit ?? label.unit;
   if (unit !== null && wanted !== null && unitRatio(unit, wanted) === null && unit !== wanted) return false;
   if (name === label.name || own.includes(name)) return true;
+  if (synonyms && attribute.kind === "built" && BUILT_WORDS.includes(name)) return true;
   return synonyms && ATTRIBUTE_SYNONYMS.some((words) => words.includes(name) && words.includes(label.name));
 }
 

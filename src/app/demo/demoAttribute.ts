@@ -1,0 +1,45 @@
+/** Attributes of the demo classes, said shortly. */
+import type { Attribute } from "../../domain/attribute.ts";
+
+const PLAIN = {
+  unit: null,
+  step: 1,
+  levels: [],
+  lowest: null,
+  highest: null,
+  expectedDirection: null,
+  notes: "",
+  decimals: 0,
+  archived: false,
+} as const;
+
+export function number(
+  key: string,
+  label: string,
+  unit: string | null,
+  more: Partial<Pick<Attribute, "step" | "lowest" | "highest" | "expectedDirection" | "decimals" | "notes">>,
+): Attribute {
+  return { ...PLAIN, key, label, kind: "number", unit, ...more };
+}
+
+export function built(key: string, label: string, highest: number): Attribute {
+  return {
+    ...PLAIN,
+    key,
+    label,
+    kind: "built",
+    unit: "years",
+    lowest: 0,
+    highest,
+    expectedDirection: "down",
+    decimals: 1,
+  };
+}
+
+export function choice(key: string, label: string, levels: readonly string[], notes = ""): Attribute {
+  return { ...PLAIN, key, label, kind: "choice", levels, notes };
+}
+
+export function yesNo(key: string, label: string): Attribute {
+  return { ...PLAIN, key, label, kind: "yesNo", expectedDirection: "up" };
+}
