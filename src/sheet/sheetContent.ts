@@ -181,7 +181,7 @@ export interface PullTable {
   readonly attributeHeads: readonly string[];
   readonly lines: readonly PullLine[];
   readonly rest: { readonly words: string; readonly pull: string } | null;
-  readonly total: { readonly words: string; readonly pull: string; readonly price: string; readonly note: string };
+  readonly total: { readonly words: string; readonly pull: string; readonly price: string };
   readonly alt: string;
 }
 

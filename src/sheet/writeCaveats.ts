@@ -6,7 +6,7 @@
 import type { Appraisal, Caveat, PricePart } from "../domain/appraisal.ts";
 import { CHANNEL_KEY, MARKET_KEY } from "../domain/attribute.ts";
 import { DAYS_PER_MONTH, dayNumber } from "../domain/day.ts";
-import { formatDay, formatMoney, formatNumber, formatPercent, roundTo } from "../domain/format.ts";
+import { formatDay, formatNumber, formatPercent, roundTo } from "../domain/format.ts";
 import { ruleRange, stepOf } from "./concludePrice.ts";
 import { countWord, figureStep, moneyTo, plural, upperStart } from "./figures.ts";
 
@@ -194,12 +194,13 @@ const dependencies: Rule = ({ report }) =>
     };
   });
 
-const marketHeld: Rule = ({ priced, report, assetClass }) => {
+const marketHeld: Rule = ({ priced, report, assetClass, step }) => {
   const held = priced.price.marketHeldAt;
   if (held === null) return [];
   const days = (dayNumber(priced.subject.effectiveOn) ?? 0) - (dayNumber(held) ?? 0);
   const size = marketMoney(report, days / DAYS_PER_MONTH) ?? 0;
-  const money = size >= 1 ? `; carried on, it would come to about ${formatMoney(size, assetClass.currencyCode)}` : "";
+  const money =
+    size >= step ? `; carried on, it would come to about ${moneyTo(step, size, assetClass.currencyCode)}` : "";
   return [
     {
       code: "market-held",

@@ -105,7 +105,7 @@ export class Table {
 
 /** Width that the texts of a column need, mm. */
 export function columnWidth(paper: Paper, texts: readonly Rich[], style: Style, atLeast = 0): number {
-  return texts.reduce<number>((width, text) => Math.max(width, paper.typeface.width(text, style)), atLeast);
+  return texts.reduce<number>((width, text) => Math.max(width, paper.typeface.width(text, style) + 0.05), atLeast);
 }
 
 /** A head of a column in two lines, broken at its best blank. */

@@ -232,7 +232,7 @@ function priceBlock(paper: Paper, first: FirstPage, from: number): void {
   const size = wide <= HERO_WIDTH ? STYLES.price.size : (STYLES.price.size * HERO_WIDTH) / wide;
   const baseline = top + baselineOf(STYLES.price);
   paper.leaf("P", paper.tag("P"), () => {
-    paper.text(first.price, PAGE.left - 0.5, baseline, { ...STYLES.price, size });
+    paper.text(first.price, PAGE.left, baseline, { ...STYLES.price, size });
   });
   top += mm(STYLES.price.leading);
   top += paragraph(paper, {}, first.priceInWords, place(), STYLES.priceInWords) + 1;

@@ -7,7 +7,7 @@ import type { LedgerLine, LedgerTable } from "../sheetContent.ts";
 import { type Column, columnWidth, headWidth } from "./cells.ts";
 import { type Band, baselineOf, fitText, hairline, mm, type Strip, setLines } from "./flow.ts";
 import { PAGE, type Paper, type Tag, TEXT_WIDTH } from "./paper.ts";
-import { type Scale, scaleOf, tickStep, ticksBetween } from "./scale.ts";
+import { roomyTicks, type Scale, scaleOf } from "./scale.ts";
 import { HAIR, INK, RULES, SLATE, STYLES, VERDIGRIS, WHITE } from "./styles.ts";
 
 const PICTURE = 43;
@@ -43,7 +43,7 @@ function layoutOf(paper: Paper, table: LedgerTable): Layout {
           index === 0 ? STYLES.cellBold : STYLES.cell,
         ),
         Math.min(headWidth(paper, head), index > 2 ? 17 : 30),
-      ) + 2,
+      ) + 3,
   );
   const figures = widths.reduce((sum, width) => sum + width, 0);
   const picture = Math.max(24, Math.min(PICTURE, TEXT_WIDTH - NAME - figures - GAP));
@@ -57,9 +57,11 @@ function layoutOf(paper: Paper, table: LedgerTable): Layout {
   const [low, high] = [Math.min(0, ...stops), Math.max(0, ...stops)];
   const pad = (high - low) * 0.08 || 1;
   const scale = scaleOf(low - pad, high + pad, PAGE.right - picture, PAGE.right - 1);
-  const ticks = ticksBetween(scale.from, scale.to, tickStep((scale.to - scale.from) / (picture > 36 ? 3 : 2)));
+  const ticks = roomyTicks(scale, picture > 36 ? 3 : 2, (tick) => paper.typeface.width(tickText(tick), STYLES.axis));
   return { columns, heads, scale, ticks, left: TEXT_WIDTH - picture - GAP - figures };
 }
+
+const tickText = (tick: number): string => formatNumber(tick, tick % 1 === 0 ? 0 : 2);
 
 /** Where the own part and each carried part end. */
 function stopsOf(line: LedgerLine): number[] {
@@ -166,13 +168,7 @@ function headStrip(paper: Paper, tags: () => { table: Tag }, layout: Layout): St
       paper.artifact(() => {
         paper.line(PAGE.left, top + height, PAGE.right, top + height, RULES.head, INK);
         for (const tick of layout.ticks) {
-          paper.text(
-            formatNumber(tick, tick % 1 === 0 ? 0 : 2),
-            layout.scale(tick),
-            bottom - 0.2,
-            STYLES.axis,
-            "middle",
-          );
+          paper.text(tickText(tick), layout.scale(tick), bottom - 0.2, STYLES.axis, "middle");
         }
       });
       const head = (lines: typeof first.lines, x: number, boxHeight: number, align: "left" | "right"): void =>
@@ -188,36 +184,52 @@ function headStrip(paper: Paper, tags: () => { table: Tag }, layout: Layout): St
   };
 }
 
+interface LegendItem {
+  readonly words: string;
+  readonly sample: number;
+  draw(x: number, y: number): void;
+}
+
+function legendItems(paper: Paper, table: LedgerTable): LegendItem[] {
+  return [
+    { words: "own part", sample: 4, draw: (x, y) => paper.rect(x, y, 4, 1.9, { fill: SLATE }) },
+    ...table.carriedHeads.map((head, index) => ({
+      words: `carried for ${head}`,
+      sample: 4,
+      draw: (x: number, y: number) => carriedBar(paper, index, x, y, 4, 1.9),
+    })),
+    { words: "as used here", sample: 1.8, draw: (x, y) => diamond(paper, x + 0.9, y + 0.95) },
+  ];
+}
+
+/** What the bars mean; as many lines as it takes. */
 function legendStrip(paper: Paper, table: LedgerTable): Strip {
   const style = STYLES.note;
-  const height = mm(style.leading) + 1.4;
+  const places: { item: LegendItem; words: string; x: number; line: number }[] = [];
+  let [x, line] = [0, 0];
+  for (const item of legendItems(paper, table)) {
+    const words = fitText(paper, item.words, style, TEXT_WIDTH - item.sample - 1, 1)
+      .lines[0]!.map(({ text }) => text)
+      .join("");
+    const width = item.sample + 1 + paper.typeface.width(words, style);
+    if (x > 0 && x + width > TEXT_WIDTH) {
+      x = 0;
+      line += 1;
+    }
+    places.push({ item, words, x, line });
+    x += width + 3;
+  }
   return {
-    height,
+    height: (line + 1) * mm(style.leading) + 1.4,
     draw: (top) => {
-      const baseline = top + 1.4 + baselineOf(style);
-      let x: number = PAGE.left;
-      const item = (words: string, sample: (x: number, y: number) => number): void => {
-        paper.artifact(() => {
-          x += sample(x, baseline - 1.8) + 1;
-        });
+      for (const place of places) {
+        const baseline = top + 1.4 + place.line * mm(style.leading) + baselineOf(style);
+        const left = PAGE.left + place.x;
+        paper.artifact(() => place.item.draw(left, baseline - 1.8));
         paper.leaf("P", paper.tag("P"), () => {
-          x += paper.text(words, x, baseline, style) + 3;
+          paper.text(place.words, left + place.item.sample + 1, baseline, style);
         });
-      };
-      item("own part", (at, y) => {
-        paper.rect(at, y, 4, 1.9, { fill: SLATE });
-        return 4;
-      });
-      table.carriedHeads.forEach((head, index) => {
-        item(`carried for ${head}`, (at, y) => {
-          carriedBar(paper, index, at, y, 4, 1.9);
-          return 4;
-        });
-      });
-      item("as used here", (at, y) => {
-        diamond(paper, at + 0.9, y + 0.95);
-        return 1.8;
-      });
+      }
     },
   };
 }

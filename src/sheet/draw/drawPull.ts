@@ -6,8 +6,8 @@ import { PAGE, type Paper, TEXT_WIDTH } from "./paper.ts";
 import { INK, SLATE, STYLES } from "./styles.ts";
 import type { Style } from "./typeface.ts";
 
-const PICTURE = 25;
-const BREATH = 2.6;
+const PICTURE = 24;
+const BREATH = 2.4;
 
 interface Wanted {
   readonly head: string;
@@ -40,39 +40,53 @@ function wantedColumns(table: PullTable): Wanted[] {
 }
 
 const ITEM = 2;
+/** The item's name and the bars keep at least this much; attributes give way to them. mm */
+const LEAST = { item: 22, picture: 18 } as const;
 
-/** Every column gets what it needs; the item's name gives way, down to 14 mm, and the bars shrink after it. */
-function layoutOf(
-  paper: Paper,
-  table: PullTable,
-): { wanted: Wanted[]; columns: Column[]; picture: number; middle: number } {
-  const wanted = wantedColumns(table);
+interface Layout {
+  readonly wanted: readonly Wanted[];
+  readonly columns: readonly Column[];
+  readonly picture: number;
+  readonly middle: number;
+}
+
+function widthsOf(paper: Paper, table: PullTable, wanted: readonly Wanted[]): number[] {
   const widths = wanted.map(({ head, style, text }) =>
     Math.max(headWidth(paper, head), columnWidth(paper, table.lines.map(text), style)),
   );
-  const totals = [
-    columnWidth(paper, [table.total.pull, ...(table.rest === null ? [] : [table.rest.pull])], STYLES.cellBold),
-    columnWidth(paper, [table.total.price], STYLES.cellBold),
-  ];
   const pull = wanted.length - 4;
-  widths[pull] = Math.max(widths[pull]!, totals[0]!);
-  widths[pull + 1] = Math.max(widths[pull + 1]!, totals[1]!);
-  widths[0] = Math.min(widths[0]!, 22);
-  const others = widths.reduce((sum, width, index) => sum + (index === ITEM ? 0 : width), 0) + BREATH * wanted.length;
-  let picture = PICTURE;
-  let item = TEXT_WIDTH - others - picture;
-  if (item < 14) {
-    picture = Math.max(12, picture - (14 - item));
-    item = Math.max(9, TEXT_WIDTH - others - picture);
+  const pulls = [table.total.pull, ...(table.rest === null ? [] : [table.rest.pull])];
+  widths[pull] = columnWidth(paper, pulls, STYLES.cellBold, widths[pull]);
+  widths[pull + 1] = columnWidth(paper, [table.total.price], STYLES.cellBold, widths[pull + 1]);
+  widths[0] = Math.min(widths[0]!, 24);
+  return widths;
+}
+
+/** Every column gets what it needs; where that leaves no room, the last attributes are not shown. */
+function layoutOf(paper: Paper, table: PullTable): Layout {
+  const all = wantedColumns(table);
+  for (let shown = table.attributeHeads.length; ; shown--) {
+    const wanted = all.filter(
+      (_, index) => index <= ITEM || index > ITEM + table.attributeHeads.length || index <= ITEM + shown,
+    );
+    const widths = widthsOf(paper, table, wanted);
+    const others = widths.reduce((sum, width, index) => sum + (index === ITEM ? 0 : width), 0) + BREATH * wanted.length;
+    const room = TEXT_WIDTH - others;
+    if (room < LEAST.item + LEAST.picture && shown > 0) continue;
+    const picture = Math.max(10, Math.min(PICTURE, room - LEAST.item));
+    const item = Math.max(8, room - picture);
+    widths[ITEM] = Math.min(item, Math.max(widths[ITEM]!, 14));
+    return placed(wanted, widths, picture, item - widths[ITEM]!);
   }
-  widths[ITEM] = Math.min(item, Math.max(widths[ITEM]!, 14));
-  const spare = item - widths[ITEM]!;
+}
+
+function placed(wanted: readonly Wanted[], widths: readonly number[], picture: number, spare: number): Layout {
   let left = 0;
-  const columns: Column[] = [];
-  wanted.forEach(({ align }, index) => {
+  const columns = wanted.map(({ align }, index): Column => {
     if (index === wanted.length - 1) left += picture;
-    columns.push({ left, width: widths[index]!, align });
+    const column: Column = { left, width: widths[index]!, align };
     left += widths[index]! + BREATH + spare / wanted.length;
+    return column;
   });
   const last = columns[columns.length - 1]!;
   return { wanted, columns, picture, middle: PAGE.left + last.left - BREATH / 2 - picture / 2 };

@@ -4,10 +4,10 @@
  */
 import { formatNumber } from "../../domain/format.ts";
 import type { StepRow, StepsTable } from "../sheetContent.ts";
-import { type Cell, type Column, columnWidth, headWidth, type Row, Table } from "./cells.ts";
+import { type Cell, type Column, columnWidth, type Row, Table } from "./cells.ts";
 import type { Band } from "./flow.ts";
 import { PAGE, type Paper, TEXT_WIDTH } from "./paper.ts";
-import { type Scale, scaleOf, tickStep, ticksBetween } from "./scale.ts";
+import { roomyTicks, type Scale, scaleOf } from "./scale.ts";
 import { HAIR, INK, SLATE, STYLES, VERDIGRIS, WHITE } from "./styles.ts";
 
 const PICTURE = 54;
@@ -17,7 +17,7 @@ const ROW = 5;
 /** Figures take what they need from the right; words share the rest. */
 function columnsOf(paper: Paper, table: StepsTable): Column[] {
   const texts = (pick: (row: StepRow) => string, head: string): number =>
-    Math.max(columnWidth(paper, table.rows.map(pick), STYLES.cellBold), headWidth(paper, head)) + 2.2;
+    Math.max(columnWidth(paper, table.rows.map(pick), STYLES.cellBold), paper.typeface.width(head, STYLES.head)) + 3;
   const [, , , factorHead, stepHead, standsHead] = table.heads;
   const stands = texts((row) => row.standsAt, standsHead);
   const step = texts((row) => row.step, stepHead);
@@ -42,7 +42,7 @@ function moneyScale(table: StepsTable): Scale {
   const values = table.rows.flatMap(({ from, to }) => [from, to]);
   const [low, high] = [Math.min(...values), Math.max(...values)];
   const pad = (high - low) * 0.06 || Math.max(1, Math.abs(high) * 0.05);
-  return scaleOf(low - pad, high + pad, PAGE.right - PICTURE + 3, PAGE.right - 3);
+  return scaleOf(low - pad, high + pad, PAGE.right - PICTURE + 4, PAGE.right - 4);
 }
 
 interface Picture {
@@ -87,7 +87,8 @@ function cellsOf(row: StepRow, hasFactors: boolean): Cell[] {
 export function stepsBand(paper: Paper, table: StepsTable): Band {
   const columns = columnsOf(paper, table);
   const scale = moneyScale(table);
-  const ticks = ticksBetween(scale.from, scale.to, tickStep((scale.to - scale.from) / 3));
+  const label = (tick: number): string => formatNumber(tick, tick % 1 === 0 ? 0 : 2);
+  const ticks = roomyTicks(scale, 3, (tick) => paper.typeface.width(label(tick), STYLES.axis));
   const picture: Picture = { paper, scale, ticks };
   const drawn = new Table(paper, columns, table.alt);
   const heads = table.heads.filter((_, index) => index !== 3 || table.hasFactors);
@@ -97,8 +98,7 @@ export function stepsBand(paper: Paper, table: StepsTable): Band {
     pad: 0.9,
     rule: "ink",
     picture: (top, height) => {
-      for (const tick of ticks)
-        paper.text(formatNumber(tick, tick % 1 === 0 ? 0 : 2), scale(tick), top + height - 0.9, STYLES.axis, "middle");
+      for (const tick of ticks) paper.text(label(tick), scale(tick), top + height - 0.9, STYLES.axis, "middle");
     },
   };
   const rows = table.rows.map(

@@ -217,11 +217,11 @@ export class Paper {
   /** White rectangle with 45° lines cut at its sides, and an outline: "down" and "carried" without a tint. */
   hatch(x: number, y: number, w: number, h: number, color: string): void {
     this.rect(x, y, w, h, { fill: "#FFFFFF" });
-    const gap = 0.95;
+    const gap = 1.15;
     for (let c = -h + (gap - ((x - y + h) % gap)); c < w; c += gap) {
       const from = Math.max(0, c);
       const to = Math.min(w, c + h);
-      if (to - from > 0.02) this.line(x + from, y + h - (from - c), x + to, y + h - (to - c), 0.75, color);
+      if (to - from > 0.02) this.line(x + from, y + h - (from - c), x + to, y + h - (to - c), 0.65, color);
     }
     this.rect(x, y, w, h, { stroke: color, width: 0.75 });
   }

@@ -18,6 +18,21 @@ export function tickStep(target: number): number {
   return (head >= 5 ? 5 : head >= 2 ? 2 : 1) * power;
 }
 
+/**
+ * Round ticks of a scale whose labels do not touch: about `wanted` of them, fewer where a label (as wide as `widthOf` says, mm)
+ * would run into the next.
+ */
+export function roomyTicks(scale: Scale, wanted: number, widthOf: (value: number) => number): number[] {
+  let step = tickStep((scale.to - scale.from) / wanted);
+  for (let k = 0; k < 12; k++) {
+    const ticks = ticksBetween(scale.from, scale.to, step);
+    const widest = Math.max(0, ...ticks.map(widthOf));
+    if (Math.abs(scale(step) - scale(0)) >= widest + 2) return ticks;
+    step = tickStep(step * 2.5);
+  }
+  return [];
+}
+
 /** Multiples of `step` from `from` to `to`, ends included; at most 400. */
 export function ticksBetween(from: number, to: number, step: number): number[] {
   const first = Math.ceil(from / step - 1e-9);

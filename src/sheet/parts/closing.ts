@@ -1,7 +1,7 @@
 /** The last sections: further caveats, assumptions and limits, the standing cautions, and how to work the price out again. */
 import { formatDay, formatMoney, formatNumber, formatPercent } from "../../domain/format.ts";
 import { standingCautions } from "../cautions.ts";
-import { listWords, lower, plural } from "../figures.ts";
+import { countWord, listWords, lower, plural } from "../figures.ts";
 import type { Piece, ReworkRow, Section, Words } from "../sheetContent.ts";
 import { type SheetContext, stated } from "./context.ts";
 import { CAVEATS_ON_FIRST_PAGE, caveatRows } from "./firstPage.ts";
@@ -67,7 +67,7 @@ export function assumptionsSection(context: SheetContext): Section {
     items.push(
       paragraph(
         "Later sales:",
-        `${formatNumber(later)} ${plural(later, "sale")} after the effective date ${plural(later, "was", "were")} seen and not used.`,
+        `${countWord(later)} ${plural(later, "sale")} after the effective date ${plural(later, "was", "were")} seen and not used.`,
       ),
     );
   }
@@ -121,7 +121,7 @@ function reworkRows({ sheet, appraisal, priced, currencyCode }: SheetContext): R
     row(
       `${priced.price.centre === "median" ? "Median" : "Mean"}, not rounded`,
       `${fullFigure(priced.price.amount)} ${currencyCode}`,
-      `${digits} ${plural(digits, "digit")} can be trusted; kept in full in ${EVIDENCE_FILE}`,
+      `${digits} ${plural(digits, "digit")} can be trusted; kept in full in the first attachment`,
     ),
   ];
   if (report.s !== null) {
@@ -150,7 +150,7 @@ export function reworkSection(context: SheetContext, missing: readonly string[])
     rows.push({
       label: "Characters not drawn",
       lines: [codes.join(", ")],
-      note: `The sheet’s fonts lack them; they stand as \ufffd, and in full in ${EVIDENCE_FILE}`,
+      note: `The sheet’s fonts lack them; they stand as \ufffd, and in full in the first attachment`,
     });
   }
   const { digitsToTrust } = appraisal.report;

@@ -118,7 +118,8 @@ function leftOutWords({ appraisal, priced, currencyCode, step }: SheetContext): 
   const ownOf = new Map<string, string>();
   for (const one of appraisal.ledger.leftOutOwn) {
     if (ownOf.has(one.key)) continue;
-    const what = one.level === null ? `${one.stepWords} more` : `${one.level}, ${one.stepWords},`;
+    const compared = one.stepWords.startsWith("against") ? `${one.level}, ${one.stepWords},` : `“${one.level}”`;
+    const what = one.level === null ? `${one.stepWords} more` : compared;
     const sense = one.money < 0 ? "less" : "more";
     ownOf.set(
       one.key,

@@ -81,10 +81,9 @@ export function pullSection(context: SheetContext): Section {
                 }
               : null,
           total: {
-            words: `All ${formatNumber(n)} ${plural(n, "sale")}`,
+            words: `All ${formatNumber(n)} ${plural(n, "sale")}: the ${centre} from the model`,
             pull: formatNumber(100, 1),
             price: formatNumber(amount),
-            note: `the ${centre} from the model`,
           },
           alt: `How far each sale moves the price, in ${context.currencyCode}: ${lines.map(({ sale, moves }) => `${sale} ${moves}`).join(", ")}.`,
         },
