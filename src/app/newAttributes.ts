@@ -83,7 +83,9 @@ export function settle(attribute: Attribute, sales: readonly NewSale[]): Attribu
   if (attribute.kind === "choice") return { ...attribute, levels: unlistedLevels(attribute, sales) };
   if (attribute.kind !== "number") return attribute;
   const values = sales.map((sale) => sale.values[attribute.key]).filter(isNumber);
-  return { ...attribute, decimals: decimalsOf(values), step: stepOf(values) };
+  const decimals = decimalsOf(values);
+  // A step finer than the values are written would read as "0 more".
+  return { ...attribute, decimals, step: Math.max(stepOf(values), Number(`1e-${decimals}`)) };
 }
 
 /** Levels that the sales have and the attribute's list has not, alphabetically. */

@@ -36,7 +36,7 @@ export interface Chosen {
 export async function chosenAppraisal(ask: Ask, classId: number, given: Given): Promise<Chosen> {
   const { assetClass } = await ask("describeClass", { classId });
   const { model, edition } = await ask("currentModel", { classId });
-  const named: NamedAttribute[] = [...assetClass.attributes, { key: CHANNEL_KEY, label: "Channel" }];
+  const named: NamedAttribute[] = [...assetClass.attributes, { key: CHANNEL_KEY, label: "Channel", kind: "choice" }];
   const path = required(given, "subject");
   const file = readJsonObject(path);
   const days = { given: optional(given, "effective-date"), today: localToday() };

@@ -45,7 +45,7 @@ function inputOf(verb: Verb, words: readonly string[]): VerbInput {
     const wanted = verb.places === 0 ? "takes no file name" : `takes ${verb.places} file name`;
     throw refuse(
       "bad-places",
-      `${verb.name} ${wanted}; ${parsed.positionals.length} were given.`,
+      `The verb ${verb.name} ${wanted}; ${parsed.positionals.length} were given.`,
       null,
       `See: help ${verb.name}.`,
     );
@@ -81,7 +81,8 @@ export async function runCommand(words: readonly string[], io: Console = PROCESS
     const verb = verbNamed(words[0]!);
     const input = inputOf(verb, words.slice(1));
     const output = await verb.run(input);
-    io.out(input.wantsJson ? JSON.stringify(output.json, null, 2) : output.text);
+    const answer = input.wantsJson ? (JSON.stringify(output.json, null, 2) ?? "") : output.text;
+    if (answer !== "") io.out(answer);
     return output.refused === true ? 1 : 0;
   } catch (cause) {
     return report(cause, wantsJson, io);

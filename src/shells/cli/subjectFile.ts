@@ -2,7 +2,7 @@
  * The subject as a file: either { "title": …, "values": { attribute: value } } or just { attribute: value }. Attributes are
  * named by their key, their label or their column heading; null or an absent one is not known.
  */
-import { type AttributeValue, keyOf } from "../../domain/attribute.ts";
+import { type AttributeKind, type AttributeValue, keyOf } from "../../domain/attribute.ts";
 import { isDay } from "../../domain/day.ts";
 import type { Subject } from "../../domain/subject.ts";
 import { refuse } from "./verb.ts";
@@ -10,15 +10,26 @@ import { refuse } from "./verb.ts";
 export interface NamedAttribute {
   readonly key: string;
   readonly label: string;
+  readonly kind: AttributeKind;
 }
 
 function textOf(value: unknown): string | null {
   return typeof value === "string" && value !== "" ? value : null;
 }
 
-function attributeValueOf(name: string, value: unknown, path: string): AttributeValue {
-  if (value === null || typeof value === "string" || typeof value === "boolean") return value;
-  if (typeof value === "number" && Number.isFinite(value)) return value;
+/** As the attribute keeps it: a choice's level is text even when it reads as a number, and yes and no may be words. */
+function inKind(value: AttributeValue, kind: AttributeKind): AttributeValue {
+  if (kind === "choice" && typeof value === "number") return String(value);
+  if (typeof value !== "string") return value;
+  const word = value.trim().toLowerCase();
+  if (kind === "yesNo" && ["yes", "y", "true"].includes(word)) return true;
+  if (kind === "yesNo" && ["no", "n", "false"].includes(word)) return false;
+  return kind === "number" && word !== "" && Number.isFinite(Number(word)) ? Number(word) : value;
+}
+
+function attributeValueOf(name: string, value: unknown, kind: AttributeKind, path: string): AttributeValue {
+  if (value === null || typeof value === "string" || typeof value === "boolean") return inKind(value, kind);
+  if (typeof value === "number" && Number.isFinite(value)) return inKind(value, kind);
   throw refuse(
     "bad-subject",
     `The value of "${name}" is no number, text, yes/no or null.`,
@@ -27,12 +38,12 @@ function attributeValueOf(name: string, value: unknown, path: string): Attribute
   );
 }
 
-function keyFor(name: string, attributes: readonly NamedAttribute[], path: string): string {
+function attributeFor(name: string, attributes: readonly NamedAttribute[], path: string): NamedAttribute {
   const found =
     attributes.find(({ key }) => key === name) ??
     attributes.find(({ label }) => label.toLowerCase() === name.trim().toLowerCase()) ??
     attributes.find(({ key }) => key === keyOf(name));
-  if (found !== undefined) return found.key;
+  if (found !== undefined) return found;
   const known = attributes.map(({ label }) => label).join(", ");
   throw refuse("unknown-attribute", `There is no attribute "${name}".`, path, `Use one of: ${known}.`);
 }
@@ -61,10 +72,10 @@ export function subjectOf(
   }
   const values: Record<string, AttributeValue> = {};
   for (const [name, value] of Object.entries(valuesIn(file))) {
-    const key = keyFor(name, attributes, path);
+    const { key, kind } = attributeFor(name, attributes, path);
     if (Object.hasOwn(values, key))
       throw refuse("named-twice", `"${name}" is named twice.`, path, "Keep one of the two.");
-    values[key] = attributeValueOf(name, value, path);
+    values[key] = attributeValueOf(name, value, kind, path);
   }
   return {
     title: textOf(file.title) ?? "Subject",

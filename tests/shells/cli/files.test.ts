@@ -15,10 +15,11 @@ const folder = mkdtempSync(join(tmpdir(), "lotwright-files-"));
 afterAll(() => rmSync(folder, { recursive: true, force: true }));
 
 const ATTRIBUTES = [
-  { key: "hours", label: "Hours" },
-  { key: "power_kw", label: "Power (kW)" },
-  { key: "cab", label: "Closed cab" },
-];
+  { key: "hours", label: "Hours", kind: "number" },
+  { key: "power_kw", label: "Power (kW)", kind: "number" },
+  { key: "cab", label: "Closed cab", kind: "yesNo" },
+  { key: "stage", label: "Stage", kind: "choice" },
+] as const;
 const days = { given: null, today: "2026-01-02" };
 const subject = (file: Record<string, unknown>, given: string | null = null) =>
   subjectOf(file, "S.json", ATTRIBUTES, { ...days, given });
@@ -33,6 +34,11 @@ describe("a subject file", () => {
       serial: "7",
       values: { hours: null },
     });
+  });
+
+  test("brings values into the attribute's own kind", () => {
+    expect(subject({ hours: "4200", cab: "Yes", stage: 5 }).values).toEqual({ hours: 4200, cab: true, stage: "5" });
+    expect(subject({ cab: "no", hours: "unread" }).values).toEqual({ cab: false, hours: "unread" });
   });
 
   test("the day on the command line wins over the file's, and today stands in for both", () => {

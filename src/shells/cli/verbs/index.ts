@@ -1,0 +1,21 @@
+/** All verbs, in the order of the help. */
+import type { Verb } from "../verb.ts";
+import { demoVerb } from "./demo.ts";
+import { importVerb } from "./import.ts";
+import { priceVerb } from "./price.ts";
+import { refitVerb } from "./refit.ts";
+import { serveVerb } from "./serve.ts";
+import { sheetVerb } from "./sheet.ts";
+import { tryVerb } from "./try.ts";
+import { verifyVerb } from "./verify.ts";
+
+export const VERBS: readonly Verb[] = [
+  tryVerb,
+  importVerb,
+  refitVerb,
+  priceVerb,
+  sheetVerb,
+  verifyVerb,
+  serveVerb,
+  demoVerb,
+];
