@@ -6,7 +6,7 @@ import type { AssetClass } from "../domain/assetClass.ts";
 import type { Attribute } from "../domain/attribute.ts";
 import type { ColumnMatch, ImportResult, ReadingOptions } from "../domain/importRecord.ts";
 import { convertRows } from "../import/convertRows.ts";
-import { matchColumns } from "../import/matchColumns.ts";
+import { type ClassDefaults, matchColumns, USUAL_DEFAULTS } from "../import/matchColumns.ts";
 import { type RawTable, readSalesFile } from "../import/readSalesFile.ts";
 import { duplicateIndexOf } from "./duplicateIndexOf.ts";
 import { attributesOfMatch } from "./newAttributes.ts";
@@ -44,16 +44,21 @@ export interface FileToConvert {
   readonly match: ColumnMatch | null;
 }
 
+/** What a file that is silent about them is taken to say. */
+function defaultsOf({ currencyCode, priceBasis }: AssetClass): ClassDefaults {
+  return { ...USUAL_DEFAULTS, currencyCode, priceBasis };
+}
+
 /** Refuses (AppError) a file that can't be read as a table of sales. */
 export function convertFile(ports: Ports, assetClass: AssetClass, file: FileToConvert): ConvertedFile {
   const { columnMatches } = ports.store;
   const table = readSalesFile(file.bytes, file.fileName, file.options);
   const previous = assetClass.id === 0 ? null : columnMatches.recall(assetClass.id, table.headings);
-  const match = file.match ?? matchColumns(table, assetClass.attributes, previous);
+  const match = file.match ?? matchColumns(table, assetClass.attributes, previous, defaultsOf(assetClass));
   const { match: keyedMatch, fresh } = attributesOfMatch(match, assetClass);
-  // The first file says what the levels are; afterwards an unknown one is more likely a slip of the pen and is held back.
-  const levelsOpen = assetClass.id === 0 || ports.store.assetClasses.summary(assetClass.id).saleCount === 0;
-  const widened = { ...assetClass, attributes: [...assetClass.attributes, ...fresh], levelsOpen };
+  // A choice without levels takes them from its first file; where levels are listed, an unknown one is more likely a slip.
+  const { currencyCode, priceBasis } = assetClass.id === 0 ? match.fixed : assetClass;
+  const widened = { currencyCode, priceBasis, attributes: [...assetClass.attributes, ...fresh] };
   const result = convertRows(table, keyedMatch, widened, duplicateIndexOf(ports, assetClass));
   return { table, match, keyedMatch, fresh, result };
 }

@@ -14,8 +14,12 @@ import {
   describeClass,
   listClasses,
 } from "./assetClasses.ts";
+import { appraise, currentModel } from "./appraiseSubject.ts";
+import { openableDemos } from "./demo/demoClasses.ts";
 import { importSales, startClassFromFile } from "./importSales.ts";
+import { issueSheet, previewSheet, verifySheet } from "./issueSheet.ts";
 import { leaveOutHeldBack, listHeldBack, mendHeldBack } from "./mendHeldBack.ts";
+import { openDemo } from "./openDemo.ts";
 import type { Ports } from "./ports.ts";
 import { previewImport } from "./previewImport.ts";
 import {
@@ -29,20 +33,11 @@ import {
   saveDraft,
   withdrawSheet,
 } from "./records.ts";
+import { saveEdition } from "./saveEdition.ts";
 import { listSales, putBackSales, setAsideSales, verifySales } from "./saleRegister.ts";
 import { listBatches, undoBatch } from "./undoBatch.ts";
 
-/** Requests that need the price model, the sheet or the demo's files; the others only read and write the store. */
-type ComputingRequest =
-  | "currentModel"
-  | "appraise"
-  | "saveEdition"
-  | "previewSheet"
-  | "issueSheet"
-  | "verifySheet"
-  | "openDemo";
-
-export function createStoreHandlers(ports: Ports): Omit<Handlers, ComputingRequest> {
+export function createHandlers(ports: Ports): Handlers {
   return {
     listClasses: () => listClasses(ports),
     createClass: (input) => createClass(ports, input),
@@ -71,6 +66,13 @@ export function createStoreHandlers(ports: Ports): Omit<Handlers, ComputingReque
     listJournal: (input) => listJournal(ports, input),
     readSettings: () => readSettings(ports),
     changeSettings: (input) => changeSettings(ports, input),
+    openDemo: () => openDemo(ports, openableDemos()),
+    currentModel: (input) => currentModel(ports, input),
+    appraise: (input) => appraise(ports, input),
+    saveEdition: (input) => saveEdition(ports, input),
+    previewSheet: (input) => previewSheet(ports, input),
+    issueSheet: (input) => issueSheet(ports, input),
+    verifySheet: (input) => verifySheet(ports, input),
   };
 }
 

@@ -17,8 +17,13 @@ export interface ResolvedSet {
   readonly exactOut: readonly { readonly key: string; readonly sentence: string }[];
 }
 
-export function resolveDependencies(design: Design, model: PriceModel): ResolvedSet {
-  const order = columnOrder(design, model.leftOut);
+/** `notKnown`: attributes the subject has no value for; of two that say the same, the known one stays. */
+export function resolveDependencies(
+  design: Design,
+  model: PriceModel,
+  notKnown: readonly string[] = [],
+): ResolvedSet {
+  const order = columnOrder(design, model.leftOut, notKnown);
   const found = findDependencies(
     order.map((index) => design.columns[index]!.values),
     { intercept: true },
@@ -36,14 +41,12 @@ export function resolveDependencies(design: Design, model: PriceModel): Resolved
 }
 
 /**
- * Columns in model order, but attributes that the person left out come last: then they are the ones found dependent, and
- * the person's choice of what to leave out is what stands.
+ * Columns in model order, but attributes that the person left out come late and not-known ones last: what comes later is
+ * what is found dependent, so the person's choice of what to leave out is what stands.
  */
-function columnOrder(design: Design, leftOut: readonly string[]): number[] {
-  const isOut = (group: AttributeGroup) => leftOut.includes(group.key);
-  return [...design.groups.filter((group) => !isOut(group)), ...design.groups.filter(isOut)].flatMap((group) => [
-    ...group.columns,
-  ]);
+function columnOrder(design: Design, leftOut: readonly string[], notKnown: readonly string[]): number[] {
+  const rank = (group: AttributeGroup) => (notKnown.includes(group.key) ? 2 : leftOut.includes(group.key) ? 1 : 0);
+  return [...design.groups].sort((a, b) => rank(a) - rank(b)).flatMap((group) => [...group.columns]);
 }
 
 function noticeOf(

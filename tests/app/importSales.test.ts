@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { createStoreHandlers } from "../../src/app/handlers.ts";
+import { createHandlers } from "../../src/app/handlers.ts";
 import { openDemo } from "../../src/app/openDemo.ts";
 import type { Ports } from "../../src/app/ports.ts";
 import type { ImportOutcome, ImportPreview } from "../../src/contract/requests.ts";
@@ -47,7 +47,7 @@ const OPTIONS = {
 } as const;
 
 function handlersOf(ports: Ports) {
-  return createStoreHandlers(ports);
+  return createHandlers(ports);
 }
 
 async function started(ports = testPorts()) {

@@ -42,6 +42,11 @@ export interface DemoClass {
   readonly engagement: Engagement;
 }
 
+/** A demo class as it is opened: its file, and what was done with the sales afterwards. */
+export interface OpenableDemo extends Pick<DemoClass, "assetClass" | "fileName" | "bytes" | "match"> {
+  readonly marks: Pick<DemoClass, "setAside" | "verify" | "subject" | "engagement">;
+}
+
 function matchOf(
   headings: readonly string[],
   assetClass: NewAssetClass,
@@ -134,6 +139,11 @@ function reedOrgans(): DemoClass {
 /** The first is the one that opens. */
 export function demoClasses(): readonly DemoClass[] {
   return [telehandlers(), reedOrgans()];
+}
+
+/** For openDemo. */
+export function openableDemos(): readonly OpenableDemo[] {
+  return demoClasses().map((demo) => ({ ...demo, marks: demo }));
 }
 
 /** A week's list to bring into the telehandlers, for trying the import out. */

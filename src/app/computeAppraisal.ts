@@ -1,0 +1,128 @@
+/**
+ * The one computation behind every screen, command and sheet: evidence + model + subject → the whole result object.
+ * Pure: no store, no clock, no random draw; the same input gives the same bits. Verifying a sheet calls it again.
+ */
+import type { Appraisal, EvidenceAccount, Ledger, ModelReport, PricePart } from "../domain/appraisal.ts";
+import type { NewAssetClass } from "../domain/assetClass.ts";
+import { AppError } from "../domain/errors.ts";
+import type { PriceModel } from "../domain/priceModel.ts";
+import type { SaleColumns } from "../domain/sale.ts";
+import type { Subject } from "../domain/subject.ts";
+import { selectEvidence } from "../evidence/selectEvidence.ts";
+import { carryOver } from "../explanation/carryOver.ts";
+import { pull } from "../explanation/pull.ts";
+import { buildDesign } from "../hedonic/buildDesign.ts";
+import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
+import { fitColumns } from "../hedonic/fitPriceModel.ts";
+import { reportModel } from "../hedonic/reportModel.ts";
+import { type ResolvedSet, resolveDependencies } from "../hedonic/resolveDependencies.ts";
+import { writeCaveats } from "../sheet/writeCaveats.ts";
+import { buildUp } from "../valuation/buildUp.ts";
+import { describeSubject, marketHeldAt } from "../valuation/describeSubject.ts";
+import { estimatePrice } from "../valuation/estimatePrice.ts";
+import { measureReach } from "../valuation/measureReach.ts";
+import { notKnownEffects } from "../valuation/notKnown.ts";
+
+export interface AppraisalInput {
+  readonly assetClass: NewAssetClass;
+  readonly sales: SaleColumns;
+  readonly model: PriceModel;
+  readonly subject: Subject | null;
+  readonly levels: readonly number[];
+}
+
+export interface ComputedAppraisal {
+  readonly appraisal: Appraisal;
+  /** Rows of `sales` that are evidence. */
+  readonly used: Int32Array;
+}
+
+/** The evidence is bounded by the subject's effective date. Refuses what selectEvidence … fitColumns refuse (AppError). */
+export function computeAppraisal(input: AppraisalInput): ComputedAppraisal {
+  const { sales, assetClass, model, subject } = input;
+  const { account, used } = selectEvidence(sales, assetClass, model, subject?.effectiveOn ?? null);
+  const design = buildDesign(sales, used, assetClass, model);
+  const row = subject === null ? null : describeSubject(design, assetClass, subject);
+  const resolved = resolveDependencies(design, model, row?.notKnown ?? []);
+  const stays = (group: AttributeGroup) => !model.leftOut.includes(group.key) && !row?.notKnown.includes(group.key);
+  const short = fitColumns(design, resolved.referenceGroups.filter(stays));
+  const long = fitReference(design, resolved, short);
+  const leftOut = leftOutOf(design, model, resolved, row);
+  const report = reportModel({ fit: short, model, resolved, leftOut, reference: long ?? short });
+  const ledger = ledgerOf(long, short, report, assetClass.currencyCode);
+  const priced = subject === null || row === null ? null : pricePart(input, short, long, row, subject);
+  const { name, itemWord, currencyCode, invented } = assetClass;
+  const found = { assetClass: { name, itemWord, currencyCode, invented }, evidence: account, report, ledger, priced };
+  return { appraisal: { ...found, caveats: writeCaveats(found) }, used };
+}
+
+/** The whole reference set fitted, or null when it has more coefficients than the sales can carry and the set in use has not. */
+function fitReference(design: Design, resolved: ResolvedSet, short: Fit): Fit | null {
+  if (resolved.referenceGroups.length === short.groups.length) return short;
+  try {
+    return fitColumns(design, resolved.referenceGroups);
+  } catch (cause) {
+    if (cause instanceof AppError && cause.code === "too-few-sales") return null;
+    throw cause;
+  }
+}
+
+function ledgerOf(long: Fit | null, short: Fit, report: ModelReport, currencyCode: string): Ledger {
+  const ledger = carryOver({ long: long ?? short, short, report, currencyCode });
+  if (long !== null) return ledger;
+  const headline =
+    "The whole reference set has more coefficients than these sales can carry, so what is carried for the attributes left out cannot be told.";
+  return { ...ledger, headline };
+}
+
+function leftOutOf(
+  design: Design,
+  model: PriceModel,
+  resolved: ResolvedSet,
+  row: SubjectRow | null,
+): ModelReport["leftOut"] {
+  return design.groups.flatMap((group): ModelReport["leftOut"][number][] => {
+    const { key, label } = group;
+    const exact = resolved.exactOut.find((one) => one.key === key);
+    if (exact !== undefined) return [{ key, label, why: "exact", sentence: exact.sentence }];
+    if (model.leftOut.includes(key)) return [{ key, label, why: "person", sentence: `${label} is left out by choice.` }];
+    if (!row?.notKnown.includes(key)) return [];
+    const sentence = `${label} is not known for this item, so the model without it prices it.`;
+    return [{ key, label, why: "not-known", sentence }];
+  });
+}
+
+function pricePart(input: AppraisalInput, short: Fit, long: Fit | null, row: SubjectRow, subject: Subject): PricePart {
+  const { assetClass, sales, levels } = input;
+  const price = estimatePrice(short, row, levels, marketHeldAt(short.design, subject));
+  const unknown = (long?.groups ?? []).filter(
+    (group) => row.notKnown.includes(group.key) && !input.model.leftOut.includes(group.key),
+  );
+  return {
+    subject,
+    price,
+    builtUp: buildUp(short, row, subject),
+    pull: pull({
+      fit: short,
+      row,
+      sales,
+      fitted: price.fitted,
+      amount: price.amount,
+      currencyCode: assetClass.currencyCode,
+    }),
+    reach: measureReach(short, row, subject, assetClass.itemWord),
+    notKnown: notKnownEffects(short, row, unknown, assetClass),
+  };
+}
+
+/**
+ * The same from a sheet's own evidence: its rows are all evidence already. What the rows cannot tell (how many sales were
+ * read and why others were out) is taken as stated; everything else is worked out again.
+ */
+export function recomputeAppraisal(input: AppraisalInput, stated: EvidenceAccount): Appraisal {
+  const { appraisal } = computeAppraisal(input);
+  const { evidence } = appraisal;
+  const account = { ...evidence, read: stated.read, out: stated.out };
+  const found = { ...appraisal, evidence: account };
+  return { ...found, caveats: writeCaveats(found) };
+}
