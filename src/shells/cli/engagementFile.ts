@@ -24,6 +24,16 @@ const WORDS = [
 ] as const;
 type Words = Record<(typeof WORDS)[number], string>;
 
+/** A sheet must not be silent on these; where the file is, the sheet says that nobody stated them. */
+export const TO_BE_STATED = ["basisOfValue", "premise", "marketLevel"] as const;
+const NOT_STATED = "not stated (issued from the command line)";
+
+/** Which of them the file leaves open. */
+export function leftUnstated(given: unknown): string[] {
+  const file = (given ?? {}) as Record<string, unknown>;
+  return TO_BE_STATED.filter((word) => typeof file[word] !== "string" || file[word].trim() === "");
+}
+
 export interface Surroundings {
   readonly today: string;
   readonly settings: Settings;
@@ -53,5 +63,6 @@ export function engagementOf(
     practiceLine: settings.practiceLine,
     valuer: [settings.person, settings.credentials].filter((word) => word !== "").join(", "),
   };
-  return { ...known, reportOn: today, ownCaveats: [], ...(file as Partial<Words>) };
+  const open = Object.fromEntries(leftUnstated(file).map((word) => [word, NOT_STATED]));
+  return { ...known, reportOn: today, ownCaveats: [], ...(file as Partial<Words>), ...open };
 }

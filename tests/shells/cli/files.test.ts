@@ -4,7 +4,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterAll, describe, expect, test } from "vitest";
 import type { ImportPreview } from "../../../src/contract/requests.ts";
-import { engagementOf } from "../../../src/shells/cli/engagementFile.ts";
+import { engagementOf, leftUnstated } from "../../../src/shells/cli/engagementFile.ts";
 import { readJsonObject } from "../../../src/shells/cli/files.ts";
 import { applyMatchFile } from "../../../src/shells/cli/matchFile.ts";
 import { subjectOf } from "../../../src/shells/cli/subjectFile.ts";
@@ -131,10 +131,19 @@ describe("an engagement", () => {
       client: "The bank",
       practice: "Other",
       valuer: "A. Valuer",
-      premise: "",
+      exposureTime: "",
       reportOn: "2026-01-02",
     });
     expect(engagement.priceBasisWords).toBe("premium in, tax out");
+  });
+
+  test("says of what a sheet must state that nobody stated it", () => {
+    expect(engagementOf({ premise: "as it stands" }, around)).toMatchObject({
+      premise: "as it stands",
+      basisOfValue: expect.stringContaining("not stated"),
+      marketLevel: expect.stringContaining("not stated"),
+    });
+    expect(leftUnstated({ premise: "as it stands", basisOfValue: " " })).toEqual(["basisOfValue", "marketLevel"]);
   });
 
   test("refuses a word the sheet has no place for", () => {

@@ -4,7 +4,7 @@ import { formatMoney } from "../../../domain/format.ts";
 import type { Ask } from "../../asking.ts";
 import { localToday } from "../../openWorkshop.ts";
 import { chosenAppraisal } from "../chosenModel.ts";
-import { engagementOf } from "../engagementFile.ts";
+import { engagementOf, leftUnstated } from "../engagementFile.ts";
 import { writeBytes } from "../files.ts";
 import { required, type Verb, type VerbInput, type VerbOutput } from "../verb.ts";
 import { requireClass, withStore } from "../withStore.ts";
@@ -43,7 +43,9 @@ async function run({ given }: VerbInput): Promise<VerbOutput> {
     writeBytes(out, bytesBase64);
     const money = (value: number): string => formatMoney(value, sheet.currencyCode);
     const text = `Sheet ${sheet.number} was issued for ${sheet.title}: ${money(sheet.amount)}, from ${money(sheet.low)} to ${money(sheet.high)}. It was written to ${out}.`;
-    return { text, json: { ok: true, sheet, out } };
+    const notStated = leftUnstated(file.engagement);
+    const hint = `It says that ${notStated.join(", ")} was not stated; put "engagement" into the subject file to state it.`;
+    return { text: notStated.length === 0 ? text : `${text}\n${hint}`, json: { ok: true, sheet, out, notStated } };
   });
 }
 
