@@ -82,7 +82,7 @@ function looksBinary(bytes: Uint8Array): boolean {
   const end = Math.min(bytes.length, 65_536);
   let nuls = 0;
   for (let k = 0; k < end; k++) if (bytes[k] === 0) nuls++;
-  return nuls > 0 && nuls * 200 > end;
+  return nuls > 0 && nuls * 20 > end;
 }
 
 function read(bytes: Uint8Array, fileName: string, chosen: Partial<ReadingOptions> | null): RawTable {
