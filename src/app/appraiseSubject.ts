@@ -36,8 +36,7 @@ export function usualModel(assetClass: AssetClass, sales: SaleColumns): PriceMod
   const last = sales.soldOn.reduce((high, day) => Math.max(high, day), Number.NEGATIVE_INFINITY);
   return {
     response: sales.price.every((price) => price > 0) ? "lnPrice" : "price",
-    attributes:
-      sold.length > 1 ? [{ key: CHANNEL_KEY, form: "choice", reference: null }, ...attributes] : attributes,
+    attributes: sold.length > 1 ? [{ key: CHANNEL_KEY, form: "choice", reference: null }, ...attributes] : attributes,
     leftOut: [],
     market: last - first > 182 ? "line" : "none",
     filter: { ...EVERYTHING, channels },

@@ -85,7 +85,8 @@ function leftOutOf(
     const { key, label } = group;
     const exact = resolved.exactOut.find((one) => one.key === key);
     if (exact !== undefined) return [{ key, label, why: "exact", sentence: exact.sentence }];
-    if (model.leftOut.includes(key)) return [{ key, label, why: "person", sentence: `${label} is left out by choice.` }];
+    if (model.leftOut.includes(key))
+      return [{ key, label, why: "person", sentence: `${label} is left out by choice.` }];
     if (!row?.notKnown.includes(key)) return [];
     const sentence = `${label} is not known for this item, so the model without it prices it.`;
     return [{ key, label, why: "not-known", sentence }];

@@ -6,6 +6,7 @@ import type { Handlers } from "../contract/client.ts";
 import { failure, type Reply } from "../contract/reply.ts";
 import type { RequestName } from "../contract/requests.ts";
 import { AppError } from "../domain/errors.ts";
+import { appraise, currentModel } from "./appraiseSubject.ts";
 import {
   addAttribute,
   archiveAttribute,
@@ -14,7 +15,6 @@ import {
   describeClass,
   listClasses,
 } from "./assetClasses.ts";
-import { appraise, currentModel } from "./appraiseSubject.ts";
 import { openableDemos } from "./demo/demoClasses.ts";
 import { importSales, startClassFromFile } from "./importSales.ts";
 import { issueSheet, previewSheet, verifySheet } from "./issueSheet.ts";
@@ -33,8 +33,8 @@ import {
   saveDraft,
   withdrawSheet,
 } from "./records.ts";
-import { saveEdition } from "./saveEdition.ts";
 import { listSales, putBackSales, setAsideSales, verifySales } from "./saleRegister.ts";
+import { saveEdition } from "./saveEdition.ts";
 import { listBatches, undoBatch } from "./undoBatch.ts";
 
 export function createHandlers(ports: Ports): Handlers {

@@ -1,7 +1,7 @@
 /** Previewing, issuing and verifying appraisal sheets. */
 import type { RequestInput, RequestOutput } from "../contract/requests.ts";
-import type { SheetRequest } from "../domain/sheetRecord.ts";
 import { formatMoney } from "../domain/format.ts";
+import type { SheetRequest } from "../domain/sheetRecord.ts";
 import { DRAFT_NUMBER } from "../sheet/buildSheet.ts";
 import { ruleRange } from "../sheet/concludePrice.ts";
 import { renderSheet } from "../sheet/renderSheetPdf.ts";
@@ -72,7 +72,13 @@ export async function issueSheet(
       act: "sheet-issued",
       assetClassId: classId,
       sentence: `Sheet ${sheetNumber} issued: ${request.subject.title} at ${formatMoney(amount, assetClass.currencyCode)}.`,
-      facts: { number: sheetNumber, digest, edition: edition.number, amount, fingerprint: evidence.evidenceFingerprint },
+      facts: {
+        number: sheetNumber,
+        digest,
+        edition: edition.number,
+        amount,
+        fingerprint: evidence.evidenceFingerprint,
+      },
     });
     return inserted;
   });

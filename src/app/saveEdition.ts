@@ -10,7 +10,10 @@ import { type ComputedAppraisal, computeAppraisal } from "./computeAppraisal.ts"
 import type { Ports } from "./ports.ts";
 import { counted, personOf, recordAct } from "./recordAct.ts";
 
-export function saveEdition(ports: Ports, { classId, model }: RequestInput<"saveEdition">): RequestOutput<"saveEdition"> {
+export function saveEdition(
+  ports: Ports,
+  { classId, model }: RequestInput<"saveEdition">,
+): RequestOutput<"saveEdition"> {
   const assetClass = ports.store.assetClasses.get(classId);
   const sales = ports.store.sales.readColumns(classId);
   const computed = computeAppraisal({ assetClass, sales, model, subject: null, levels: [0.9] });

@@ -104,4 +104,3 @@ export function recomputeFromSheet(evidence: SheetEvidence): Appraisal {
     evidence.appraisal.evidence,
   );
 }
-

@@ -3,6 +3,7 @@
  * Words only; every number comes from the ledger row, rounded as the printed table rounds it.
  */
 import type { LedgerRow } from "../domain/appraisal.ts";
+import { MARKET_KEY } from "../domain/attribute.ts";
 import { formatMoney, formatNumber, listWords, lowerStart, niceStep, roundTo } from "../domain/format.ts";
 
 /** How one step of the row's attribute moves each left-out number, by key. */
@@ -29,13 +30,23 @@ function moreOrLess(amount: number, step: number, currencyCode: string): string 
   return `${money(amount, step, currencyCode)} ${amount < 0 ? "less" : "more"}`;
 }
 
-/** "Each extra 1,000 h", "Orveld against Brannock", "Air conditioning: yes", "12 months of market movement". */
+/** "Each extra 1,000 h", "Each extra year of age", "Make Orveld, against Tessaly,", "A sale 12 months later". */
 export function subjectOf(row: Pick<LedgerRow, "attribute" | "label" | "level" | "stepWords">): string {
-  if (row.attribute === "market") return `${row.stepWords} later`;
-  if (row.level === null) return `Each extra ${row.stepWords} of ${lowerStart(row.label)}`;
+  if (row.attribute === MARKET_KEY) return `A sale ${row.stepWords} later`;
+  if (row.level === null) return `Each extra ${stepOfLabel(row)}`;
   return row.stepWords.startsWith("against")
     ? `${row.label} ${row.level}, ${row.stepWords},`
     : `${row.label}: ${row.level}`;
+}
+
+/** "1,000 h" where the unit already says it, else "10 kW of power", "year of age", "10 % more lot size". */
+function stepOfLabel({ label, stepWords }: Pick<LedgerRow, "label" | "stepWords">): string {
+  const name = lowerStart(label.replace(/ \([^)]*\)$/, ""));
+  if (stepWords.endsWith("more")) return `${stepWords.replace(/ more$/, "")} of ${name}`;
+  const [size, unit] = stepWords.split("\u00a0");
+  if (unit === undefined) return stepWords === "1" ? name : `${stepWords} of ${name}`;
+  if (unit.length === 1 && name.startsWith(unit)) return stepWords;
+  return `${size === "1" ? unit : stepWords} of ${name}`;
 }
 
 export function rowSentence(row: LedgerRow, comesWith: ComesWith, currencyCode: string): string {
@@ -55,7 +66,7 @@ function reason(row: LedgerRow, move: { amount: number; unit: string; decimals: 
   if (move === undefined || move.amount === 0) return "";
   const digits = Math.abs(move.amount) >= 10 ? 0 : Math.abs(move.amount) >= 1 ? 1 : 2;
   const amount = formatNumber(Math.abs(move.amount), Math.max(digits, 0));
-  const step = row.level === null ? `each ${row.stepWords}` : "it";
+  const step = row.level === null && row.attribute !== MARKET_KEY ? `each ${row.stepWords}` : "it";
   return `, because among these sales ${step} comes with ${amount} ${move.amount < 0 ? "fewer" : "more"} ${move.unit}`;
 }
 
@@ -87,9 +98,17 @@ export function ledgerHeadline(
   }
   const turned = most.signTurned ? "; the sign has turned" : "";
   return (
-    `With ${names} left out, ${lowerStart(subjectOf(most))} reads ${signed(most.money.coefficient, step, currencyCode)}. ` +
+    `With ${names} left out, ${startLow(subjectOf(most))} reads ${signed(most.money.coefficient, step, currencyCode)}. ` +
     `Among items alike in that it is ${signed(most.money.own, step, currencyCode)}${turned}.`
   );
+}
+
+function startLow(text: string): string {
+  return /^(Each|A) /.test(text) ? lowerFirst(text) : text;
+}
+
+function lowerFirst(text: string): string {
+  return text.charAt(0).toLowerCase() + text.slice(1);
 }
 
 function carriedSize(row: LedgerRow): number {

@@ -7,7 +7,7 @@ import { MARKET_KEY } from "../domain/attribute.ts";
 import type { PriceModel } from "../domain/priceModel.ts";
 import { correlation, inflation, partialCorrelation } from "../numerics/collinearity.ts";
 import { quantileOfSorted } from "../numerics/quantile.ts";
-import { tQuantile } from "../numerics/studentT.ts";
+import { tUpperQuantile } from "../numerics/studentT.ts";
 import type { AttributeGroup, Design, Fit } from "./fit.ts";
 import type { ResolvedSet } from "./resolveDependencies.ts";
 
@@ -76,7 +76,7 @@ export function smearingOf(residuals: Float64Array): number {
 
 function coefficientsOf(fit: Fit, averagePrice: number): Coefficient[] {
   const { solution, design, columns, groups } = fit;
-  const t = solution.residualDf > 0 ? tQuantile(0.975, solution.residualDf) : null;
+  const t = solution.residualDf > 0 ? tUpperQuantile(0.025, solution.residualDf) : null;
   const intercept: Coefficient = {
     attribute: "intercept",
     label: "Intercept",

@@ -18,11 +18,7 @@ export interface ResolvedSet {
 }
 
 /** `notKnown`: attributes the subject has no value for; of two that say the same, the known one stays. */
-export function resolveDependencies(
-  design: Design,
-  model: PriceModel,
-  notKnown: readonly string[] = [],
-): ResolvedSet {
+export function resolveDependencies(design: Design, model: PriceModel, notKnown: readonly string[] = []): ResolvedSet {
   const order = columnOrder(design, model.leftOut, notKnown);
   const found = findDependencies(
     order.map((index) => design.columns[index]!.values),

@@ -103,6 +103,7 @@ function combine(
   return solved
     .map((coefficient, a) => ({ column: basis.columns[a]!, coefficient }))
     .filter(({ column, coefficient }) => {
+      if (coefficient === 0) return false;
       const z = centred[column]!;
       return Math.abs(coefficient) * Math.sqrt(dotOf(z, z)) >= NO_PART * length;
     });

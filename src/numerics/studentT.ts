@@ -25,7 +25,10 @@ export function tCdf(t: number, df: number): number {
   return tUpperTail(-t, df);
 }
 
-/** The t with P(T ≤ t) = p, 0 < p < 1; below one half through the symmetry, so that small p keep their digits. */
-export function tQuantile(p: number, df: number): number {
-  return quantile(p, df);
+/**
+ * The t with P(T > t) = tail, 0 < tail < 1. Asked by the tail, since 1 − tail would lose the digits of a small one.
+ * tUpperQuantile(0.025, 10) = 2.2281388519649385.
+ */
+export function tUpperQuantile(tail: number, df: number): number {
+  return -quantile(tail, df);
 }

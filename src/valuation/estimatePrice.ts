@@ -8,7 +8,7 @@ import type { Day } from "../domain/day.ts";
 import type { AttributeGroup, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { smearingOf } from "../hedonic/reportModel.ts";
 import { quadraticForm } from "../numerics/leverages.ts";
-import { tQuantile } from "../numerics/studentT.ts";
+import { tUpperQuantile } from "../numerics/studentT.ts";
 
 /** Contribution of one group on the response's scale: Σ b(x₀ − x̄). */
 export function contributionOf(fit: Fit, row: SubjectRow, group: AttributeGroup): number {
@@ -42,7 +42,7 @@ export function estimatePrice(fit: Fit, row: SubjectRow, levels: readonly number
     s === null
       ? []
       : levels.map((level) => {
-          const half = tQuantile(1 - (1 - level) / 2, solution.residualDf) * s * Math.sqrt(variance);
+          const half = tUpperQuantile((1 - level) / 2, solution.residualDf) * s * Math.sqrt(variance);
           return { level, low: back(fitted - half), high: back(fitted + half) };
         });
   return {
