@@ -17,13 +17,13 @@ const ROW = 5;
 /** Figures take what they need from the right; words share the rest. */
 function columnsOf(paper: Paper, table: StepsTable): Column[] {
   const texts = (pick: (row: StepRow) => string, head: string): number =>
-    Math.max(columnWidth(paper, table.rows.map(pick), STYLES.cellBold), paper.typeface.width(head, STYLES.head)) + 3;
+    Math.max(columnWidth(paper, table.rows.map(pick), STYLES.cellBold), paper.typeface.width(head, STYLES.head)) + 2.8;
   const [, , , factorHead, stepHead, standsHead] = table.heads;
   const stands = texts((row) => row.standsAt, standsHead);
   const step = texts((row) => row.step, stepHead);
   const factor = table.hasFactors ? texts((row) => row.factor, factorHead) : 0;
   const figures = TEXT_WIDTH - PICTURE - PAD - stands - step - factor;
-  const shares = [0.39, 0.28, 0.33];
+  const shares = [0.42, 0.27, 0.31];
   const words: Column[] = shares.map((share, index) => ({
     left: figures * shares.slice(0, index).reduce((sum, one) => sum + one, 0),
     width: figures * share - 1.4,
