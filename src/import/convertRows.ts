@@ -13,7 +13,7 @@ import type {
 } from "../domain/importRecord.ts";
 import type { NewSale, PriceBasis } from "../domain/sale.ts";
 import { convertRow, type RowContext } from "./convertRow.ts";
-import { type DuplicateIndex, duplicateKeys, type KnownSale, mayBeTheSame } from "./duplicates.ts";
+import { type DuplicateIndex, type DuplicateKeys, duplicateKeys, type KnownSale, mayBeTheSame } from "./duplicates.ts";
 import { planColumns } from "./planColumns.ts";
 import { priceSlips } from "./priceSlips.ts";
 import type { RawRow, RawTable } from "./rawTable.ts";
@@ -54,8 +54,7 @@ class RowKeys {
     this.#ownDays = ownDays;
   }
 
-  find(sale: NewSale): Pick<DuplicateRow, "sameAs" | "why"> | null {
-    const { byReference, byValues } = duplicateKeys(sale);
+  find(sale: NewSale, { byReference, byValues }: DuplicateKeys): Pick<DuplicateRow, "sameAs" | "why"> | null {
     const byReferenceWhy = "same reference and day" as const;
     if (byReference !== null) {
       const row = this.#rows.get(byReference);
@@ -71,8 +70,7 @@ class RowKeys {
     return null;
   }
 
-  add(row: number, sale: NewSale): void {
-    const { byReference, byValues } = duplicateKeys(sale);
+  add(row: number, sale: NewSale, { byReference, byValues }: DuplicateKeys): void {
     if (byReference !== null && !this.#rows.has(byReference)) this.#rows.set(byReference, { row, sale });
     if (!this.#rows.has(byValues)) this.#rows.set(byValues, { row, sale });
   }
@@ -120,9 +118,10 @@ export function convertRows(
   const duplicates: DuplicateRow[] = [];
   for (const { raw, sale } of drafts) {
     if (held.has(raw.row)) continue;
-    const twin = keys.find(sale);
+    const own = duplicateKeys(sale);
+    const twin = keys.find(sale, own);
     if (twin === null) {
-      keys.add(raw.row, sale);
+      keys.add(raw.row, sale, own);
       accepted.push({ row: raw.row, sale });
     } else duplicates.push({ row: raw.row, ...twin, cells: cellsByHeading(table.headings, raw.cells) });
   }
@@ -178,7 +177,7 @@ export function convertOneRow(
   const none = { read: 1, accepted: [], heldBack: [], duplicates: [], blankRows: 0, notes: plan.notes };
   const named = cellsByHeading(headings, raw.cells);
   if ("reasons" in result) return { ...none, heldBack: [{ row, cells: named, reasons: result.reasons }] };
-  const twin = new RowKeys(existing, false).find(result.sale);
+  const twin = new RowKeys(existing, false).find(result.sale, duplicateKeys(result.sale));
   if (twin !== null) return { ...none, duplicates: [{ row, ...twin, cells: named }] };
   return { ...none, accepted: [{ row, sale: result.sale }] };
 }
