@@ -1,6 +1,8 @@
 /** demo: makes the demo store, runs the main job on it, issues its sheet, and verifies that from the PDF alone. */
 import { existsSync, mkdirSync } from "node:fs";
 import { join } from "node:path";
+import { toBase64 } from "../../../app/base64.ts";
+import { demoFiles } from "../../../app/demo/demoFiles.ts";
 import { demoParagraph } from "../../demoParagraph.ts";
 import { runDemo } from "../../demoRun.ts";
 import { writeBytes } from "../files.ts";
@@ -34,7 +36,10 @@ async function run({ given }: VerbInput): Promise<VerbOutput> {
     const verified = await ask("verifySheet", { bytesBase64 });
     const out = folder === null ? null : join(folder, `${sheet.number}.pdf`);
     if (out !== null) writeBytes(out, bytesBase64);
-    const where = out === null ? "" : ` It was written to ${out}, the store beside it.`;
+    if (folder !== null) {
+      for (const { fileName, bytes } of demoFiles()) writeBytes(join(folder, fileName), toBase64(bytes));
+    }
+    const where = out === null ? "" : ` It was written to ${out}, the store and the demo's files beside it.`;
     const text = `${demoParagraph(demo)}\nSheet ${sheet.number} was issued.${where} ${verified.sentence}`;
     const json = { ...resultJson(demo.appraisal), edition: demo.edition.number, sheet, out, verification: verified };
     return { text, json, refused: verified.verdict !== "stands" };
@@ -45,7 +50,7 @@ export const demoVerb: Verb = {
   name: "demo",
   does: "makes the invented demo, runs the main job on it, issues its sheet and verifies it",
   usage: ["demo [--out DIR]"],
-  meanings: [["--out DIR", "keeps the store and the sheet in this folder; else everything stays in memory"]],
+  meanings: [["--out DIR", "keeps store, sheet and the demo's files in this folder; else all stays in memory"]],
   options: { out: { type: "string" } },
   places: 0,
   run,
