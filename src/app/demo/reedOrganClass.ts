@@ -38,7 +38,7 @@ export const REED_ORGAN_SUBJECT: Subject = {
     restored: null,
     [CHANNEL_KEY]: "auction",
   },
-  effectiveOn: "2026-05-12",
+  effectiveOn: "2026-05-29",
 };
 
 export const REED_ORGAN_ENGAGEMENT: Engagement = {
@@ -51,8 +51,8 @@ export const REED_ORGAN_ENGAGEMENT: Engagement = {
   premise: "removed, sold singly",
   marketLevel: "auction",
   priceBasisWords: "no premium, tax in",
-  inspected: "seen and played, 9 May 2026",
-  reportOn: "2026-05-14",
+  inspected: "seen and played, 27 May 2026",
+  reportOn: "2026-06-02",
   exposureTime: "three months",
   earlierSales: "none known",
   equipment: "",

@@ -55,7 +55,7 @@ export const TELEHANDLER_SUBJECT: Subject = {
     coupler: true,
     [CHANNEL_KEY]: "auction",
   },
-  effectiveOn: "2026-05-12",
+  effectiveOn: "2026-05-29",
 };
 
 export const TELEHANDLER_ENGAGEMENT: Engagement = {
@@ -68,8 +68,8 @@ export const TELEHANDLER_ENGAGEMENT: Engagement = {
   premise: "removed from site, sold singly",
   marketLevel: "auction, to the end user",
   priceBasisWords: "buyer's premium in, tax out",
-  inspected: "seen and started, 11 May 2026; not driven under load",
-  reportOn: "2026-05-14",
+  inspected: "seen and started, 28 May 2026; not driven under load",
+  reportOn: "2026-06-02",
   exposureTime: "four to eight weeks",
   earlierSales: "none known in the last three years",
   equipment: "pallet forks, hydraulic coupler",
