@@ -168,7 +168,7 @@ function headStrip(paper: Paper, tags: () => { table: Tag }, layout: Layout): St
       paper.artifact(() => {
         paper.line(PAGE.left, top + height, PAGE.right, top + height, RULES.head, INK);
         for (const tick of layout.ticks) {
-          paper.text(tickText(tick), layout.scale(tick), bottom - 0.2, STYLES.axis, "middle");
+          paper.tickLabel(tickText(tick), layout.scale(tick), bottom - 0.2, STYLES.axis);
         }
       });
       const head = (lines: typeof first.lines, x: number, boxHeight: number, align: "left" | "right"): void =>

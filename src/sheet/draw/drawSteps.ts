@@ -98,7 +98,7 @@ export function stepsBand(paper: Paper, table: StepsTable): Band {
     pad: 0.9,
     rule: "ink",
     picture: (top, height) => {
-      for (const tick of ticks) paper.text(label(tick), scale(tick), top + height - 0.9, STYLES.axis, "middle");
+      for (const tick of ticks) paper.tickLabel(label(tick), scale(tick), top + height - 0.9, STYLES.axis);
     },
   };
   const rows = table.rows.map(

@@ -152,6 +152,12 @@ export class Paper {
     return width;
   }
 
+  /** Sets a label under or over `at`, moved in where it would leave the text area. */
+  tickLabel(words: string, at: number, baseline: number, style: Style): void {
+    const half = this.typeface.width(words, style) / 2;
+    this.text(words, Math.max(PAGE.left + half, Math.min(PAGE.right - half, at)), baseline, style, "middle");
+  }
+
   line(
     x1: number,
     y1: number,
