@@ -1,0 +1,122 @@
+/** Sales that pull hardest: weight as a bar, what was sold, how it differs, and what the price moves by without it. */
+import { useState } from "react";
+import type { ModelReport, PricePart, Pull } from "../../domain/appraisal.ts";
+import { formatDay, formatNumber, formatSigned, lowerStart, niceStep, roundTo } from "../../domain/format.ts";
+import css from "./PullRows.module.css";
+
+export interface PullRowsProps {
+  readonly priced: PricePart;
+  readonly report: ModelReport;
+  readonly currencyCode: string;
+}
+
+const FEW = 7;
+/** Width of the bar of the hardest pull, in pixels. */
+const BAR = 64;
+
+export function PullRows({ priced, report, currencyCode }: PullRowsProps) {
+  const [isWhole, setIsWhole] = useState(false);
+  const { top, restCount, restWeight, sentence, negativeCount } = priced.pull;
+  const rows = isWhole ? top : top.slice(0, FEW);
+  const numeric = report.attributeEvidence.filter(
+    (one) => one.included && one.spread !== null && one.kind !== "market",
+  );
+  const shown = numeric.slice(0, 2);
+  const largest = Math.max(...top.map((one) => Math.abs(one.weight)), Number.MIN_VALUE);
+  return (
+    <section aria-labelledby="pull-heading">
+      <div className={css.heading}>
+        <h2 id="pull-heading">Sales that pull hardest</h2>
+        {top.length > FEW ? (
+          <button type="button" onClick={() => setIsWhole(!isWhole)} aria-expanded={isWhole}>
+            {isWhole ? `First ${FEW}` : `First ${top.length}`}
+          </button>
+        ) : null}
+      </div>
+      <p className={css.note}>
+        {sentence}
+        {negativeCount > 0 ? ` ${formatNumber(negativeCount)} pull the other way.` : ""}
+      </p>
+      <div className={css.scroll}>
+        <table>
+          <caption className="vh">Sales by pull on this price</caption>
+          <thead>
+            <tr>
+              <th scope="col">sale</th>
+              <th scope="col">pull, %</th>
+              <th scope="col" className="num">
+                sold, {currencyCode}
+              </th>
+              {shown.map((one) => (
+                <th scope="col" className="num" key={one.key}>
+                  {lowerStart(one.label)}
+                  {one.unit === null ? "" : `, ${one.unit}`}
+                </th>
+              ))}
+              <th scope="col" className="num">
+                without it
+              </th>
+            </tr>
+          </thead>
+          <tbody>
+            {rows.map((one) => (
+              <Row key={one.sale} pull={one} amount={priced.price.amount} largest={largest} shown={shown} />
+            ))}
+          </tbody>
+        </table>
+      </div>
+      {restCount > 0 ? (
+        <p className="fine soft">
+          The other {formatNumber(restCount)} sales weigh {formatNumber(restWeight * 100, 1)} % together.
+        </p>
+      ) : null}
+    </section>
+  );
+}
+
+interface RowProps {
+  readonly pull: Pull;
+  readonly amount: number;
+  readonly largest: number;
+  readonly shown: readonly { key: string; decimals: number }[];
+}
+
+function Row({ pull, amount, largest, shown }: RowProps) {
+  const width = (BAR * Math.abs(pull.weight)) / largest;
+  const move = pull.priceWithout === null ? null : pull.priceWithout - amount;
+  const step = Math.max(1, Math.min(10, niceStep(Math.abs(move ?? 0) / 10)));
+  return (
+    <tr>
+      <th
+        scope="row"
+        title={`${pull.title}, ${formatDay(pull.soldOn)}, ${pull.channel}${pull.verified ? ", verified" : ""}`}
+      >
+        {pull.reference ?? pull.sale} <span className="soft">{pull.title}</span>
+      </th>
+      <td className={css.bar}>
+        <svg width={BAR + 40} height="14" aria-hidden="true">
+          <rect
+            x="0.5"
+            y="3.5"
+            width={Math.max(1, width)}
+            height="7"
+            className={pull.weight < 0 ? "f-none s-slate" : "f-slate s-slate"}
+          />
+          <text x={width + 6} y="11">
+            {formatNumber(pull.weight * 100, 1)}
+          </text>
+        </svg>
+        <span className="vh">{formatNumber(pull.weight * 100, 2)}</span>
+      </td>
+      <td className="num">{formatNumber(pull.price)}</td>
+      {shown.map(({ key, decimals }) => (
+        <td className="num" key={key}>
+          {pull.differences[key] === undefined ? "" : formatSigned(pull.differences[key], Math.min(decimals, 1))}
+        </td>
+      ))}
+      <td className="num">
+        <b>{move === null ? "no fit" : roundTo(move, step) === 0 ? "±0" : formatSigned(roundTo(move, step))}</b>
+      </td>
+    </tr>
+  );
+}

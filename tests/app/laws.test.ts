@@ -1,0 +1,182 @@
+/** Laws that hold for any evidence: what must add up adds up, and what must not matter does not. */
+import fc from "fast-check";
+import { describe, expect, test } from "vitest";
+import { computeAppraisal } from "../../src/app/computeAppraisal.ts";
+import type { Appraisal } from "../../src/domain/appraisal.ts";
+import type { PriceModel } from "../../src/domain/priceModel.ts";
+import type { SaleColumns } from "../../src/domain/sale.ts";
+import type { Subject } from "../../src/domain/subject.ts";
+import { fromEvidenceTable, toEvidenceTable } from "../../src/evidence/evidenceTable.ts";
+import { pullWeights } from "../../src/explanation/pull.ts";
+import { buildDesign } from "../../src/hedonic/buildDesign.ts";
+import { fitColumns } from "../../src/hedonic/fitPriceModel.ts";
+import { describeSubject } from "../../src/valuation/describeSubject.ts";
+import { CLASS, model, reordered, SUBJECT, sales } from "../fixtures/randomClass.ts";
+
+const LEVELS = [0.5, 0.9];
+
+function appraise(
+  columns: SaleColumns,
+  change: Partial<PriceModel> = {},
+  subject: Subject | null = SUBJECT,
+): Appraisal {
+  const input = { assetClass: CLASS, sales: columns, model: model(change), subject, levels: LEVELS };
+  return computeAppraisal(input).appraisal;
+}
+
+const draws = fc.record({
+  seed: fc.integer({ min: 1, max: 1_000_000 }),
+  count: fc.integer({ min: 20, max: 120 }),
+  together: fc.constantFrom(0, 0.5, 0.9, 0.999),
+});
+const someOut = fc.subarray(["hours", "pull", "built", "make", "remote"], { maxLength: 4 });
+const response = fc.constantFrom("lnPrice" as const, "price" as const);
+const RUNS = { numRuns: 40 };
+
+describe("what must add up", () => {
+  test("own and carried parts give each coefficient, in coefficients and in money", () => {
+    fc.assert(
+      fc.property(draws, someOut, response, (draw, leftOut, form) => {
+        const { ledger, report } = appraise(sales(draw), { leftOut, response: form });
+        expect(ledger.identityError).toBeLessThan(1e-10);
+        for (const row of ledger.rows) {
+          const { own, carried, coefficient } = row.money;
+          const size = Math.max(Math.abs(coefficient), Math.abs(own), 1e-9);
+          const sum = carried.reduce((total, part) => total + part.amount, own);
+          expect(Math.abs(sum - coefficient) / size).toBeLessThan(1e-8);
+          const stated = report.coefficients.find((one) => one.attribute === row.attribute && one.level === row.level)!;
+          expect(row.coefficient).toBe(stated.estimate);
+        }
+      }),
+      RUNS,
+    );
+  });
+
+  test("the built-up steps end in the price, to the last bit", () => {
+    fc.assert(
+      fc.property(draws, response, (draw, form) => {
+        const { priced } = appraise(sales(draw), { response: form });
+        const { steps, start, end } = priced!.builtUp;
+        expect(end).toBe(priced!.price.amount);
+        expect(steps[steps.length - 1]!.standsAt).toBe(priced!.price.amount);
+        const sum = steps.reduce((total, step) => total + step.step, start);
+        expect(Math.abs(sum / end - 1)).toBeLessThan(1e-12);
+      }),
+      RUNS,
+    );
+  });
+
+  test("pull weights sum to one, give the fitted value, and their squares give the leverage", () => {
+    fc.assert(
+      fc.property(draws, (draw) => {
+        const columns = sales(draw);
+        const used = Int32Array.from({ length: draw.count }, (_, i) => i);
+        const design = buildDesign(columns, used, CLASS, model());
+        const fit = fitColumns(design, design.groups);
+        const row = describeSubject(design, CLASS, SUBJECT);
+        const weights = pullWeights(fit, row);
+        const { price } = appraise(
+          columns,
+          {},
+          { ...SUBJECT, effectiveOn: "2030-01-01", values: { ...SUBJECT.values } },
+        ).priced!;
+        expect(weights.reduce((sum, w) => sum + w, 0)).toBeCloseTo(1, 9);
+        expect(Number.isFinite(price.amount)).toBe(true);
+        const squares = weights.reduce((sum, w) => sum + w * w, 0);
+        const fitted = weights.reduce((sum, w, i) => sum + w * design.response[i]!, 0);
+        const direct = fit.columns.reduce(
+          (sum, index, at) => sum + fit.solution.slopes[at]! * row.x[index]!,
+          fit.solution.intercept!,
+        );
+        expect(Math.abs(fitted / direct - 1)).toBeLessThan(1e-9);
+        expect(squares).toBeGreaterThan(0);
+      }),
+      RUNS,
+    );
+  });
+
+  test("the price without a sale is the price of a fit without it", () => {
+    const columns = sales({ seed: 77, count: 40, together: 0.9 });
+    const { priced } = appraise(columns);
+    for (const pull of priced!.pull.top.slice(0, 6)) {
+      const rest = Array.from({ length: 40 }, (_, i) => i).filter((i) => columns.ids[i] !== pull.sale);
+      const without = appraise({ ...reordered(columns, rest), count: 39 });
+      const same = without.evidence.firstSoldOn === appraise(columns).evidence.firstSoldOn;
+      expect(same || without.evidence.used === 39).toBe(true);
+      expect(Math.abs(without.priced!.price.amount / pull.priceWithout! - 1)).toBeLessThan(1e-9);
+    }
+  });
+
+  test("counts of evidence reconcile to nothing left over", () => {
+    fc.assert(
+      fc.property(draws, fc.constantFrom("2023-01-01", "2024-01-01"), (draw, effectiveOn) => {
+        const { evidence } = appraise(sales(draw), { market: "none" }, { ...SUBJECT, effectiveOn });
+        expect(evidence.used + evidence.out.reduce((sum, one) => sum + one.saleIds.length, 0)).toBe(evidence.read);
+      }),
+      { numRuns: 15, examples: [[{ seed: 3, count: 100, together: 0 }, "2024-01-01"]] },
+    );
+  });
+});
+
+describe("what must not matter", () => {
+  test("the order in which sales stand in the store does not change a bit", () => {
+    fc.assert(
+      fc.property(draws, fc.integer(), (draw, shift) => {
+        const columns = sales(draw);
+        const order = Array.from({ length: draw.count }, (_, i) => (i * 7 + Math.abs(shift % 97)) % draw.count);
+        fc.pre(new Set(order).size === draw.count);
+        const plain = { ...appraise(columns), evidence: null, caveats: null };
+        const turned = { ...appraise(reordered(columns, order)), evidence: null, caveats: null };
+        expect(turned).toEqual(plain);
+      }),
+      RUNS,
+    );
+  });
+
+  test("the same evidence through a sheet's table gives the same bits", () => {
+    fc.assert(
+      fc.property(draws, someOut, (draw, leftOut) => {
+        const columns = sales(draw);
+        const input = {
+          assetClass: CLASS,
+          sales: columns,
+          model: model({ leftOut }),
+          subject: SUBJECT,
+          levels: LEVELS,
+        };
+        const first = computeAppraisal(input);
+        const table = JSON.parse(JSON.stringify(toEvidenceTable(columns, first.used, CLASS, input.model)));
+        const again = computeAppraisal({ ...input, sales: fromEvidenceTable(table, CLASS) });
+        expect(again.appraisal.priced).toEqual(first.appraisal.priced);
+        expect(again.appraisal.report).toEqual(first.appraisal.report);
+        expect(again.appraisal.ledger).toEqual(first.appraisal.ledger);
+      }),
+      RUNS,
+    );
+  });
+
+  test("another unit rescales the coefficient and leaves price and ranges as they are", () => {
+    fc.assert(
+      fc.property(draws, fc.constantFrom(1e-3, 0.3048, 1.609344, 1000), (draw, factor) => {
+        const columns = sales(draw);
+        const other = {
+          ...columns,
+          values: { ...columns.values, hours: columns.values.hours!.map((h) => h * factor) },
+        };
+        const [here, there] = [
+          appraise(columns),
+          appraise(other, {}, { ...SUBJECT, values: { ...SUBJECT.values, hours: 4200 * factor } }),
+        ];
+        const slope = (a: Appraisal) => a.report.coefficients.find((one) => one.attribute === "hours")!.estimate;
+        expect(Math.abs((slope(there) * factor) / slope(here) - 1)).toBeLessThan(1e-9);
+        expect(Math.abs(there.priced!.price.amount / here.priced!.price.amount - 1)).toBeLessThan(1e-9);
+        here.priced!.price.rangeForOneSale.forEach((range, at) => {
+          const twin = there.priced!.price.rangeForOneSale[at]!;
+          expect(Math.abs(twin.low / range.low - 1)).toBeLessThan(1e-9);
+          expect(Math.abs(twin.high / range.high - 1)).toBeLessThan(1e-9);
+        });
+      }),
+      RUNS,
+    );
+  });
+});
