@@ -97,11 +97,11 @@ function missingCharacters(paper: Paper, sheet: Sheet): string[] {
   return [...paper.typeface.missing].filter((character) => character !== MISSING_MARK);
 }
 
-/** Facts that page 1 had no room for follow before the standing cautions, whole. */
+/** What page 1 had no room for follows before the assumptions, whole. */
 function withCutFacts(sections: readonly Section[], cut: readonly Fact[]): readonly Section[] {
   if (cut.length === 0) return sections;
   const whole: Section = {
-    heading: "Facts of page 1 in full",
+    heading: "Page 1 in full",
     lead: null,
     parts: [
       {

@@ -130,15 +130,17 @@ function sentence(stands: boolean, equalCount: number, problems: readonly string
   return `The sheet stands: no byte was changed, and all ${formatNumber(equalCount)} figures came out again to the last bit.${journal}`;
 }
 
+/** A file that cannot be read but carries a seal was a sheet once: it was altered. Without a seal it may be anything. */
 function unreadableReport(bytes: Uint8Array, problem: string): VerificationReport {
   const seal = readSeal(bytes);
-  const problems =
-    seal.at !== null && !seal.intact
-      ? ["The file’s bytes are not those that its digest was taken of.", problem]
-      : [problem];
+  const wasSheet = seal.at !== null;
+  const changed = "The file’s bytes are not those that its digest was taken of: something in it was changed.";
+  const problems = wasSheet && !seal.intact ? [changed, problem] : [problem];
   return {
-    verdict: "unreadable",
-    sentence: `The sheet could not be read. ${problem}`,
+    verdict: wasSheet ? "altered" : "unreadable",
+    sentence: wasSheet
+      ? `The sheet does not stand, and cannot be read any more. ${problem}`
+      : `The sheet could not be read. ${problem}`,
     bytesIntact: seal.intact,
     fingerprintEqual: false,
     textEqual: false,

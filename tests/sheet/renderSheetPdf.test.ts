@@ -245,8 +245,9 @@ describe("an unusual sheet", () => {
     expect(colliding(sheet)).toEqual([]);
     const pages = pageTexts(readPdf(sheet.bytes)).map((pieces) => pieces.join(" "));
     expect(pages[0]).toContain("Remarks");
-    expect(pages.slice(1).join(" ")).toContain("Facts of page 1 in full");
+    expect(pages.slice(1).join(" ")).toContain("Page 1 in full");
     expect(pages.slice(1).join(" ")).toContain("exposureTime");
+    expect(pages[0]).toContain("would fall between €33,000 and €45,500.");
   });
 
   test("without pulls, left-out attributes, ranges, steps, caveats or stated facts still says what there is", async () => {

@@ -14,16 +14,29 @@ interface Boxes {
   readonly text: Span[][];
   readonly effect: Span[][];
   readonly height: number;
+  readonly isCut: boolean;
 }
 
 function boxes(paper: Paper, row: CaveatRow, maxLines: number): Boxes {
   const hasEffect = row.wouldRead.length > 0;
   const width = PAGE.right - PAGE.left - NUMBER - (hasEffect ? EFFECT + 3 : 12);
   const rich = [{ text: `${row.headline} `, bold: true }, { text: row.text }];
-  const text = fitText(paper, rich, STYLES.caveat, width, maxLines).lines;
-  const effect = row.wouldRead.flatMap((words) => fitText(paper, words, STYLES.effect, EFFECT, 2).lines);
+  const fitted = fitText(paper, rich, STYLES.caveat, width, maxLines);
+  const text = fitted.lines;
+  const effects = row.wouldRead.map((words) => fitText(paper, words, STYLES.effect, EFFECT, 2));
+  const effect = effects.flatMap((box) => box.lines);
   const lines = Math.max(text.length, Math.min(effect.length, Math.max(maxLines, 2)));
-  return { text, effect: effect.slice(0, lines), height: 2 * PAD + lines * mm(STYLES.caveat.leading) };
+  return {
+    text,
+    effect: effect.slice(0, lines),
+    height: 2 * PAD + lines * mm(STYLES.caveat.leading),
+    isCut: fitted.clamped || effect.length > lines || effects.some((box) => box.clamped),
+  };
+}
+
+/** Whether a caveat loses words at so many lines. */
+export function isCaveatCut(paper: Paper, row: CaveatRow, maxLines: number): boolean {
+  return boxes(paper, row, maxLines).isCut;
 }
 
 export function caveatsHeight(paper: Paper, rows: readonly CaveatRow[], maxLines: number): number {

@@ -3,7 +3,7 @@
  * be shortened is handed back, to be printed in full on a later page.
  */
 import type { Fact, FirstPage, Sheet } from "../sheetContent.ts";
-import { caveatsHeight, drawCaveats } from "./drawCaveats.ts";
+import { caveatsHeight, drawCaveats, isCaveatCut } from "./drawCaveats.ts";
 import { drawGauge, gaugeHeight } from "./drawGauge.ts";
 import { baselineOf, fitText, hairline, mm, paragraph, setLines, type TextBox } from "./flow.ts";
 import { PAGE, type Paper, TEXT_WIDTH } from "./paper.ts";
@@ -70,6 +70,7 @@ const DEGREES: readonly Tightness[] = [
   },
 ];
 
+const LETTERHEAD_WIDTH = 112;
 const HERO_TOP = 28.3;
 const HERO_WIDTH = 112;
 const PANEL = { left: 136, width: 57 } as const;
@@ -79,7 +80,7 @@ const COLUMNS: readonly (readonly [left: number, width: number])[] = [
   [124, 49],
 ];
 
-/** Draws page 1; gives the facts that could not stand there whole. */
+/** Draws page 1; gives what could not stand there whole. */
 export function drawFirstPage(paper: Paper, sheet: Sheet): Fact[] {
   const { first } = sheet;
   const degree = DEGREES.find((one) => bottomOf(paper, first, one) <= PAGE.bottom) ?? DEGREES[DEGREES.length - 1]!;
@@ -97,7 +98,30 @@ export function drawFirstPage(paper: Paper, sheet: Sheet): Fact[] {
   } else top = drawCaveats(paper, first.caveats, top + 0.6, degree.caveatLines);
   top = heading(paper, "Signature and certification", top + 3);
   signature(paper, first, top + 0.4, degree);
-  return first.facts.flat().filter((fact, index) => isCut(paper, fact, columnWidth(first, index), degree));
+  return cutOf(paper, sheet, degree);
+}
+
+/** What page 1 shows shortened, each with its name. */
+function cutOf(paper: Paper, { first, practice, practiceLine }: Sheet, degree: Tightness): Fact[] {
+  const named = (label: string, words: string): Fact => ({ label, words, short: words });
+  const cut: Fact[] = [];
+  if (fitText(paper, practice, STYLES.practice, LETTERHEAD_WIDTH, 1).clamped) cut.push(named("Practice", practice));
+  if (fitText(paper, practiceLine, STYLES.practiceLine, LETTERHEAD_WIDTH, 1).clamped) {
+    cut.push(named("Practice, further", practiceLine));
+  }
+  if (titleBox(paper, first, degree).box.clamped) cut.push(named("Item", first.title));
+  if (identificationBox(paper, first).clamped) cut.push(named("Description", first.identification));
+  cut.push(...first.facts.flat().filter((fact, index) => isCut(paper, fact, columnWidth(first, index), degree)));
+  for (const row of first.caveats) {
+    if (!isCaveatCut(paper, row, degree.caveatLines)) continue;
+    const read = row.wouldRead.length === 0 ? "" : ` (${row.wouldRead.join("; ")})`;
+    cut.push(named(`Caveat ${row.number}`, `${row.headline} ${row.text}${read}`));
+  }
+  return cut;
+}
+
+function identificationBox(paper: Paper, first: FirstPage): TextBox {
+  return fitText(paper, first.identification, STYLES.identification, TEXT_WIDTH, 2);
 }
 
 function columnWidth(first: FirstPage, index: number): number {
@@ -124,10 +148,7 @@ function titleBox(paper: Paper, first: FirstPage, degree: Tightness): { box: Tex
 }
 
 function heroHeight(paper: Paper, first: FirstPage, degree: Tightness): number {
-  const identification =
-    first.identification === ""
-      ? 0
-      : 0.8 + fitText(paper, first.identification, STYLES.identification, TEXT_WIDTH, 2).height;
+  const identification = first.identification === "" ? 0 : 0.8 + identificationBox(paper, first).height;
   return titleBox(paper, first, degree).box.height + identification + 3 + priceHeight(paper, first);
 }
 
@@ -179,9 +200,8 @@ function letterhead(paper: Paper, sheet: Sheet): void {
   const rule = 24.2;
   const bottom = rule - 2;
   const practice = paper.tag("P");
-  const room = 112;
-  const name = fitText(paper, sheet.practice, STYLES.practice, room, 1).lines;
-  const line = fitText(paper, sheet.practiceLine, STYLES.practiceLine, room, 1).lines;
+  const name = fitText(paper, sheet.practice, STYLES.practice, LETTERHEAD_WIDTH, 1).lines;
+  const line = fitText(paper, sheet.practiceLine, STYLES.practiceLine, LETTERHEAD_WIDTH, 1).lines;
   const top = bottom - mm(STYLES.practice.leading + STYLES.practiceLine.leading);
   paper.leaf("P", practice, () => {
     setLines(paper, name, PAGE.left, top, STYLES.practice);
@@ -212,7 +232,7 @@ function hero(paper: Paper, first: FirstPage, degree: Tightness): number {
   paper.leaf("H1", paper.tag("H1"), () => setLines(paper, box.lines, PAGE.left, top, style));
   top += box.height;
   if (first.identification !== "") {
-    const lines = fitText(paper, first.identification, STYLES.identification, TEXT_WIDTH, 2);
+    const lines = identificationBox(paper, first);
     paper.leaf("P", paper.tag("P"), () => setLines(paper, lines.lines, PAGE.left, top + 0.8, STYLES.identification));
     top += 0.8 + lines.height;
   }

@@ -156,7 +156,7 @@ function rowStrip(paper: Paper, tags: () => { table: Tag; figure: Tag }, layout:
 
 function headStrip(paper: Paper, tags: () => { table: Tag }, layout: Layout): Strip {
   const boxes = layout.heads.map((head, index) =>
-    fitText(paper, head, STYLES.head, layout.columns[index]!.width - 1.4),
+    fitText(paper, head, STYLES.head, layout.columns[index]!.width - 1.4, 4),
   );
   const first = fitText(paper, "Attribute included, unit of change", STYLES.head, layout.left - 1);
   const height = Math.max(first.height, ...boxes.map((box) => box.height)) + 1;

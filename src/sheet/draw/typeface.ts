@@ -172,6 +172,8 @@ export function clampLines(lines: Span[][], limit: number, fits: (line: Span[]) 
   const tail = last.pop() ?? { text: "" };
   let text = tail.text.trimEnd();
   while (text.length > 0 && !fits([...last, { ...tail, text: `${text} …` }])) text = text.slice(0, -1).trimEnd();
+  const whole = text.replace(/\s+\S*$/, "");
+  if (whole.length > text.length * 0.6) text = whole;
   kept[limit - 1] = [...last, { ...tail, text: `${text} …` }];
   return kept;
 }

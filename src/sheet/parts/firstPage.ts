@@ -9,6 +9,8 @@ import type { CaveatRow, Fact, FirstPage, Gauge, GaugeRange } from "../sheetCont
 import { type SheetContext, stated } from "./context.ts";
 
 const NBSP = "\u00a0";
+/** Letters of a phrase in the opening sentence. */
+const PHRASE = 80;
 export const CAVEATS_ON_FIRST_PAGE = 3;
 /** Levels above this are in the result, not in the gauge. */
 const GAUGE_TOP_LEVEL = 0.9;
@@ -97,9 +99,17 @@ const IN_WORDS: Readonly<Record<string, string>> = {
   "95 in 100": "Ninety-five in a hundred",
 };
 
+/** The opening sentence must keep its range: a long phrase is cut here, and stands whole among the facts. */
+function shortened(text: string): string {
+  if (text.length <= PHRASE) return text;
+  return `${text.slice(0, PHRASE).replace(/\s+\S*$/, "")} …`;
+}
+
 function terms({ sheet, priced, itemWord, currencyCode }: SheetContext): string {
   const { engagement, adjustments } = sheet.request;
-  const phrases = [engagement.marketLevel, engagement.priceBasisWords].filter((text) => text.trim() !== "").map(lower);
+  const phrases = [engagement.marketLevel, engagement.priceBasisWords]
+    .filter((text) => text.trim() !== "")
+    .map((text) => shortened(lower(text.trim())));
   const adjusted = adjustments.length > 0 ? ", after the valuer’s own adjustments" : "";
   const first = `The ${priced.price.centre} of what such a ${itemWord} would be sold for${phrases.map((text) => `, ${text}`).join("")}${adjusted}.`;
   const range = ruleRange(sheet.conclusion.rangeForOneSale);
