@@ -315,9 +315,9 @@ describe("what is not a sheet", () => {
       return data !== null && Buffer.from(data).toString("utf8").startsWith('{"schema"');
     })!;
     const small = rebuild(bytes, (one, body) =>
-      one === id ? { body: body.replace("/Filter /FlateDecode", "/Fitler /FlateDecode"), data: bomb } : null,
+      one === id ? { body: body.replace("/Filter /FlateDecode", "/Filter /PlateDecode"), data: bomb } : null,
     );
-    const text = Buffer.from(small).toString("latin1").replace("/Fitler /FlateDecode", "/Filter /FlateDecode");
+    const text = Buffer.from(small).toString("latin1").replace("/Filter /PlateDecode", "/Filter /FlateDecode");
     const report = await verify(sealPdf(Buffer.from(text, "latin1")));
     expect(report.verdict).toBe("altered");
     expect(report.sentence).toContain("cannot be unpacked");
