@@ -54,12 +54,19 @@ export function rowSentence(row: LedgerRow, comesWith: ComesWith, currencyCode: 
   const now = `${subjectOf(row)} goes with ${moreOrLess(row.money.coefficient, step, currencyCode)}`;
   const strongest = strongestCarried(row);
   if (row.carriedParts.length === 0) return `${now}, the other attributes alike.`;
-  if (strongest === null) return `${now}; next to nothing of it is carried for what is left out.`;
+  if (strongest === null) return `${now}; next to nothing of it is carried.`;
   const part = row.carriedParts.find((one) => one.from === strongest.from)!;
-  const own = `among items alike in what is left out it is ${moreOrLess(row.money.own, step, currencyCode)}`;
+  const own = `among items alike in ${alikeIn(row)} it is ${moreOrLess(row.money.own, step, currencyCode)}`;
   const turned = row.signTurned ? ", the other way round" : "";
   const carried = `${money(strongest.amount, step, currencyCode)} ${strongest.amount < 0 ? "less" : "more"} is carried for ${lowerStart(part.fromLabel)}`;
   return `${now}; ${own}${turned}, and ${carried}${reason(row, comesWith.get(strongest.from))}.`;
+}
+
+/** The attributes left out, or that there are several of them. */
+function alikeIn(row: LedgerRow): string {
+  return row.carriedParts.length > 2
+    ? "what is left out"
+    : listWords(row.carriedParts.map((part) => lowerStart(part.fromLabel)));
 }
 
 function reason(row: LedgerRow, move: { amount: number; unit: string; decimals: number } | undefined): string {

@@ -33,7 +33,7 @@ const draws = fc.record({
 });
 const someOut = fc.subarray(["hours", "pull", "built", "make", "remote"], { maxLength: 4 });
 const response = fc.constantFrom("lnPrice" as const, "price" as const);
-const RUNS = { numRuns: 40 };
+const RUNS = { numRuns: 40, seed: 20_261_201 };
 
 describe("what must add up", () => {
   test("own and carried parts give each coefficient, in coefficients and in money", () => {
