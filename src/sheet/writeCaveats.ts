@@ -194,18 +194,19 @@ const dependencies: Rule = ({ report }) =>
     };
   });
 
+/** Held for a few days only, the market moves the price by less than the figures show: the note under the steps says it. */
 const marketHeld: Rule = ({ priced, report, assetClass, step }) => {
   const held = priced.price.marketHeldAt;
   if (held === null) return [];
   const days = (dayNumber(priced.subject.effectiveOn) ?? 0) - (dayNumber(held) ?? 0);
   const size = marketMoney(report, days / DAYS_PER_MONTH) ?? 0;
-  const money =
-    size >= step ? `; carried on, it would come to about ${moneyTo(step, size, assetClass.currencyCode)}` : "";
+  if (size < step) return [];
+  const money = moneyTo(step, size, assetClass.currencyCode);
   return [
     {
       code: "market-held",
       headline: `Market movement is held at ${formatDay(held)}, the last sale.`,
-      text: `No sale shows how prices moved from then to the effective date${money}.`,
+      text: `No sale shows how prices moved from then to the effective date; carried on, it would come to about ${money}.`,
       wouldRead: [],
       size,
     },

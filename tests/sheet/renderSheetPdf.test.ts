@@ -422,3 +422,12 @@ describeNeeding("pdftotext", "other programs: the text", (pdftotext) => {
     for (const piece of own) expect(plain).toContain(piece.replace(/\s+/g, ""));
   });
 });
+
+test("a draft on a fit that nobody saved names no edition, and the attribute's unit stands once", () => {
+  const draft = buildSheet({ ...sheetEvidence({ sheetNumber: "" }), editionNumber: 0 });
+  const text = JSON.stringify(draft);
+  expect(text).toContain("not saved as an edition");
+  expect(text).not.toContain("edition 0");
+  expect(text).toContain("Lift height, m");
+  expect(text).toContain("Hours, h");
+});

@@ -21,12 +21,7 @@ const withEvidence = (evidence: Partial<Appraisal["evidence"]>): FoundSoFar => (
 
 test("caveats come largest first, and what is not known says what the price would read", () => {
   const caveats = writeCaveats(FOUND);
-  expect(caveats.map(({ code }) => code)).toEqual([
-    "not-known:hire_past",
-    "not-verified",
-    "market-held",
-    "exact:power_hp+power_kw",
-  ]);
+  expect(caveats.map(({ code }) => code)).toEqual(["not-known:hire_past", "not-verified", "exact:power_hp+power_kw"]);
   expect(caveats[0]).toMatchObject({
     headline: "Hire-fleet past is not known.",
     wouldRead: ["€37,190 if ex hire fleet", "€39,130 if not hired out"],
@@ -94,4 +89,13 @@ test("a price without a range, or with one below zero, says so first", () => {
 
 test("counts that only the store knows do not enter, so that a caveat can be worked out from the file again", () => {
   expect(writeCaveats(withEvidence({ read: 9999, out: [] }))).toEqual(writeCaveats(FOUND));
+});
+
+test("a market held is said when carrying it on would show, and then with how much", () => {
+  const subject = { ...PRICED.subject, effectiveOn: "2026-01-26" };
+  const caveats = writeCaveats({ ...FOUND, priced: { ...PRICED, subject } });
+  const held = caveats.find(({ code }) => code === "market-held")!;
+  expect(held.headline).toMatch(/26.Sept?.2025/);
+  expect(held.text).toContain("about €170");
+  expect(codes(FOUND)).not.toContain("market-held");
 });

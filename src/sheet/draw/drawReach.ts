@@ -7,12 +7,12 @@ import { scaleOf, tickStep, ticksBetween } from "./scale.ts";
 import { BRICK, HAIR, INK, RULES, SLATE, STYLES, VERDIGRIS } from "./styles.ts";
 import type { Style } from "./typeface.ts";
 
-const PICTURE = { width: 82, height: 38 } as const;
+const PICTURE = { width: 82, height: 38, tallest: 56 } as const;
 const GUTTER = 7;
 const ROW = 5;
 
-function drawScatter(paper: Paper, scatter: Scatter, top: number): void {
-  const [left, right, bottom] = [PAGE.left + 11, PAGE.left + PICTURE.width - 2, top + PICTURE.height - 6.2];
+function drawScatter(paper: Paper, scatter: Scatter, top: number, height: number): void {
+  const [left, right, bottom] = [PAGE.left + 11, PAGE.left + PICTURE.width - 2, top + height - 6.2];
   const all = [...scatter.points, scatter.subject];
   const extent = (axis: 0 | 1): [number, number] => {
     const values = all.map((point) => point[axis]);
@@ -161,12 +161,13 @@ export function reachBands(paper: Paper, reach: ReachTable): Band[] {
   const note = noteStrip(paper, reach.note, beside);
   const height = narrow.head.height + narrow.rows.reduce((sum, row) => sum + row.height, 0) + note.height;
   const { scatter } = reach;
+  const pictureHeight = Math.max(PICTURE.height, Math.min(PICTURE.tallest, height - note.height));
   if (scatter !== null && height <= 90) {
     const strip: Strip = {
-      height: Math.max(PICTURE.height, height),
+      height: Math.max(pictureHeight, height),
       draw: (top) => {
         paper.leaf("Figure", paper.tag("Figure", paper.root, { alt: scatter.alt }), () =>
-          drawScatter(paper, scatter, top),
+          drawScatter(paper, scatter, top, pictureHeight),
         );
         const table = paper.tag("Table");
         let y = top;
@@ -200,7 +201,7 @@ function stacked(paper: Paper, reach: ReachTable): Band[] {
     height: PICTURE.height + 3,
     draw: (top) =>
       paper.leaf("Figure", paper.tag("Figure", paper.root, { alt: scatter.alt }), () =>
-        drawScatter(paper, scatter, top),
+        drawScatter(paper, scatter, top, PICTURE.height),
       ),
   };
   return [{ head: null, strips: [picture] }, table];

@@ -27,7 +27,7 @@ export function roomyTicks(scale: Scale, wanted: number, widthOf: (value: number
   for (let k = 0; k < 12; k++) {
     const ticks = ticksBetween(scale.from, scale.to, step);
     const widest = Math.max(0, ...ticks.map(widthOf));
-    if (Math.abs(scale(step) - scale(0)) >= widest + 2) return ticks;
+    if (Math.abs(scale(step) - scale(0)) >= widest + 1.2) return ticks;
     step = tickStep(step * 2.5);
   }
   return [];

@@ -5,7 +5,7 @@
 import { formatDay, formatMoney, formatNumber, formatSigned, roundTo } from "../../domain/format.ts";
 import { countWord, listWords, lower, moneyTo, plural, upperStart } from "../figures.ts";
 import type { Section, StepKind, StepRow } from "../sheetContent.ts";
-import type { SheetContext } from "./context.ts";
+import { editionWords, type SheetContext } from "./context.ts";
 
 const factorText = (factor: number): string => `×\u00a0${formatNumber(factor, 3)}`;
 
@@ -185,5 +185,5 @@ function note(context: SheetContext): string {
     ? ` ${moneyTo(step, priced.price.amount, currencyCode)} is the median; the mean is ${moneyTo(step, priced.price.meanAmount, currencyCode)}.`
     : "";
   const rounding = `Figures are rounded to ${formatMoney(step, currencyCode)} so that they add up; ${formatMoney(sheet.conclusion.roundingStep, currencyCode)} is about a tenth of half the 90\u00a0% range.`;
-  return `Price model: ${isLn ? "ln price" : "price"}, least squares, edition ${sheet.editionNumber}.${formsWords(context)}${market}${order}${centre} ${rounding}`;
+  return `Price model: ${isLn ? "ln price" : "price"}, least squares, ${editionWords(sheet.editionNumber)}.${formsWords(context)}${market}${order}${centre} ${rounding}`;
 }

@@ -3,7 +3,7 @@ import { formatDay, formatMoney, formatNumber, formatPercent } from "../../domai
 import { standingCautions } from "../cautions.ts";
 import { countWord, listWords, lower, plural } from "../figures.ts";
 import type { Piece, ReworkRow, Section, Words } from "../sheetContent.ts";
-import { type SheetContext, stated } from "./context.ts";
+import { editionWords, type SheetContext, stated } from "./context.ts";
 import { CAVEATS_ON_FIRST_PAGE, caveatRows } from "./firstPage.ts";
 
 export const EVIDENCE_FILE = "lotwright-evidence.json";
@@ -22,9 +22,9 @@ export function assumptionsSection(context: SheetContext): Section {
   const { engagement, adjustments, overrideReason } = sheet.request;
   const items: Words[] = [];
   if (overrideReason !== null && overrideReason.trim() !== "") {
-    items.push(
-      paragraph("Extraordinary: priced beyond the evidence.", `The valuer’s reason: ${overrideReason.trim()}`),
-    );
+    const beyond = priced.reach.verdict === "beyond";
+    const head = beyond ? "Extraordinary: priced beyond the evidence." : "The valuer on the reach of the evidence:";
+    items.push(paragraph(head, beyond ? `The valuer’s reason: ${overrideReason.trim()}` : overrideReason.trim()));
   }
   for (const { label, amount, reason } of adjustments) {
     const sum = formatMoney(Math.abs(amount), currencyCode);
@@ -108,7 +108,7 @@ function reworkRows({ sheet, appraisal, priced, currencyCode }: SheetContext): R
     note,
   });
   const rows = [
-    row("Price model, edition", `${sheet.assetClass.name}, edition ${sheet.editionNumber}`),
+    row("Price model, edition", `${sheet.assetClass.name}, ${editionWords(sheet.editionNumber)}`),
     row(
       "Evidence",
       `${formatNumber(report.n)} ${plural(report.n, "sale")}, ${report.p} ${plural(report.p, "coefficient")}, ${formatNumber(report.residualDf)} ${plural(report.residualDf, "degree")} of freedom`,
@@ -167,7 +167,7 @@ export function reworkSection(context: SheetContext, missing: readonly string[])
             { text: "Open this PDF under " },
             { text: "Sheets, Verify", italic: true },
             {
-              text: `, or type lotwright verify and the file’s name. The program takes the sales out of the PDF, checks their fingerprint, fits edition ${sheet.editionNumber} again and compares every number, and the stored result to the last digit.`,
+              text: `, or type lotwright verify and the file’s name. The program takes the sales out of the PDF, checks their fingerprint, fits the price model again and compares every number, and the stored result to the last digit.`,
             },
           ],
           [

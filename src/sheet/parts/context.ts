@@ -43,3 +43,8 @@ export function contextOf(sheet: SheetEvidence): SheetContext {
 export function stated(text: string | null | undefined): string {
   return text == null || text.trim() === "" ? "not stated" : text.trim();
 }
+
+/** "edition 12"; a draft may rest on a fit that nobody has saved. */
+export function editionWords(editionNumber: number): string {
+  return editionNumber > 0 ? `edition ${editionNumber}` : "not saved as an edition";
+}

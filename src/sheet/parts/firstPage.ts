@@ -6,7 +6,7 @@ import { amountInWords } from "../amountInWords.ts";
 import { ruleRange } from "../concludePrice.ts";
 import { lower, plural, upperStart } from "../figures.ts";
 import type { CaveatRow, Fact, FirstPage, Gauge, GaugeRange } from "../sheetContent.ts";
-import { type SheetContext, stated } from "./context.ts";
+import { editionWords, type SheetContext, stated } from "./context.ts";
 
 const NBSP = "\u00a0";
 /** Letters of a phrase in the opening sentence. */
@@ -18,13 +18,12 @@ const GAUGE_TOP_LEVEL = 0.9;
 export function firstPage(context: SheetContext): FirstPage {
   const { sheet, priced, currencyCode } = context;
   const { conclusion, request } = sheet;
+  const { engagement } = request;
   return {
     title: stated(priced.subject.title),
     identification: identification(context),
     basisLine: [
-      [request.engagement.basisOfValue, lower(request.engagement.premise)]
-        .filter((text) => text.trim() !== "")
-        .join(", "),
+      upperStart([engagement.basisOfValue, lower(engagement.premise)].filter((text) => text.trim() !== "").join(", ")),
       `on ${formatDay(priced.subject.effectiveOn)}`,
     ]
       .filter((text) => text !== "")
@@ -132,7 +131,10 @@ function restsOn({ sheet, appraisal, priced }: SheetContext): Fact[] {
   if (report.looTypicalError !== null) {
     rows.push(["Typical error", `${formatPercent(report.looTypicalError, 1)} on sales not seen`]);
   }
-  rows.push(["Price model", `${report.response === "lnPrice" ? "ln price" : "price"}, edition ${sheet.editionNumber}`]);
+  rows.push([
+    "Price model",
+    `${report.response === "lnPrice" ? "ln price" : "price"}, ${editionWords(sheet.editionNumber)}`,
+  ]);
   return rows.map(([label, words]) => ({ label, words, short: words }));
 }
 
@@ -174,7 +176,9 @@ function gauge({ sheet, currencyCode }: SheetContext): Gauge {
 }
 
 function fact(label: string, words: string | null, short: string | null = null): Fact {
-  return { label, words: stated(words), short: stated(short ?? words) };
+  const said = (text: string | null): string =>
+    stated(text) === "not stated" ? "not stated" : upperStart(stated(text));
+  return { label, words: said(words), short: said(short ?? words) };
 }
 
 function facts({ sheet, priced, itemWord }: SheetContext): Fact[][] {

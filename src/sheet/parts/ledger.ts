@@ -94,7 +94,9 @@ export function ledgerSection(context: SheetContext): Section {
     },
   };
   const levels =
-    hidden > 0 ? ` Of a choice with several levels only the one that speaks of this ${context.itemWord} is shown.` : "";
+    hidden > 0
+      ? ` Of a choice with several levels one is shown: this ${context.itemWord}’s own, or the one furthest from it.`
+      : "";
   const note: Part = {
     kind: "note",
     text: `As used here = own part + carried parts, exactly. Money is read at the average sale, other attributes alike; see caution 9.${levels}`,

@@ -27,7 +27,8 @@ export function numberText(attribute: Attribute, value: number | null): string {
 /** "Age at sale, years"; the unit is left out where the label already says it. */
 export function headOf(attribute: Attribute): string {
   const { label, unit } = attribute;
-  return unit === null || label.includes(unit) ? label : `${label}, ${unit}`;
+  const said = label.split(/[^\p{L}\p{N}%]+/u);
+  return unit === null || said.includes(unit) ? label : `${label}, ${unit}`;
 }
 
 export function valueOfRow(table: EvidenceTable, row: EvidenceRow, key: string): AttributeValue {
