@@ -1,6 +1,7 @@
 /** All verbs, in the order of the help. */
 import type { Verb } from "../verb.ts";
 import { demoVerb } from "./demo.ts";
+import { digitsVerb } from "./digits.ts";
 import { importVerb } from "./import.ts";
 import { priceVerb } from "./price.ts";
 import { refitVerb } from "./refit.ts";
@@ -18,4 +19,5 @@ export const VERBS: readonly Verb[] = [
   verifyVerb,
   serveVerb,
   demoVerb,
+  digitsVerb,
 ];
