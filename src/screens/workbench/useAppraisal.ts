@@ -1,0 +1,91 @@
+/**
+ * The price of what is on the table: asked anew at each change of model or subject, the latest answer wins. A wait is shown
+ * only after a blink, and the move of the price for a moment.
+ */
+import { useCallback, useEffect, useRef, useState } from "react";
+import { type Client, RequestRefused } from "../../contract/client.ts";
+import type { Appraisal } from "../../domain/appraisal.ts";
+import type { PlainError } from "../../domain/errors.ts";
+import { isBlank } from "./blank.ts";
+import type { Work } from "./history.ts";
+import type { PriceMove } from "./workbench.ts";
+
+export const LEVELS: readonly number[] = [0.5, 0.8, 0.9, 0.95];
+const BLINK_MS = 150;
+const MOMENT_MS = 8000;
+
+export interface Answer {
+  readonly appraisal: Appraisal | null;
+  readonly milliseconds: number | null;
+  readonly error: PlainError | null;
+  readonly isWaiting: boolean;
+  readonly move: PriceMove | null;
+}
+
+const NOTHING: Answer = { appraisal: null, milliseconds: null, error: null, isWaiting: false, move: null };
+
+export function plainErrorOf(cause: unknown): PlainError {
+  if (cause instanceof RequestRefused) return cause.plain;
+  return {
+    family: "bug",
+    code: "unexpected",
+    what: "Something went wrong on this page.",
+    where: null,
+    whatToDo: "Try again.",
+  };
+}
+
+/** Null when nothing was priced before or after, or the price stayed. */
+export function moveBetween(before: Appraisal | null, after: Appraisal): PriceMove | null {
+  const from = before?.priced?.price;
+  const to = after.priced?.price;
+  if (from === undefined || to === undefined || from.amount === to.amount) return null;
+  return { from: from.amount, to: to.amount, fromRanges: from.rangeForOneSale };
+}
+
+/** `stamp` changes when the data did, so that the same model and subject are asked again. */
+export function useAppraisal(client: Client, classId: number | null, work: Work | null, stamp: number): Answer {
+  const [answer, setAnswer] = useState<Answer>(NOTHING);
+  const latest = useRef(0);
+  const shown = useRef<{ classId: number; title: string; appraisal: Appraisal } | null>(null);
+
+  const ask = useCallback(
+    async (id: number, { model, subject }: Work) => {
+      const turn = ++latest.current;
+      const slow = setTimeout(() => setAnswer((now) => ({ ...now, isWaiting: true })), BLINK_MS);
+      try {
+        const input = { classId: id, model, subject: isBlank(subject) ? null : subject, levels: [...LEVELS] };
+        const { appraisal, milliseconds } = await client.ask(
+          "appraise",
+          input as Parameters<typeof client.ask<"appraise">>[1],
+        );
+        if (turn !== latest.current) return;
+        const before = shown.current;
+        const isSameItem = before?.classId === id && before.title === subject.title;
+        shown.current = { classId: id, title: subject.title, appraisal };
+        const move = isSameItem ? moveBetween(before.appraisal, appraisal) : null;
+        setAnswer({ appraisal, milliseconds, error: null, isWaiting: false, move });
+      } catch (cause) {
+        if (turn === latest.current) setAnswer({ ...NOTHING, error: plainErrorOf(cause) });
+      } finally {
+        clearTimeout(slow);
+      }
+    },
+    [client],
+  );
+
+  // biome-ignore lint/correctness/useExhaustiveDependencies: the stamp says that the data behind the same question changed
+  useEffect(() => {
+    if (classId === null || work === null) setAnswer(NOTHING);
+    else void ask(classId, work);
+  }, [ask, classId, work, stamp]);
+
+  const { move } = answer;
+  useEffect(() => {
+    if (move === null) return;
+    const end = setTimeout(() => setAnswer((now) => (now.move === move ? { ...now, move: null } : now)), MOMENT_MS);
+    return () => clearTimeout(end);
+  }, [move]);
+
+  return answer;
+}
