@@ -44,6 +44,11 @@ export function plural(count: number, one: string, many = `${one}s`): string {
   return count === 1 ? one : many;
 }
 
+/** "a machine", "an organ" */
+export function withArticle(word: string): string {
+  return /^[aeiou]/i.test(word) ? `an ${word}` : `a ${word}`;
+}
+
 export function upperStart(text: string): string {
   return text.charAt(0).toUpperCase() + text.slice(1);
 }

@@ -194,6 +194,8 @@ export interface ReachLine {
 }
 
 export interface Scatter {
+  readonly xDecimals: number;
+  readonly yDecimals: number;
   readonly xLabel: string;
   readonly yLabel: string;
   readonly points: readonly (readonly [number, number])[];

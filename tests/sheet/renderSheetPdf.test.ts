@@ -45,7 +45,7 @@ function colliding(sheet: RenderedSheet): string[] {
   return found;
 }
 
-const textOf = (bytes: Uint8Array): string => pageTexts(readPdf(bytes)).flat().join(" ");
+const textOf = (bytes: Uint8Array): string => pageTexts(readPdf(bytes)).flat().join(" ").replace(/ +/g, " ");
 
 function crowded(count: number): (appraisal: Appraisal) => Appraisal {
   return (appraisal) => {
@@ -124,7 +124,7 @@ beforeAll(async () => {
 
 describe("a usual sheet", () => {
   test("has the price, its ranges and its steps as text on its pages", () => {
-    const [first, second] = pageTexts(readPdf(usual.bytes)).map((pieces) => pieces.join(" "));
+    const [first, second] = pageTexts(readPdf(usual.bytes)).map((pieces) => pieces.join(" ").replace(/ +/g, " "));
     for (const words of [
       "€38,500",
       "thirty-eight thousand five hundred euro",
@@ -163,7 +163,7 @@ describe("a usual sheet", () => {
   });
 
   test("numbers its pages, and says that it is invented and when it was issued", () => {
-    const pages = pageTexts(readPdf(usual.bytes)).map((pieces) => pieces.join(" "));
+    const pages = pageTexts(readPdf(usual.bytes)).map((pieces) => pieces.join(" ").replace(/ +/g, " "));
     pages.forEach((text, index) => {
       expect(text).toContain(`page ${index + 1} of 4`);
       expect(text).toContain("Invented example");
@@ -243,7 +243,7 @@ describe("an unusual sheet", () => {
     const sheet = await renderSheet(sheetEvidence({ request: { engagement, subject } }), FONTS);
     expect(overflowing(sheet)).toEqual([]);
     expect(colliding(sheet)).toEqual([]);
-    const pages = pageTexts(readPdf(sheet.bytes)).map((pieces) => pieces.join(" "));
+    const pages = pageTexts(readPdf(sheet.bytes)).map((pieces) => pieces.join(" ").replace(/ +/g, " "));
     expect(pages[0]).toContain("Remarks");
     expect(pages.slice(1).join(" ")).toContain("Page 1 in full");
     expect(pages.slice(1).join(" ")).toContain("exposureTime");
@@ -361,6 +361,8 @@ describe("an unusual sheet", () => {
 });
 
 describe("letters", () => {
+  const withCaveat = (words: string): Promise<RenderedSheet> =>
+    renderSheet(sheetEvidence({ request: { engagement: { ...REQUEST.engagement, ownCaveats: [words] } } }), FONTS);
   const withTitle = (title: string): Promise<RenderedSheet> =>
     renderSheet(sheetEvidence({ request: { subject: { ...REQUEST.subject, title } } }), FONTS);
 
@@ -368,6 +370,24 @@ describe("letters", () => {
     const sheet = await withTitle("Łódź Šúňža Ğűő");
     expect(sheet.missingCharacters).toEqual([]);
     expect(textOf(sheet.bytes).replace(/ /g, "")).toContain("ŁódźŠúňžaĞűő");
+  });
+
+  test("can each be drawn, every one that the font files hold", async () => {
+    const held: string[] = [];
+    for (const [first, last] of [
+      [0xa1, 0x24f],
+      [0x1e00, 0x1eff],
+      [0x2010, 0x2027],
+      [0x20a0, 0x20c0],
+    ] as const) {
+      for (let code = first; code <= last; code++) held.push(String.fromCodePoint(code));
+    }
+    const whole = await withCaveat(held.join(" "));
+    const lost = new Set(whole.missingCharacters);
+    const drawn = held.filter((one) => !lost.has(one) && one.normalize("NFC") === one && !/\p{Cf}/u.test(one));
+    expect(drawn.length).toBeGreaterThan(300);
+    const text = textOf(whole.bytes);
+    expect(drawn.filter((one) => !text.includes(one))).toEqual([]);
   });
 
   test("that no font holds are marked, reported and named on the sheet, never dropped", async () => {

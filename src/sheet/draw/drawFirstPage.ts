@@ -237,8 +237,8 @@ function hero(paper: Paper, first: FirstPage, degree: Tightness): number {
     top += 0.8 + lines.height;
   }
   top += 3;
-  panel(paper, first, top);
   priceBlock(paper, first, top);
+  panel(paper, first, top);
   return top + priceHeight(paper, first) + 5;
 }
 
@@ -268,7 +268,6 @@ function panelHeight(first: FirstPage): number {
 }
 
 function panel(paper: Paper, first: FirstPage, top: number): void {
-  const table = paper.tag("Table");
   const right = PANEL.left + PANEL.width;
   paper.leaf("P", paper.tag("P"), () => {
     paper.text("What the price rests on", PANEL.left, top + baselineOf(STYLES.basisLine), {
@@ -276,6 +275,7 @@ function panel(paper: Paper, first: FirstPage, top: number): void {
       color: SOFT,
     });
   });
+  const table = paper.tag("Table");
   const start = top + mm(STYLES.basisLine.leading) + 0.9;
   first.restsOn.forEach((fact, index) => {
     const y = start + index * PANEL_ROW;

@@ -6,7 +6,7 @@ import { formatNumber } from "../../domain/format.ts";
 import type { Gauge, GaugeRange } from "../sheetContent.ts";
 import { PAGE, type Paper } from "./paper.ts";
 import { type Scale, scaleOf, tickStep, ticksBetween } from "./scale.ts";
-import { INK, RULE, SLATE, SOFT, VERDIGRIS } from "./styles.ts";
+import { INK, RULE, SLATE, SOFT, VERDIGRIS, WHITE } from "./styles.ts";
 import type { Style } from "./typeface.ts";
 
 const text = (size: number, color = INK, face: Style["face"] = "sans"): Style => ({
@@ -77,7 +77,9 @@ function ruler(paper: Paper, gauge: Gauge, scale: Scale, y: number): void {
       paper.line(x, y, x, y + 2.6, 0.95, INK);
       const words = formatNumber(value, major < 1 ? 2 : 0);
       const half = paper.typeface.width(words, T.axis) / 2;
-      if (x + half <= PAGE.right && x - half >= left) paper.text(words, x, y + 5.2, T.axis, "middle");
+      if (x + half > PAGE.right || x - half < left) continue;
+      paper.rect(x - half - 0.5, y + 3, 2 * half + 1, 2.8, { fill: WHITE });
+      paper.text(words, x, y + 5.2, T.axis, "middle");
     } else if (length(value, minor)) paper.line(x, y, x, y + 1.9, 0.7, INK);
     else if (length(value, minor / 2)) paper.line(x, y, x, y + 1.3, 0.45, INK);
     else paper.line(x, y, x, y + 0.7, 0.3, INK);
@@ -149,11 +151,11 @@ export function drawGauge(paper: Paper, gauge: Gauge, top: number, trim: number)
   const rulerY = top + 7.2 + Math.max(0, gauge.oneSale.length - 1) * ROW + 5.8 - trim / 2;
   paper.leaf("Figure", paper.tag("Figure", paper.root, { alt: gauge.alt }), () => {
     oneSale(paper, gauge, rows, top, rulerY);
-    ruler(paper, gauge, rows.scale, rulerY);
     average(paper, gauge, rows, rulerY);
     const x = rows.scale(gauge.price);
     const end = rulerY + 9.4 + Math.max(0, gauge.average.length - 1) * AVERAGE_ROW + 0.7;
     paper.line(x, top + 3.2, x, end, 1.1, INK);
+    ruler(paper, gauge, rows.scale, rulerY);
     paper.polygon(
       [
         [x - 1.4, top + 3.2],

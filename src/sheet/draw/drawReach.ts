@@ -26,8 +26,9 @@ function drawScatter(paper: Paper, scatter: Scatter, top: number, height: number
   const x = scaleOf(...extent(0), left, right);
   const y = scaleOf(...extent(1), bottom, top + 4);
   const decimals = (step: number): number => (step >= 1 ? 0 : Math.min(3, Math.ceil(-Math.log10(step) - 1e-9)));
-  const xStep = tickStep((x.to - x.from) / 4);
-  const yStep = tickStep((y.to - y.from) / 4);
+  const stepOf = (span: number, least: number): number => Math.max(tickStep(span / 4), 10 ** -least);
+  const xStep = stepOf(x.to - x.from, scatter.xDecimals);
+  const yStep = stepOf(y.to - y.from, scatter.yDecimals);
   for (const tick of ticksBetween(y.from, y.to, yStep)) {
     paper.line(left, y(tick), right, y(tick), 0.5, HAIR);
     paper.text(formatNumber(tick, decimals(yStep)), left - 1.2, y(tick) + 0.8, STYLES.axis, "right");

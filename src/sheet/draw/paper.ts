@@ -129,21 +129,25 @@ export class Paper {
     this.doc.endMarkedContent();
   }
 
-  /** Sets one line on its base line; `at` is its left end, right end or middle. Gives its width in mm. */
+  /**
+   * Sets one line on its base line; `at` is its left end, right end or middle. Gives its width in mm. A blank without ink follows
+   * it, so that words of two lines do not grow together when the page is copied or read aloud.
+   */
   text(rich: Rich, at: number, baseline: number, style: Style, align: "left" | "right" | "middle" = "left"): number {
     const width = this.typeface.width(rich, style);
     const left = align === "left" ? at : align === "right" ? at - width : at - width / 2;
-    let x = left;
+    const runs = spansOf(rich).flatMap((span) => this.typeface.runs(span.text, faceOf(style, span)));
+    if (runs.length > 0 && !/[-–/]$/.test(runs[runs.length - 1]!.text))
+      runs.push({ font: FACES[style.face].latin, text: " " });
     this.doc.fillColor(style.color).fontSize(style.size);
-    for (const span of spansOf(rich)) {
-      for (const run of this.typeface.runs(span.text, faceOf(style, span))) {
-        this.doc.font(run.font).text(run.text, x * PT_PER_MM, baseline * PT_PER_MM, {
-          lineBreak: false,
-          baseline: "alphabetic",
-          ...(style.tabular === true ? { features: ["tnum"] } : {}),
-        } as PDFKit.Mixins.TextOptions);
-        x += this.open(run.font).width(run.text, style.size, style.tabular === true) / PT_PER_MM;
-      }
+    let x = left;
+    for (const run of runs) {
+      this.doc.font(run.font).text(run.text, x * PT_PER_MM, baseline * PT_PER_MM, {
+        lineBreak: false,
+        baseline: "alphabetic",
+        ...(style.tabular === true ? { features: ["tnum"] } : {}),
+      } as PDFKit.Mixins.TextOptions);
+      x += this.open(run.font).width(run.text, style.size, style.tabular === true) / PT_PER_MM;
     }
     const text = spansOf(rich)
       .map((span) => span.text)

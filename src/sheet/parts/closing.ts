@@ -143,7 +143,7 @@ function reworkRows({ sheet, appraisal, priced, currencyCode }: SheetContext): R
 }
 
 export function reworkSection(context: SheetContext, missing: readonly string[]): Section {
-  const { sheet, appraisal, priced } = context;
+  const { appraisal, priced } = context;
   const rows = reworkRows(context);
   if (missing.length > 0) {
     const codes = missing.map((one) => `U+${one.codePointAt(0)!.toString(16).toUpperCase().padStart(4, "0")}`);

@@ -63,12 +63,18 @@ function note(context: SheetContext): string {
       : `Sold ${formatDay(evidence.firstSoldOn)} to ${formatDay(evidence.lastSoldOn)}; `;
   const channels = evidence.channels.map(({ channel, count }) => `${formatNumber(count)} ${channel}`).join(", ");
   const open = evidence.used - evidence.verifiedCount;
+  const verified =
+    open === 0
+      ? "all verified"
+      : evidence.verifiedCount === 0
+        ? "none verified"
+        : `${formatNumber(evidence.verifiedCount)} verified, ${formatNumber(open)} not`;
   const details = evidence.out.filter(({ detail }) => detail !== null && detail !== "");
   const why =
     details.length === 0
       ? ""
       : ` Not used, in detail: ${details.map(({ reason, detail, saleIds }) => `${REASON_WORDS[reason] ?? reason}: ${detail} (${formatNumber(saleIds.length)})`).join("; ")}.`;
-  return `${when}${channels === "" ? "" : `${channels}; `}${formatNumber(evidence.verifiedCount)} verified, ${formatNumber(open)} not.${sourcesWords(context)}${why}`;
+  return `${when}${channels === "" ? "" : `${channels}; `}${verified}.${sourcesWords(context)}${why}`;
 }
 
 export function evidenceSection(context: SheetContext): Section {

@@ -4,7 +4,7 @@ import type { Attribute } from "../../domain/attribute.ts";
 import { formatDay, formatMoney, formatNumber, formatPercent, levelWords } from "../../domain/format.ts";
 import { amountInWords } from "../amountInWords.ts";
 import { ruleRange } from "../concludePrice.ts";
-import { lower, plural, upperStart } from "../figures.ts";
+import { lower, plural, upperStart, withArticle } from "../figures.ts";
 import type { CaveatRow, Fact, FirstPage, Gauge, GaugeRange } from "../sheetContent.ts";
 import { editionWords, type SheetContext, stated } from "./context.ts";
 
@@ -110,7 +110,7 @@ function terms({ sheet, priced, itemWord, currencyCode }: SheetContext): string 
     .filter((text) => text.trim() !== "")
     .map((text) => shortened(lower(text.trim())));
   const adjusted = adjustments.length > 0 ? ", after the valuer’s own adjustments" : "";
-  const first = `The ${priced.price.centre} of what such a ${itemWord} would be sold for${phrases.map((text) => `, ${text}`).join("")}${adjusted}.`;
+  const first = `The ${priced.price.centre} of what such ${withArticle(itemWord)} would be sold for${phrases.map((text) => `, ${text}`).join("")}${adjusted}.`;
   const range = ruleRange(sheet.conclusion.rangeForOneSale);
   if (range === null) return `${first} No range could be worked out: see the caveats.`;
   const words = levelWords(range.level);

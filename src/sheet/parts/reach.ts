@@ -4,6 +4,7 @@ import type { ReachVerdict } from "../../domain/appraisal.ts";
 import type { Attribute } from "../../domain/attribute.ts";
 import { CHANNEL_KEY, MARKET_KEY } from "../../domain/attribute.ts";
 import { formatNumber } from "../../domain/format.ts";
+import { withArticle } from "../figures.ts";
 import type { ReachLine, Scatter, Section } from "../sheetContent.ts";
 import type { SheetContext } from "./context.ts";
 import { decimalsOf, headOf, isNumeric, numericValue, valueOfRow } from "./values.ts";
@@ -87,6 +88,8 @@ function scatter(context: SheetContext): Scatter | null {
     if (values[0] != null && values[1] != null) points.push([values[0], values[1]]);
   }
   return {
+    xDecimals: decimalsOf(x),
+    yDecimals: decimalsOf(y),
     xLabel: headOf(x),
     yLabel: headOf(y),
     points,
@@ -99,7 +102,7 @@ function scatter(context: SheetContext): Scatter | null {
 export function reachSection(context: SheetContext): Section {
   const { priced, itemWord, sheet } = context;
   const near = [
-    `Leverage: how far out ${/^[aeiou]/i.test(itemWord) ? "an" : "a"} ${itemWord} lies, all attributes taken together; the largest of the evidence marks its end.`,
+    `Leverage: how far out ${withArticle(itemWord)} lies, all attributes taken together; the largest of the evidence marks its end.`,
   ];
   const channel = sheet.appraisal.report.attributes.includes(CHANNEL_KEY);
   if (channel) near.push("A channel or a choice is inside when the evidence has sales of it.");
