@@ -56,7 +56,13 @@ async function price(row: number, leftOut: string[] = []): Promise<Appraisal> {
   const values = Object.fromEntries(
     Object.entries(attributes).map(([key, value]) => [key, YES_NO.includes(key) ? value === "yes" : value]),
   );
-  const subject = { title: `New house ${row + 1}`, serial: null, identifiedBy: null, values, effectiveOn: "1987-07-31" };
+  const subject = {
+    title: `New house ${row + 1}`,
+    serial: null,
+    identifiedBy: null,
+    values,
+    effectiveOn: "1987-07-31",
+  };
   const input = { classId, model: { ...model, leftOut }, subject, levels: LEVELS };
   return (await handlers.appraise(input as never)).appraisal;
 }
