@@ -57,7 +57,6 @@ export function Palette({ placeActs, onClose }: { placeActs: readonly Act[]; onC
     event.preventDefault();
   };
   return (
-    // biome-ignore lint/a11y/noStaticElementInteractions: a press beside the box closes it, as Escape does
     <div className={css.palette} onPointerDown={(event) => event.target === event.currentTarget && onClose()}>
       <div className={css.paletteBox} role="dialog" aria-label="Find or do">
         <input
