@@ -4,7 +4,7 @@
  */
 import type { LedgerRow } from "../domain/appraisal.ts";
 import { MARKET_KEY } from "../domain/attribute.ts";
-import { formatMoney, formatNumber, listWords, lowerStart, niceStep, roundTo } from "../domain/format.ts";
+import { formatMoney, formatNumber, listWords, lowerStart, niceStep, roundTo, roundToAddUp } from "../domain/format.ts";
 
 /** How one step of the row's attribute moves each left-out number, by key. */
 export type ComesWith = ReadonlyMap<string, { amount: number; unit: string; decimals: number }>;
@@ -19,6 +19,13 @@ const WORTH_SAYING = 0.05;
 export function moneyStep(row: Pick<LedgerRow, "money">): number {
   const largest = Math.max(Math.abs(row.money.own), Math.abs(row.money.coefficient), 1);
   return Math.max(1, Math.min(10, niceStep(largest / 100)));
+}
+
+/** The row's money as it is shown: rounded so that own and carried parts add up to the coefficient. */
+function asShown({ money: { coefficient, own, carried } }: LedgerRow, step: number): LedgerRow["money"] {
+  const whole = roundTo(coefficient, step);
+  const [shownOwn, ...parts] = roundToAddUp([own, ...carried.map((part) => part.amount)], whole, step);
+  return { coefficient: whole, own: shownOwn!, carried: carried.map((part, at) => ({ ...part, amount: parts[at]! })) };
 }
 
 function money(amount: number, step: number, currencyCode: string): string {
@@ -51,14 +58,16 @@ function stepOfLabel({ label, stepWords }: Pick<LedgerRow, "label" | "stepWords"
 
 export function rowSentence(row: LedgerRow, comesWith: ComesWith, currencyCode: string): string {
   const step = moneyStep(row);
+  const shown = asShown(row, step);
   const now = `${subjectOf(row)} goes with ${moreOrLess(row.money.coefficient, step, currencyCode)}`;
   const strongest = strongestCarried(row);
   if (row.carriedParts.length === 0) return `${now}, the other attributes alike.`;
   if (strongest === null) return `${now}; next to nothing of it is carried.`;
   const part = row.carriedParts.find((one) => one.from === strongest.from)!;
-  const own = `among items alike in ${alikeIn(row)} it is ${moreOrLess(row.money.own, step, currencyCode)}`;
+  const own = `among items alike in ${alikeIn(row)} it is ${moreOrLess(shown.own, step, currencyCode)}`;
   const turned = row.signTurned ? ", the other way round" : "";
-  const carried = `${money(strongest.amount, step, currencyCode)} ${strongest.amount < 0 ? "less" : "more"} is carried for ${lowerStart(part.fromLabel)}`;
+  const amount = shown.carried.find((one) => one.from === strongest.from)!.amount;
+  const carried = `${money(amount, step, currencyCode)} ${strongest.amount < 0 ? "less" : "more"} is carried for ${lowerStart(part.fromLabel)}`;
   return `${now}; ${own}${turned}, and ${carried}${reason(row, comesWith.get(strongest.from))}.`;
 }
 
@@ -106,7 +115,7 @@ export function ledgerHeadline(
   const turned = most.signTurned ? "; the sign has turned" : "";
   return (
     `With ${names} left out, ${startLow(subjectOf(most))} reads ${signed(most.money.coefficient, step, currencyCode)}. ` +
-    `Among items alike in that it is ${signed(most.money.own, step, currencyCode)}${turned}.`
+    `Among items alike in that it is ${signed(asShown(most, step).own, step, currencyCode)}${turned}.`
   );
 }
 

@@ -23,7 +23,7 @@ function boxes(paper: Paper, row: CaveatRow, maxLines: number): Boxes {
   const rich = [{ text: `${row.headline} `, bold: true }, { text: row.text }];
   const fitted = fitText(paper, rich, STYLES.caveat, width, maxLines);
   const text = fitted.lines;
-  const effects = row.wouldRead.map((words) => fitText(paper, words, STYLES.effect, EFFECT, 2));
+  const effects = row.wouldRead.map((words) => fitText(paper, words, STYLES.effect, EFFECT, Math.max(2, maxLines - 2)));
   const effect = effects.flatMap((box) => box.lines);
   const lines = Math.max(text.length, Math.min(effect.length, Math.max(maxLines, 2)));
   return {
@@ -71,7 +71,7 @@ export function caveatsBand(paper: Paper, rows: readonly CaveatRow[]): Band {
   return {
     head: null,
     strips: rows.map((row, index) => {
-      const box = boxes(paper, row, 12);
+      const box = boxes(paper, row, Number.POSITIVE_INFINITY);
       return {
         height: box.height,
         draw: (top) => {

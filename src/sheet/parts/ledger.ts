@@ -49,24 +49,33 @@ function shownRows({ appraisal, priced }: SheetContext): LedgerRow[] {
   });
 }
 
+/** "Hours" "per 1,000 h", "Make Quern" "against Tessaly", "Coupler" "yes against no". */
+function nameOf({ label, level, stepWords }: LedgerRow): { label: string; unit: string } {
+  if (level === null) return { label, unit: stepWords === "1" ? "each" : `per ${stepWords.replace(/^1\u00a0/, "")}` };
+  return { label: stepWords.startsWith(level) ? label : `${label} ${level}`, unit: stepWords };
+}
+
 function lineOf(row: LedgerRow, heads: readonly Column[]): LedgerLine {
   const step = rowStep(row.money);
-  const carried = heads.map(({ keys }) =>
-    row.money.carried.filter(({ from }) => keys.has(from)).reduce((sum, { amount }) => sum + amount, 0),
-  );
   const coefficient = roundTo(row.money.coefficient, step);
-  const [own, ...parts] = roundToAddUp([row.money.own, ...carried], coefficient, step);
+  const [own, ...each] = roundToAddUp(
+    [row.money.own, ...row.money.carried.map(({ amount }) => amount)],
+    coefficient,
+    step,
+  );
+  const shown = row.money.carried.map(({ from }, index) => ({ from, amount: each[index]! }));
+  const sumsOf = (carried: LedgerRow["money"]["carried"]): number[] =>
+    heads.map(({ keys }) => carried.filter(({ from }) => keys.has(from)).reduce((sum, { amount }) => sum + amount, 0));
   const range = row.moneyRange95;
   return {
-    label: row.level === null ? row.label : `${row.label} ${row.level}`,
-    unit: row.level === null ? `per ${row.stepWords}` : row.stepWords,
+    ...nameOf(row),
     coefficient: formatSigned(coefficient),
     range: range === null ? "not known" : `${signedTo(step, range.low)} to ${signedTo(step, range.high)}`,
     own: formatSigned(own ?? coefficient),
-    carried: parts.map((part) => formatSigned(part)),
+    carried: sumsOf(shown).map((part) => formatSigned(part)),
     sentence: row.sentence,
     ownMoney: row.money.own,
-    carriedMoney: carried,
+    carriedMoney: sumsOf(row.money.carried),
     coefficientMoney: row.money.coefficient,
   };
 }
