@@ -343,6 +343,38 @@ describe("an unusual sheet", () => {
     }
   });
 
+  test("with every text as long as a form allows still overflows nowhere", async () => {
+    const endless = (what: string): string => `${what} ${"word ".repeat(390)}end`;
+    const engagement = Object.fromEntries(
+      Object.entries(REQUEST.engagement).map(([key, value]) => [
+        key,
+        key === "reportOn" ? value : typeof value === "string" ? endless(key) : [endless("one"), "x".repeat(2000)],
+      ]),
+    ) as unknown as typeof REQUEST.engagement;
+    const request = {
+      engagement,
+      overrideReason: endless("reason"),
+      adjustments: [{ label: endless("label"), amount: 1200, reason: endless("why") }],
+      subject: { ...REQUEST.subject, title: endless("title"), serial: endless("serial") },
+    };
+    const many = (appraisal: Appraisal): Appraisal => ({
+      ...appraisal,
+      evidence: {
+        ...appraisal.evidence,
+        out: Array.from({ length: 300 }, (_, k) => ({
+          reason: "set-aside" as const,
+          detail: endless(`reason ${k}`).slice(0, 500),
+          sentence: "",
+          saleIds: [k],
+        })),
+      },
+    });
+    const sheet = await renderSheet(sheetEvidence({ request, appraisal: many }), FONTS);
+    expect(overflowing(sheet)).toEqual([]);
+    expect(colliding(sheet)).toEqual([]);
+    expect(textOf(sheet.bytes)).toContain("292 further reasons");
+  });
+
   test("a draft says so, and has no number", async () => {
     const text = textOf(await renderSheetPdf(sheetEvidence({ sheetNumber: "" }), FONTS));
     expect(text).toContain("Draft for signature, not yet issued");

@@ -28,6 +28,9 @@ export interface Row {
   picture?(top: number, height: number): void;
 }
 
+/** A cell with more lines than this ends in an ellipsis; what people wrote stands in full under the assumptions. */
+export const CELL_LINES = 12;
+
 /** A table as it is drawn; its tag is made when its first row is. */
 export class Table {
   private tag: Tag | null = null;
@@ -50,7 +53,8 @@ export class Table {
       const last = this.columns[at + span - 1]!;
       at += span;
       const width = last.left + last.width - column.left;
-      return fitText(this.paper, cell.rich, cell.style ?? (row.isHead === true ? STYLES.head : STYLES.cell), width);
+      const style = cell.style ?? (row.isHead === true ? STYLES.head : STYLES.cell);
+      return fitText(this.paper, cell.rich, style, width, CELL_LINES);
     });
   }
 

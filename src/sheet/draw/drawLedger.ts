@@ -4,7 +4,7 @@
  */
 import { formatNumber } from "../../domain/format.ts";
 import type { LedgerLine, LedgerTable } from "../sheetContent.ts";
-import { type Column, columnWidth, headWidth } from "./cells.ts";
+import { CELL_LINES, type Column, columnWidth, headWidth } from "./cells.ts";
 import { type Band, baselineOf, fitText, hairline, mm, type Strip, setLines } from "./flow.ts";
 import { PAGE, type Paper, type Tag, TEXT_WIDTH } from "./paper.ts";
 import { roomyTicks, type Scale, scaleOf } from "./scale.ts";
@@ -116,7 +116,13 @@ function diamond(paper: Paper, x: number, y: number): void {
 }
 
 function rowStrip(paper: Paper, tags: () => { table: Tag; figure: Tag }, layout: Layout, line: LedgerLine): Strip {
-  const name = fitText(paper, [{ text: line.label, bold: true }, { text: ` ${line.unit}` }], STYLES.cell, layout.left);
+  const name = fitText(
+    paper,
+    [{ text: line.label, bold: true }, { text: ` ${line.unit}` }],
+    STYLES.cell,
+    layout.left,
+    CELL_LINES,
+  );
   const sentence = fitText(
     paper,
     line.sentence,

@@ -28,29 +28,39 @@ interface Placed {
   readonly item: Item;
   readonly lines: ReturnType<typeof fitText>["lines"];
   readonly height: number;
+  readonly isFirst: boolean;
 }
 
+/** A text of more lines is set in pieces, so that a page can end between them. */
+const CHUNK = 40;
 const GUTTER = 7;
 const COLUMN = (TEXT_WIDTH - GUTTER) / 2;
 const MARK = 4.4;
 
 /** Two columns of about equal height, read down the left one first; each pair of columns is as tall as a third of a page at most. */
 function twoColumns(paper: Paper, items: readonly Item[], style: Style, space: number): Band {
-  const placed = items.map((item): Placed => {
-    const box = fitText(paper, item.rich, style, COLUMN - (item.mark === null ? 0 : MARK));
-    return { item, lines: box.lines, height: box.height + space };
+  const placed = items.flatMap((item): Placed[] => {
+    const { lines } = fitText(paper, item.rich, style, COLUMN - (item.mark === null ? 0 : MARK));
+    const chunks: Placed[] = [];
+    for (let from = 0; from < lines.length; from += CHUNK) {
+      const some = lines.slice(from, from + CHUNK);
+      const isLast = from + CHUNK >= lines.length;
+      const height = some.length * mm(style.leading) + (isLast ? space : 0);
+      chunks.push({ item, lines: some, height, isFirst: from === 0 });
+    }
+    return chunks;
   });
   let list: Tag | null = null;
   const isList = items.some(({ mark }) => mark !== null);
   const draw = (column: readonly Placed[], left: number, from: number): void => {
     let top = from;
-    for (const { item, lines, height } of column) {
+    for (const { item, lines, height, isFirst } of column) {
       if (isList) list ??= paper.tag("L");
       const type = isList ? "LI" : "P";
       const indent = item.mark === null ? 0 : MARK;
       const y = top;
       paper.leaf(type, paper.tag(type, list ?? paper.root), () => {
-        if (item.mark !== null) setLines(paper, [[{ text: item.mark, bold: true }]], left, y, style);
+        if (item.mark !== null && isFirst) setLines(paper, [[{ text: item.mark, bold: true }]], left, y, style);
         setLines(paper, lines, left + indent, y, style);
       });
       top += height;
@@ -88,7 +98,6 @@ function groupsOf(placed: readonly Placed[]): [Placed[], Placed[]][] {
   });
 }
 
-/** A text too tall for a column of a page is set in pieces. */
 export function paragraphsBand(paper: Paper, items: readonly Words[], size: "small" | "usual"): Band {
   const style = size === "small" ? STYLES.small : STYLES.usual;
   const band = twoColumns(

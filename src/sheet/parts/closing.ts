@@ -6,6 +6,8 @@ import type { Piece, ReworkRow, Section, Words } from "../sheetContent.ts";
 import { editionWords, type SheetContext, stated } from "./context.ts";
 import { CAVEATS_ON_FIRST_PAGE, caveatRows } from "./firstPage.ts";
 
+/** Characters not drawn that are named one by one. */
+const CODES = 24;
 export const EVIDENCE_FILE = "lotwright-evidence.json";
 export const TABLE_FILE = "evidence.csv";
 
@@ -146,10 +148,14 @@ export function reworkSection(context: SheetContext, missing: readonly string[])
   const { appraisal, priced } = context;
   const rows = reworkRows(context);
   if (missing.length > 0) {
-    const codes = missing.map((one) => `U+${one.codePointAt(0)!.toString(16).toUpperCase().padStart(4, "0")}`);
+    const codes = missing
+      .slice(0, CODES)
+      .map((one) => `U+${one.codePointAt(0)!.toString(16).toUpperCase().padStart(4, "0")}`);
     rows.push({
       label: "Characters not drawn",
-      lines: [codes.join(", ")],
+      lines: [
+        `${codes.join(", ")}${missing.length > CODES ? ` and ${formatNumber(missing.length - CODES)} others` : ""}`,
+      ],
       note: `The sheet’s fonts lack them; they stand as \ufffd, and in full in the first attachment`,
     });
   }

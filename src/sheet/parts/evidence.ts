@@ -21,6 +21,13 @@ const REASON_WORDS: Readonly<Record<OutReason, string>> = {
 /** Reasons with a cell of their own; the rest stand together. */
 const CELLS = 6;
 const SOURCES = 4;
+const DETAILS = 8;
+/** Letters of what people wrote, in a note of one paragraph. */
+const BRIEF = 70;
+
+function brief(text: string): string {
+  return text.length <= BRIEF ? text : `${text.slice(0, BRIEF - 2).trimEnd()} …`;
+}
 
 interface Reason {
   readonly words: string;
@@ -49,10 +56,27 @@ function sourcesWords({ sheet }: SheetContext): string {
     .filter(([source]) => source.trim() !== "")
     .sort((a, b) => b[1] - a[1] || (a[0] < b[0] ? -1 : 1));
   if (all.length === 0) return "";
-  const named = all.slice(0, SOURCES).map(([source, count]) => `${source} (${formatNumber(count)})`);
+  const named = all.slice(0, SOURCES).map(([source, count]) => `${brief(source)} (${formatNumber(count)})`);
   const rest = all.length - named.length;
   if (rest > 0) named.push(`${rest} ${plural(rest, "other")}`);
   return ` Sources: ${listWords(named)}.`;
+}
+
+/** The reasons in detail, the commonest first. */
+function detailsWords({ appraisal }: SheetContext): string {
+  const details = appraisal.evidence.out
+    .filter(({ detail }) => detail !== null && detail !== "")
+    .sort((a, b) => b.saleIds.length - a.saleIds.length);
+  if (details.length === 0) return "";
+  const said = details
+    .slice(0, DETAILS)
+    .map(
+      ({ reason, detail, saleIds }) =>
+        `${REASON_WORDS[reason] ?? reason}: ${brief(detail!)} (${formatNumber(saleIds.length)})`,
+    );
+  const rest = details.length - said.length;
+  if (rest > 0) said.push(`${formatNumber(rest)} further ${plural(rest, "reason")}`);
+  return ` Not used, in detail: ${said.join("; ")}.`;
 }
 
 function note(context: SheetContext): string {
@@ -69,12 +93,7 @@ function note(context: SheetContext): string {
       : evidence.verifiedCount === 0
         ? "none verified"
         : `${formatNumber(evidence.verifiedCount)} verified, ${formatNumber(open)} not`;
-  const details = evidence.out.filter(({ detail }) => detail !== null && detail !== "");
-  const why =
-    details.length === 0
-      ? ""
-      : ` Not used, in detail: ${details.map(({ reason, detail, saleIds }) => `${REASON_WORDS[reason] ?? reason}: ${detail} (${formatNumber(saleIds.length)})`).join("; ")}.`;
-  return `${when}${channels === "" ? "" : `${channels}; `}${verified}.${sourcesWords(context)}${why}`;
+  return `${when}${channels === "" ? "" : `${channels}; `}${verified}.${sourcesWords(context)}${detailsWords(context)}`;
 }
 
 export function evidenceSection(context: SheetContext): Section {
