@@ -12,7 +12,7 @@ export interface PullRowsProps {
 
 const FEW = 7;
 /** Width of the bar of the hardest pull, in pixels. */
-const BAR = 64;
+const BAR = 44;
 
 export function PullRows({ priced, report, currencyCode }: PullRowsProps) {
   const [isWhole, setIsWhole] = useState(false);
@@ -49,8 +49,7 @@ export function PullRows({ priced, report, currencyCode }: PullRowsProps) {
               </th>
               {shown.map((one) => (
                 <th scope="col" className="num" key={one.key}>
-                  {lowerStart(one.label)}
-                  {one.unit === null ? "" : `, ${one.unit}`}
+                  {one.unit === "years" ? "years" : lowerStart(one.label.replace(/ \([^)]*\)$/, ""))}
                 </th>
               ))}
               <th scope="col" className="num">
@@ -94,7 +93,7 @@ function Row({ pull, amount, largest, shown }: RowProps) {
         {pull.reference ?? pull.sale} <span className="soft">{pull.title}</span>
       </th>
       <td className={css.bar}>
-        <svg width={BAR + 40} height="14" aria-hidden="true">
+        <svg width={BAR + 30} height="14" aria-hidden="true">
           <rect
             x="0.5"
             y="3.5"

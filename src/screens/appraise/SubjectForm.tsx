@@ -7,7 +7,7 @@ import type { AttributeEvidence, Reach } from "../../domain/appraisal.ts";
 import type { Attribute, AttributeValue } from "../../domain/attribute.ts";
 import { CHANNEL_KEY } from "../../domain/attribute.ts";
 import { dayNumber, yearsBetween } from "../../domain/day.ts";
-import { formatNumber, lowerStart } from "../../domain/format.ts";
+import { formatNumber } from "../../domain/format.ts";
 import { CHANNELS } from "../../domain/sale.ts";
 import type { Subject } from "../../domain/subject.ts";
 import { EvidenceHairline } from "../charts/EvidenceHairline.tsx";
@@ -55,8 +55,11 @@ export function SubjectForm({ subject, attributes, evidence, reach, onChange }: 
             <span className="vh">attribute</span>
           </th>
           <th scope="col">value</th>
-          <th scope="col" colSpan={2}>
+          <th scope="col" className={css.pictureHead}>
             its place in the evidence
+          </th>
+          <th scope="col">
+            <span className="vh">range of the evidence</span>
           </th>
           <th scope="col" className="num">
             not
@@ -175,23 +178,39 @@ function BuiltField(props: {
   effectiveOn: string;
   onChange: (value: AttributeValue) => void;
 }) {
-  const built = dayNumber(props.value);
-  const effective = dayNumber(props.effectiveOn);
-  const age = built === null || effective === null ? null : yearsBetween(built, effective);
+  const [text, setText] = useState<string | null>(null);
+  const problem = text === null ? null : problemOfDay(text, props.effectiveOn);
+  const [built, effective] = [dayNumber(props.value), dayNumber(props.effectiveOn)];
+  const typed = (next: string) => {
+    setText(next);
+    if (problemOfDay(next, props.effectiveOn) === null) props.onChange(next);
+  };
   return (
-    <span className={css.field}>
-      <input
-        type="date"
-        aria-label={`${props.label}, built on`}
-        value={props.value}
-        max={props.effectiveOn}
-        onChange={(event) => {
-          if (dayNumber(event.target.value) !== null) props.onChange(event.target.value);
-        }}
-      />
-      {age === null ? null : <i>{formatNumber(age, 1)} years</i>}
-    </span>
+    <>
+      <span className={css.field}>
+        <input
+          aria-label={`${props.label}: built on, year-month-day`}
+          aria-invalid={problem !== null}
+          value={text ?? props.value}
+          onChange={(event) => typed(event.target.value)}
+          onBlur={() => {
+            if (problem === null) setText(null);
+          }}
+        />
+        {built === null || effective === null ? null : <i>{formatNumber(yearsBetween(built, effective), 1)} y</i>}
+      </span>
+      {problem === null ? null : (
+        <span role="alert" className={css.problem}>
+          {problem}
+        </span>
+      )}
+    </>
   );
+}
+
+function problemOfDay(text: string, effectiveOn: string): string | null {
+  if (dayNumber(text) === null) return "A day as year-month-day, such as 2018-03-15.";
+  return text > effectiveOn ? "Built after the effective date." : null;
 }
 
 function NumberField({
@@ -294,11 +313,6 @@ function rangeWords(evidence: AttributeEvidence | undefined, value: AttributeVal
     const { low, high } = evidence.spread;
     return `${formatNumber(low, evidence.decimals)}–${formatNumber(high, evidence.decimals)}`;
   }
-  const own = evidence.levels.find((one) => one.level === levelOf(value));
-  return own === undefined
-    ? evidence.levels
-        .map(({ level, count }) => `${count} ${lowerStart(level)}`)
-        .slice(0, 3)
-        .join(", ")
-    : `${formatNumber(own.count)} sales`;
+  const own = evidence.levels.find((one) => one.level === levelOf(value))?.count;
+  return `${formatNumber(own ?? evidence.levels.reduce((sum, one) => sum + one.count, 0))} sales`;
 }
