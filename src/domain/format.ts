@@ -51,6 +51,9 @@ export function formatSigned(value: number, decimals = 0, locale: Locale = DEFAU
   return Number(value.toFixed(decimals)) > 0 ? `+${text}` : text;
 }
 
+/** ISO 4217 for "no currency": a file tried in memory that does not say what its prices are in. */
+const NO_CURRENCY = "XXX";
+
 /** Money with its symbol, whole units unless decimals are asked: €41,800 */
 export function formatMoney(
   value: number,
@@ -58,6 +61,7 @@ export function formatMoney(
   locale: Locale = DEFAULT_LOCALE,
   decimals = 0,
 ): string {
+  if (currencyCode === NO_CURRENCY) return formatNumber(value, decimals, locale);
   return withRealMinus(
     new Intl.NumberFormat(locale.tag, {
       style: "currency",

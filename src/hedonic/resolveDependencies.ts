@@ -29,7 +29,10 @@ export function resolveDependencies(design: Design, model: PriceModel, notKnown:
     .map((group) => ({ ...group, columns: group.columns.filter((index) => !dropped.has(index)) }))
     .filter((group) => group.columns.length > 0);
   const standing = new Set(referenceGroups.map((group) => group.key));
-  const notices = found.dependent.map((one) => noticeOf(design, model, order, one, standing));
+  const notices = [
+    ...design.groups.filter((group) => group.columns.length === 0).map((group) => singleLevelNotice(design, group)),
+    ...found.dependent.map((one) => noticeOf(design, model, order, one, standing)),
+  ];
   const exactOut = design.groups
     .filter((group) => !standing.has(group.key))
     .map((group) => ({ key: group.key, sentence: exactSentence(design, group, notices) }));
@@ -71,6 +74,22 @@ function noticeOf(
   };
 }
 
+/** A choice of which only one level occurs makes no column at all: it is said like any other constant. */
+function singleLevelNotice(design: Design, { key, label, reference }: AttributeGroup): DependencyNotice {
+  return {
+    equation: `${label} = ${reference ?? "nothing"}`,
+    sentence: constantSentence(design, label),
+    attributes: [key],
+    choices: [{ key, label }],
+    resolvedBy: { key, label, chosenBy: "program" },
+  };
+}
+
+function constantSentence(design: Design, label: string): string {
+  const sales = design.n === 1 ? "the one sale" : `all ${formatNumber(design.n)} sales`;
+  return `${label} has the same value in ${sales}, so nothing can be read from it; it is left out.`;
+}
+
 function sentenceOf(
   design: Design,
   dependency: Dependency,
@@ -79,9 +98,7 @@ function sentenceOf(
   by: "person" | "program",
 ): string {
   const sales = design.n === 1 ? "the one sale" : `all ${formatNumber(design.n)} sales`;
-  if (dependency.terms.length === 0) {
-    return `${label} has the same value in ${sales}, so nothing can be read from it; it is left out.`;
-  }
+  if (dependency.terms.length === 0) return constantSentence(design, label);
   const what = isWhole ? label : `the column ${label}`;
   const who = by === "person" ? `You left ${lowerStart(what)} out` : `The program left ${lowerStart(what)} out`;
   return `This holds exactly in ${sales}. With all of them in, no unique answer exists. ${who}; the price is the same whichever is left out.`;

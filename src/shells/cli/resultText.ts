@@ -54,7 +54,7 @@ function modelSentences(report: ModelReport): string {
       ? ""
       : ` On a sale it has not seen it is typically ${formatPercent(report.looTypicalError, 1)} off.`;
   const first = `The model puts ${response} on ${plural(report.attributes.length, "attribute")}.${explained}${unseen}`;
-  const dependencies = report.dependencies.map(({ sentence }) => sentence);
+  const dependencies = report.dependencies.map(({ equation, sentence }) => `${equation}. ${sentence}`);
   return [
     first,
     ...report.leftOut.filter(({ why }) => why !== "exact").map(({ sentence }) => sentence),
