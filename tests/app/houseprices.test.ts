@@ -8,6 +8,7 @@ import { createHandlers } from "../../src/app/handlers.ts";
 import type { Handlers } from "../../src/contract/client.ts";
 import type { Appraisal } from "../../src/domain/appraisal.ts";
 import { EVERYTHING, type PriceModel } from "../../src/domain/priceModel.ts";
+import { readFonts } from "../../src/shells/readFonts.ts";
 import { openStore } from "../../src/store/openStore.ts";
 import { testPorts } from "./ports.ts";
 
@@ -21,7 +22,7 @@ let classId: number;
 let model: PriceModel;
 
 beforeAll(async () => {
-  handlers = createHandlers(testPorts({ store: openStore(":memory:") }));
+  handlers = createHandlers(testPorts({ store: openStore(":memory:"), fonts: readFonts() }));
   const file = { fileName: "houseprices.csv", bytesBase64: csv.toString("base64") };
   const preview = await handlers.previewImport({ ...file, classId: null, options: null, match: null });
   const match = {
@@ -141,5 +142,41 @@ describe("the ledger", () => {
       expectClose(row.ownPart, expected.ols.coefficients[name]);
       expectClose(row.carriedParts[0]!.amount, drop.shift[name], 1e-9);
     }
+  });
+});
+
+describe("the sheet", () => {
+  test("of a new house is issued and verified from its bytes alone", async () => {
+    const { attributes } = expected.newRows[1];
+    const values = Object.fromEntries(
+      Object.entries(attributes).map(([key, value]) => [key, YES_NO.includes(key) ? value === "yes" : value]),
+    );
+    const subject = { title: "New house 2", serial: null, identifiedBy: null, values, effectiveOn: "1987-07-31" };
+    const words = Object.fromEntries(
+      ["client", "intendedUsers", "intendedUse", "interest", "basisDefinition", "inspected", "exposureTime"].map(
+        (key) => [key, ""],
+      ),
+    );
+    const engagement = {
+      ...words,
+      basisOfValue: "market value",
+      premise: "in place",
+      marketLevel: "private sale",
+      priceBasisWords: "as published",
+      reportOn: "1987-08-01",
+      earlierSales: "",
+      equipment: "",
+      practice: "",
+      practiceLine: "",
+      valuer: "",
+      ownCaveats: [],
+    };
+    const request = { model, subject, engagement, levels: LEVELS, overrideReason: null, adjustments: [] };
+    const { bytesBase64 } = await handlers.issueSheet({ classId, request } as never);
+    const report = await handlers.verifySheet({ bytesBase64 });
+    expect(report).toMatchObject({ verdict: "stands", problems: [], differentCount: 0, bytesIntact: true });
+    const figures = report.figures.map(({ recomputed }) => recomputed).filter((one) => typeof one === "number");
+    const near = figures.filter((one) => Math.abs(one / expected.newRows[1].priceNaive - 1) < 1e-10);
+    expect(near.length).toBeGreaterThan(0);
   });
 });
