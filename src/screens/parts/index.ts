@@ -5,4 +5,4 @@ export { Busy, EmptyState, ErrorNote, InlineAsk, type InlineAskProps, Notice, ty
 export { PaneLayout, type PaneLayoutProps } from "./PaneLayout.tsx";
 export { SegmentedChoice, type SegmentedChoiceProps } from "./SegmentedChoice.tsx";
 export { SubPlaces, type SubPlacesProps } from "./SubPlaces.tsx";
-export { KeyCap, SectionHeading, Sentence, TextLink, type TextLinkProps } from "./words.tsx";
+export { KeyCap, SectionHeading, Sentence, StrongMoney, TextLink, type TextLinkProps } from "./words.tsx";

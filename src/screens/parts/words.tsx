@@ -41,3 +41,13 @@ export function TextLink({ children, title, href, onPress }: TextLinkProps) {
 export function KeyCap({ children }: { children: ReactNode }) {
   return <kbd className={css.keyCap}>{children}</kbd>;
 }
+
+const MONEY = /([−-]?\p{Sc}\s?\d[\d.,\u00a0\u202f]*\d|[−-]?\p{Sc}\s?\d)/u;
+
+/** A sentence from the core with its amounts set strong. */
+export function StrongMoney({ text }: { text: string }) {
+  const pieces = text.split(MONEY);
+  // Odd pieces are the amounts; a sentence never changes in place, so its pieces can be told by where they stand.
+  // biome-ignore lint/suspicious/noArrayIndexKey: see above
+  return pieces.map((piece, index) => (index % 2 === 1 ? <strong key={index}>{piece}</strong> : piece));
+}

@@ -1,8 +1,58 @@
-/** The price model. */
-import { SectionHeading } from "../parts/index.ts";
+/** Price model: the attribute set on its rail, what it rests on at the left, what comes of it at the right. */
+import { useMemo } from "react";
+import { hrefOf } from "../frame/useRoute.ts";
+import { Busy, EmptyState, ErrorNote, PaneLayout, TextLink } from "../parts/index.ts";
+import { useActs } from "../workbench/acts.ts";
 import { useWorkbench } from "../workbench/workbench.ts";
+import { AttributeRail } from "./AttributeRail.tsx";
+import { ModelOutcome } from "./ModelOutcome.tsx";
+import { ModelPane } from "./ModelPane.tsx";
+import { switchAttribute } from "./modelChanges.ts";
+import css from "./PriceModelPlace.module.css";
+import { tilesOf } from "./tiles.ts";
 
 export function PriceModelPlace() {
-  const { assetClass } = useWorkbench();
-  return <SectionHeading>Price model of {assetClass?.name ?? "no class yet"}</SectionHeading>;
+  const bench = useWorkbench();
+  const { assetClass, model, appraisal, leftOutJustNow, changeModel, error } = bench;
+  const tiles = useMemo(
+    () =>
+      assetClass === null || model === null
+        ? []
+        : tilesOf(assetClass, model, appraisal?.report ?? null, leftOutJustNow),
+    [assetClass, model, appraisal, leftOutJustNow],
+  );
+  const acts = useMemo(
+    () =>
+      tiles.map(({ attribute, state }) => ({
+        label: `${state === "in" ? "Leave out" : "Put in"}: ${attribute.label}`,
+        run: () => changeModel((now) => switchAttribute(now, attribute.key, attribute.kind)),
+      })),
+    [tiles, changeModel],
+  );
+  useActs(acts);
+  if (assetClass === null || model === null) {
+    return error === null ? <Busy words="Opening the class" /> : <ErrorNote error={error} />;
+  }
+  if (bench.summary?.saleCount === 0) {
+    return (
+      <PaneLayout
+        name="price-model"
+        left={<EmptyState sentence={`There are no sales of ${assetClass.name} yet, so there is nothing to fit.`} />}
+        right={<TextLink href={hrefOf("sales")}>Bring in a file of sales</TextLink>}
+      />
+    );
+  }
+  return (
+    <div className={css.place}>
+      <AttributeRail tiles={tiles} bench={bench} />
+      <PaneLayout
+        name="price-model"
+        leftWidth={480}
+        leftLabel="What the model rests on"
+        rightLabel="What comes of it"
+        left={<ModelPane bench={bench} model={model} />}
+        right={<ModelOutcome bench={bench} />}
+      />
+    </div>
+  );
 }

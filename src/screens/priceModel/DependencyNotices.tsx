@@ -1,0 +1,52 @@
+/** An exact dependency: said in the person's own labels, and resolved by choosing which one stays out. */
+import { useId } from "react";
+import type { DependencyNotice } from "../../domain/appraisal.ts";
+import { lowerStart } from "../../domain/format.ts";
+import { Notice } from "../parts/index.ts";
+import type { Workbench } from "../workbench/workbench.ts";
+import { resolveByLeavingOut } from "./modelChanges.ts";
+import css from "./PriceModelPlace.module.css";
+
+interface DependencyNoticesProps {
+  readonly bench: Workbench;
+  readonly dependencies: readonly DependencyNotice[];
+}
+
+export function DependencyNotices({ bench, dependencies }: DependencyNoticesProps) {
+  return dependencies.map((notice) => (
+    <div key={notice.equation} style={{ marginTop: 8 }}>
+      <OneNotice bench={bench} notice={notice} />
+    </div>
+  ));
+}
+
+function OneNotice({ bench, notice }: { bench: Workbench; notice: DependencyNotice }) {
+  const name = useId();
+  const keys = notice.choices.map((choice) => choice.key);
+  return (
+    <Notice kind="exact" title={notice.equation}>
+      <p>{notice.sentence}</p>
+      <fieldset className={css.choices}>
+        <legend className="vh">Which one to leave out</legend>
+        {notice.choices.map((choice) => {
+          const isOut = notice.resolvedBy?.key === choice.key;
+          const byProgram = isOut && notice.resolvedBy?.chosenBy === "program";
+          return (
+            <label key={choice.key}>
+              <input
+                type="radio"
+                name={name}
+                checked={isOut}
+                onChange={() => bench.changeModel((now) => resolveByLeavingOut(now, keys, choice.key))}
+              />
+              <span>
+                Leave out {lowerStart(choice.label)}
+                {byProgram ? <span className="soft"> (the program chose; choose another if you like)</span> : null}
+              </span>
+            </label>
+          );
+        })}
+      </fieldset>
+    </Notice>
+  );
+}
