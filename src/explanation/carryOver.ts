@@ -7,7 +7,7 @@
 import type { Ledger, LedgerRow, ModelReport } from "../domain/appraisal.ts";
 import type { Design, Fit } from "../hedonic/fit.ts";
 import { solveLeastSquares } from "../numerics/solveLeastSquares.ts";
-import { ledgerHeadline, rowSentence } from "./ledgerWords.ts";
+import { type ComesWith, ledgerHeadline, type Move, rowSentence } from "./ledgerWords.ts";
 
 export interface CarryOverInput {
   /** Fit of the whole reference set (after exact dependencies). */
@@ -34,7 +34,7 @@ export function carryOver({ long, short, report, currencyCode }: CarryOverInput)
   const associations = leftOutGroups.flatMap((group) => associate(long.design, short.columns, group.columns));
   const slopeInLong = new Map(long.columns.map((column, at) => [column, long.solution.slopes[at]!]));
   let identityError = 0;
-  const rows = short.columns.map((column, at): LedgerRow => {
+  const described = short.columns.map((column, at) => {
     const coefficient = short.solution.slopes[at]!;
     const ownPart = slopeInLong.get(column)!;
     const carriedParts = leftOutGroups.map((group) => ({
@@ -55,13 +55,14 @@ export function carryOver({ long, short, report, currencyCode }: CarryOverInput)
     if (size > 0) identityError = Math.max(identityError, Math.abs(coefficient - total) / size);
     return describeRow({ short, report, column, coefficient, ownPart, carriedParts, associations, at, currencyCode });
   });
+  const rows = described.map(({ row }) => row);
   const leftOut = leftOutGroups.map((group) => ({ key: group.key, label: group.label }));
   return {
     referenceSet: long.groups.map((group) => group.key),
     leftOut,
     rows,
     leftOutOwn: leftOutGroups.flatMap((group) => ownOf(group.key, long, report)),
-    headline: ledgerHeadline(rows, leftOut, currencyCode),
+    headline: ledgerHeadline(described, leftOut, currencyCode),
     identityError,
   };
 }
@@ -90,7 +91,7 @@ interface RowParts {
   readonly currencyCode: string;
 }
 
-function describeRow(parts: RowParts): LedgerRow {
+function describeRow(parts: RowParts): { row: LedgerRow; moves: ComesWith } {
   const { short, report, column, coefficient, ownPart, carriedParts, currencyCode } = parts;
   const { attribute, level } = short.design.columns[column]!;
   const group = short.groups.find((one) => one.key === attribute)!;
@@ -114,22 +115,20 @@ function describeRow(parts: RowParts): LedgerRow {
     moneyRange95: low === null || high === null ? null : { low, high },
     signTurned: carriedParts.length > 0 && Math.sign(coefficient) === -Math.sign(ownPart) && ownPart !== 0,
   };
-  return { ...row, sentence: rowSentence({ ...row, sentence: "" }, comesWith(parts, group.step), currencyCode) };
+  const moves = comesWith(parts, group.step);
+  return { row: { ...row, sentence: rowSentence({ ...row, sentence: "" }, moves, currencyCode) }, moves };
 }
 
 /** "each 1,000 h comes with 0.88 more years": how a step of this column moves the one column of each left-out number. */
-function comesWith(
-  parts: RowParts,
-  step: number,
-): ReadonlyMap<string, { amount: number; unit: string; decimals: number }> {
+function comesWith(parts: RowParts, step: number): ComesWith {
   const { design } = parts.short;
-  const moves = new Map<string, { amount: number; unit: string; decimals: number }>();
+  const moves = new Map<string, Move>();
   for (const association of parts.associations) {
     const { attribute, level } = design.columns[association.column]!;
     const group = design.groups.find((one) => one.key === attribute)!;
     if (level !== null || group.form === "ln" || group.unit === null) continue;
     const amount = association.slopes[parts.at]! * step;
-    moves.set(attribute, { amount, unit: group.unit, decimals: group.decimals });
+    moves.set(attribute, { amount, unit: group.unit });
   }
   return moves;
 }

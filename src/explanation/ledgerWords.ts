@@ -7,7 +7,12 @@ import { MARKET_KEY } from "../domain/attribute.ts";
 import { formatMoney, formatNumber, listWords, lowerStart, niceStep, roundTo, roundToAddUp } from "../domain/format.ts";
 
 /** How one step of the row's attribute moves each left-out number, by key. */
-export type ComesWith = ReadonlyMap<string, { amount: number; unit: string; decimals: number }>;
+export type ComesWith = ReadonlyMap<string, Move>;
+
+export interface Move {
+  readonly amount: number;
+  readonly unit: string;
+}
 
 /** A carried part smaller than this share of the row's largest part is not worth a clause. */
 const WORTH_SAYING = 0.05;
@@ -78,12 +83,17 @@ function alikeIn(row: LedgerRow): string {
     : listWords(row.carriedParts.map((part) => lowerStart(part.fromLabel)));
 }
 
-function reason(row: LedgerRow, move: { amount: number; unit: string; decimals: number } | undefined): string {
-  if (move === undefined || move.amount === 0) return "";
-  const digits = Math.abs(move.amount) >= 10 ? 0 : Math.abs(move.amount) >= 1 ? 1 : 2;
-  const amount = formatNumber(Math.abs(move.amount), Math.max(digits, 0));
+function reason(row: LedgerRow, move: Move | undefined): string {
+  const words = moveWords(row, move);
+  return words === null ? "" : `, because among these sales ${words}`;
+}
+
+/** "each 1,000 h comes with 1.3 more years", or null where there is nothing to say. */
+function moveWords(row: LedgerRow, move: Move | undefined): string | null {
+  if (move === undefined || move.amount === 0) return null;
+  const decimals = Math.abs(move.amount) >= 10 ? 0 : Math.abs(move.amount) >= 1 ? 1 : 2;
   const step = row.level === null && row.attribute !== MARKET_KEY ? `each ${row.stepWords}` : "it";
-  return `, because among these sales ${step} comes with ${amount} ${move.amount < 0 ? "fewer" : "more"} ${move.unit}`;
+  return `${step} comes with ${formatNumber(Math.abs(move.amount), decimals)} ${move.amount < 0 ? "fewer" : "more"} ${move.unit}`;
 }
 
 function strongestCarried(row: LedgerRow): { from: string; amount: number } | null {
@@ -98,10 +108,11 @@ function strongestCarried(row: LedgerRow): { from: string; amount: number } | nu
 
 /** The one sentence over the ledger: the row that carries most. */
 export function ledgerHeadline(
-  rows: readonly LedgerRow[],
+  described: readonly { readonly row: LedgerRow; readonly moves: ComesWith }[],
   leftOut: readonly { key: string; label: string }[],
   currencyCode: string,
 ): string {
+  const rows = described.map(({ row }) => row);
   if (rows.length === 0) return "No attribute is in the model: every item is priced at the average of the evidence.";
   if (leftOut.length === 0) {
     return "Every attribute of the reference set is in the model, so each coefficient says only its own part.";
@@ -113,9 +124,16 @@ export function ledgerHeadline(
     return `With ${names} left out, next to nothing is carried by the attributes that stay.`;
   }
   const turned = most.signTurned ? "; the sign has turned" : "";
+  const strongest = strongestCarried(most);
+  const { moves } = described.find(({ row }) => row === most)!;
+  const why = strongest === null ? null : moveWords(most, moves.get(strongest.from));
+  const label = leftOut.find((one) => one.key === strongest?.from)?.label ?? "";
+  const rest = most.money.coefficient - most.money.own;
+  const share = (strongest?.amount ?? 0) / rest >= 0.5 ? "most" : "the largest part";
   return (
     `With ${names} left out, ${startLow(subjectOf(most))} reads ${signed(most.money.coefficient, step, currencyCode)}. ` +
-    `Among items alike in that it is ${signed(asShown(most, step).own, step, currencyCode)}${turned}.`
+    `Among items alike in ${leftOut.length === 1 ? "that" : "those"} it is ${signed(asShown(most, step).own, step, currencyCode)}${turned}` +
+    `${why === null ? "" : `; ${share} of the rest is ${lowerStart(label)}, as ${why}`}.`
   );
 }
 
