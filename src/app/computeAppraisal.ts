@@ -4,6 +4,7 @@
  */
 import type { Appraisal, EvidenceAccount, Ledger, ModelReport, PricePart } from "../domain/appraisal.ts";
 import type { NewAssetClass } from "../domain/assetClass.ts";
+import type { Day } from "../domain/day.ts";
 import { AppError } from "../domain/errors.ts";
 import type { PriceModel } from "../domain/priceModel.ts";
 import type { SaleColumns } from "../domain/sale.ts";
@@ -29,6 +30,8 @@ export interface AppraisalInput {
   readonly model: PriceModel;
   readonly subject: Subject | null;
   readonly levels: readonly number[];
+  /** Bounds the evidence where there is no subject; a subject brings its own effective date. */
+  readonly effectiveOn?: Day;
 }
 
 export interface ComputedAppraisal {
@@ -40,7 +43,7 @@ export interface ComputedAppraisal {
 /** The evidence is bounded by the subject's effective date. Refuses what selectEvidence … fitColumns refuse (AppError). */
 export function computeAppraisal(input: AppraisalInput): ComputedAppraisal {
   const { sales, assetClass, model, subject } = input;
-  const { account, used } = selectEvidence(sales, assetClass, model, subject?.effectiveOn ?? null);
+  const { account, used } = selectEvidence(sales, assetClass, model, subject?.effectiveOn ?? input.effectiveOn ?? null);
   const design = buildDesign(sales, used, assetClass, model);
   const row = subject === null ? null : describeSubject(design, assetClass, subject);
   const resolved = resolveDependencies(design, model, row?.notKnown ?? []);

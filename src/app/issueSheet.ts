@@ -44,7 +44,10 @@ export async function issueSheet(
 ): Promise<RequestOutput<"issueSheet">> {
   const { assetClass, sales, computed } = prepare(ports, classId, request);
   refuseUnready(request, computed.appraisal);
-  const edition = ports.store.transaction(() => insertEdition(ports, assetClass, request.model, sales, computed));
+  // The edition is the model itself on this evidence; what the subject does not know is the sheet's matter.
+  const { model, levels, subject } = request;
+  const whole = computeAppraisal({ assetClass, sales, model, subject: null, levels, effectiveOn: subject.effectiveOn });
+  const edition = ports.store.transaction(() => insertEdition(ports, assetClass, model, sales, whole));
   const sheetNumber = ports.store.sheets.nextNumber(Number(request.engagement.reportOn.slice(0, 4)));
   const stamp = { sheetNumber, editionNumber: edition.number };
   const evidence = composeSheetEvidence(ports, assetClass, request, sales, computed, stamp);

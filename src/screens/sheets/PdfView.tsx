@@ -13,7 +13,7 @@ export function PdfView({ bytesBase64, title }: { readonly bytesBase64: string; 
   if (url === null) return null;
   return (
     <div className={css.paper}>
-      <iframe src={url} title={title} />
+      <iframe src={`${url}#navpanes=0&view=FitH`} title={title} />
       <p className="fine soft">
         Nothing to see above? This browser shows no PDFs inside a page:{" "}
         <a className={css.link} href={url} target="_blank" rel="noreferrer">
