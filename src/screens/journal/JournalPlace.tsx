@@ -1,98 +1,158 @@
-/** The journal: who did what when, newest first, and whether its chain of digests holds. Nothing in it can be changed. */
-import { useCallback, useState } from "react";
-import { formatDay, formatNumber } from "../../domain/format.ts";
+/** The journal: who did what when, newest first, and whether the chain of its entries is intact. Nothing here can be changed. */
+import { useCallback, useEffect, useState } from "react";
+import type { RequestOutput } from "../../contract/requests.ts";
+import type { PlainError } from "../../domain/errors.ts";
+import { formatNumber } from "../../domain/format.ts";
 import type { JournalEntry } from "../../domain/importRecord.ts";
-import { Busy, Button, EmptyState, ErrorNote, Sentence } from "../parts/index.ts";
-import { useRead } from "../workbench/useTask.ts";
+import { Busy, Button, EmptyState, ErrorNote, Notice, Sentence } from "../parts/index.ts";
+import { plainErrorOf } from "../workbench/useAppraisal.ts";
 import { useWorkbench } from "../workbench/workbench.ts";
 import css from "./JournalPlace.module.css";
+import { WhoWorksHere } from "./WhoWorksHere.tsx";
+import { dayHeading, timeOf } from "./when.ts";
+
+type Page = RequestOutput<"listJournal">;
 
 const PAGE = 100;
 
+/** Entries so far; one more page is read at a time. */
+function useJournal() {
+  const { client } = useWorkbench();
+  const [entries, setEntries] = useState<readonly JournalEntry[]>([]);
+  const [head, setHead] = useState<Omit<Page, "entries"> | null>(null);
+  const [error, setError] = useState<PlainError | null>(null);
+  const [isReading, setReading] = useState(false);
+  const read = useCallback(
+    async (offset: number) => {
+      setReading(true);
+      try {
+        const { entries: page, ...rest } = await client.ask("listJournal", { offset, limit: PAGE });
+        setEntries((now) => (offset === 0 ? page : [...now, ...page]));
+        setHead(rest);
+        setError(null);
+      } catch (cause) {
+        setError(plainErrorOf(cause));
+      } finally {
+        setReading(false);
+      }
+    },
+    [client],
+  );
+  useEffect(() => {
+    void read(0);
+  }, [read]);
+  return { entries, head, error, isReading, readMore: () => void read(entries.length) };
+}
+
 export function JournalPlace() {
-  const { client, summary } = useWorkbench();
-  const [offset, setOffset] = useState(0);
-  const [search, setSearch] = useState("");
-  // A new count of sheets or editions means that something was written since.
-  const stamp = `${summary?.sheetCount} ${summary?.editionCount} ${summary?.saleCount}`;
-  // biome-ignore lint/correctness/useExhaustiveDependencies: `stamp` asks again when the class has changed
-  const ask = useCallback(() => client.ask("listJournal", { offset, limit: PAGE }), [client, offset, stamp]);
-  const { value, error } = useRead(ask);
-  if (error !== null) return <ErrorNote error={error} />;
-  if (value === null) return <Busy words="Reading the journal" />;
-  const wanted = search.trim().toLowerCase();
-  const entries = value.entries.filter((one) => `${one.act} ${one.sentence} ${one.by}`.toLowerCase().includes(wanted));
+  const { entries, head, error, isReading, readMore } = useJournal();
   return (
-    <div className={css.place}>
-      <Sentence>
-        {formatNumber(value.total)} {value.total === 1 ? "entry" : "entries"}. {value.chainSentence}
-      </Sentence>
-      <p className={css.chain} data-intact={value.chainIntact}>
-        {value.chainIntact
-          ? "Each entry holds the digest of the one before it."
-          : "The chain is broken: do not rely on it."}
-      </p>
-      <label className={css.search}>
-        Find in this page
-        <input value={search} onChange={(event) => setSearch(event.target.value)} />
-      </label>
-      {value.total === 0 ? (
-        <EmptyState sentence="Nothing has been done yet. Bringing sales in, setting one aside, saving an edition and issuing a sheet each leave an entry." />
+    // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls is reached by key
+    <section className={css.journal} aria-label="Journal" tabIndex={0}>
+      {error === null ? null : <ErrorNote error={error} />}
+      {head === null ? (
+        error === null ? (
+          <Busy words="Reading the journal …" />
+        ) : null
       ) : (
-        <Entries entries={entries} />
+        <>
+          {head.chainIntact ? (
+            <Sentence>
+              <strong>{formatNumber(head.total)}</strong> {head.total === 1 ? "entry" : "entries"};{" "}
+              {lowerFirst(head.chainSentence)}
+            </Sentence>
+          ) : (
+            <Notice kind="refusal" title="The journal has been touched">
+              <p>{head.chainSentence}</p>
+            </Notice>
+          )}
+          {entries.length === 0 ? (
+            <EmptyState sentence="Nothing has been done yet: the first import, edition or sheet opens the journal." />
+          ) : (
+            <Entries entries={entries} />
+          )}
+          {entries.length < head.total ? (
+            <Button onClick={readMore} disabled={isReading}>
+              {isReading ? "Reading …" : `Older entries (${formatNumber(head.total - entries.length)})`}
+            </Button>
+          ) : null}
+        </>
       )}
-      <div className={css.pages}>
-        <Button disabled={offset === 0} onClick={() => setOffset(Math.max(0, offset - PAGE))}>
-          Newer
-        </Button>
-        <span className="soft">
-          {formatNumber(offset + 1)}–{formatNumber(Math.min(value.total, offset + PAGE))} of {formatNumber(value.total)}
-        </span>
-        <Button disabled={offset + PAGE >= value.total} onClick={() => setOffset(offset + PAGE)}>
-          Older
-        </Button>
-      </div>
-    </div>
+    </section>
   );
 }
 
-function Entries({ entries }: { readonly entries: readonly JournalEntry[] }) {
+function lowerFirst(words: string): string {
+  return words.charAt(0).toLowerCase() + words.slice(1);
+}
+
+function Entries({ entries }: { entries: readonly JournalEntry[] }) {
+  const { classes } = useWorkbench();
+  const nameOf = (id: number | null): string => classes.find((one) => one.id === id)?.name ?? "";
   return (
     <table className={css.entries}>
-      <caption className="vh">Journal, newest first</caption>
+      <caption className="vh">Journal entries, newest first</caption>
       <thead>
         <tr>
           <th scope="col" className="num">
             no.
           </th>
-          <th scope="col">when, UTC</th>
-          <th scope="col">who</th>
+          <th scope="col">when</th>
           <th scope="col">what</th>
-          <th scope="col">digest</th>
+          <th scope="col">class</th>
+          <th scope="col">by</th>
+          <th scope="col">seal</th>
         </tr>
       </thead>
       <tbody>
-        {entries.map((entry) => (
-          <tr key={entry.id}>
-            <td className="num soft">{entry.id}</td>
-            <td className="soft">
-              {formatDay(entry.atUtc.slice(0, 10))} {entry.atUtc.slice(11, 19)}
-            </td>
-            <td>{entry.by}</td>
-            <td>
-              <details>
-                <summary>{entry.sentence}</summary>
-                <pre>{JSON.stringify(entry.facts, null, 1)}</pre>
-              </details>
-            </td>
-            <td className="soft">
-              <span className={css.digest} title={entry.digest}>
-                {entry.digest.slice(0, 12)}
-              </span>
-            </td>
-          </tr>
-        ))}
+        {entries.map((entry, at) => {
+          const isNewDay = at === 0 || dayHeading(entries[at - 1]!.atUtc) !== dayHeading(entry.atUtc);
+          return (
+            <tr key={entry.id} className={isNewDay ? css.newDay : undefined}>
+              <td className="num soft">{formatNumber(entry.id)}</td>
+              <td className={css.when}>
+                <span className={isNewDay ? undefined : css.sameDay}>{dayHeading(entry.atUtc)}</span>{" "}
+                <span className="soft">{timeOf(entry.atUtc)}</span>
+              </td>
+              <td className={css.what}>
+                <details>
+                  <summary>{entry.sentence}</summary>
+                  <Facts entry={entry} />
+                </details>
+              </td>
+              <td className="soft">{nameOf(entry.assetClassId)}</td>
+              <td>{entry.by}</td>
+              <td className={css.seal} title={entry.digest}>
+                {entry.digest.slice(0, 8)}
+              </td>
+            </tr>
+          );
+        })}
       </tbody>
     </table>
+  );
+}
+
+/** What the entry keeps beside its sentence; long lists by their length. */
+function Facts({ entry }: { entry: JournalEntry }) {
+  const words = (value: unknown): string => {
+    const text = typeof value === "string" ? value : JSON.stringify(value);
+    return text.length > 300 ? `${text.slice(0, 300)} …` : text;
+  };
+  return (
+    <dl className={css.facts}>
+      <dt>act</dt>
+      <dd>{entry.act}</dd>
+      {Object.entries(entry.facts).map(([name, value]) => (
+        <div key={name} style={{ display: "contents" }}>
+          <dt>{name}</dt>
+          <dd>{words(value)}</dd>
+        </div>
+      ))}
+      <dt>seal before</dt>
+      <dd>{entry.previousDigest}</dd>
+      <dt>seal</dt>
+      <dd>{entry.digest}</dd>
+    </dl>
   );
 }
