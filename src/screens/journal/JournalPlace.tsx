@@ -45,6 +45,7 @@ function useJournal() {
 }
 
 export function JournalPlace() {
+  const { client } = useWorkbench();
   const { entries, head, error, isReading, readMore } = useJournal();
   return (
     // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls is reached by key
@@ -66,6 +67,7 @@ export function JournalPlace() {
               <p>{head.chainSentence}</p>
             </Notice>
           )}
+          <WhoWorksHere client={client} />
           {entries.length === 0 ? (
             <EmptyState sentence="Nothing has been done yet: the first import, edition or sheet opens the journal." />
           ) : (
