@@ -2,6 +2,7 @@
 import type { Appraisal, PricePart, Range } from "../../domain/appraisal.ts";
 import { formatDay, formatMoney, levelWords, roundingStep, roundOutward, roundTo } from "../../domain/format.ts";
 import { BuiltUpSteps } from "../charts/BuiltUpSteps.tsx";
+import { partStep, priceStep } from "../charts/figures.ts";
 import { RangeGauge } from "../charts/RangeGauge.tsx";
 import { Busy, ErrorNote, PaneLayout, SectionHeading, SegmentedChoice } from "../parts/index.ts";
 import { useWorkbench, type Workbench } from "../workbench/workbench.ts";
@@ -63,6 +64,8 @@ function Priced({ bench, appraisal, priced }: PricedProps) {
             saleCount={appraisal.report.n}
             subject={priced.subject.title}
             currencyCode={currencyCode}
+            step={partStep(priced.price)}
+            priceStep={priceStep(priced.price)}
           />
         </section>
         <div className={css.side}>

@@ -3,7 +3,7 @@
  * solid raises, hollow lowers. Printed steps add up to the printed price; the exact value is on hover and focus.
  */
 import type { BuiltUp, BuiltUpStep } from "../../domain/appraisal.ts";
-import { formatMoney, formatNumber, formatSigned, roundToAddUp } from "../../domain/format.ts";
+import { formatMoney, formatNumber, formatSigned, roundTo, roundToAddUp } from "../../domain/format.ts";
 import css from "./charts.module.css";
 import { useWidth } from "./useWidth.ts";
 
@@ -15,14 +15,20 @@ export interface BuiltUpStepsProps {
   readonly currencyCode: string;
   /** Step that the parts are rounded to. */
   readonly step?: number;
+  /** Step that the price itself is rounded to; a last row says what that rounding adds. */
+  readonly priceStep?: number;
 }
 
 const ROW = 28;
 
-export function BuiltUpSteps({ builtUp, saleCount, subject, currencyCode, step = 10 }: BuiltUpStepsProps) {
+export function BuiltUpSteps(props: BuiltUpStepsProps) {
+  const { builtUp, saleCount, subject, currencyCode, step = 10, priceStep = step } = props;
   const { box, width } = useWidth<HTMLTableCellElement>(190);
   const printed = roundToAddUp([builtUp.start, ...builtUp.steps.map((one) => one.step)], builtUp.end, step);
+  const sum = printed.reduce((total, part) => total + part, 0);
+  const price = roundTo(builtUp.end, priceStep);
   const at = scaleOf(builtUp, width - 10);
+  const exact = (amount: number): string => formatMoney(amount, currencyCode, undefined, 2);
   return (
     <div className={css.steps}>
       <table>
@@ -35,13 +41,27 @@ export function BuiltUpSteps({ builtUp, saleCount, subject, currencyCode, step =
             <td className={css.picture} ref={box}>
               <EndPicture at={at} amount={builtUp.start} kind="start" />
             </td>
-            <td className="num" title={formatMoney(builtUp.start, currencyCode, undefined, 2)}>
+            <td className="num" title={exact(builtUp.start)}>
               {formatMoney(printed[0]!, currencyCode)}
             </td>
           </tr>
           {builtUp.steps.map((one, index) => (
             <StepRow key={one.key} step={one} printed={printed[index + 1]!} at={at} currencyCode={currencyCode} />
           ))}
+          {price === sum ? null : (
+            <tr>
+              <th scope="row" className={css.name}>
+                Rounding
+              </th>
+              <td className={css.values}>to the nearest {formatNumber(priceStep)}</td>
+              <td className={css.picture}>
+                <svg width="100%" height={ROW} aria-hidden="true">
+                  <path d={`M${at(builtUp.end)} 0V${ROW}`} className="s-ink" strokeWidth="1" />
+                </svg>
+              </td>
+              <td className="num soft">{formatSigned(price - sum)}</td>
+            </tr>
+          )}
           <tr className={css.ends}>
             <th scope="row" colSpan={2}>
               {subject === "" ? "This item" : subject}
@@ -49,11 +69,8 @@ export function BuiltUpSteps({ builtUp, saleCount, subject, currencyCode, step =
             <td className={css.picture}>
               <EndPicture at={at} amount={builtUp.end} kind="end" />
             </td>
-            <td className={`num ${css.price}`} title={formatMoney(builtUp.end, currencyCode, undefined, 2)}>
-              {formatMoney(
-                printed.reduce((sum, part) => sum + part, 0),
-                currencyCode,
-              )}
+            <td className={`num ${css.price}`} title={exact(builtUp.end)}>
+              {formatMoney(price, currencyCode)}
             </td>
           </tr>
         </tbody>

@@ -110,7 +110,8 @@ function TieLine({ tie, from, to }: { tie: Tie; from: MapBox; to: MapBox }) {
           className="s-brick"
           strokeWidth="1.8"
         />
-        <text x={mx} y={my + 4} textAnchor="middle" className="halo">
+        <rect x={mx - 18} y={my - 8} width="36" height="16" className="f-paper" />
+        <text x={mx} y={my + 4} textAnchor="middle">
           exact
         </text>
       </g>
@@ -128,9 +129,12 @@ function TieLine({ tie, from, to }: { tie: Tie; from: MapBox; to: MapBox }) {
         opacity={size < NUMBERED_FROM ? 0.75 : 1}
       />
       {size < NUMBERED_FROM ? null : (
-        <text x={mx} y={my + 4} textAnchor="middle" className="halo">
-          {short(tie.value)}
-        </text>
+        <>
+          <rect x={mx - 13} y={my - 8} width="26" height="16" className="f-paper" />
+          <text x={mx} y={my + 4} textAnchor="middle">
+            {short(tie.value)}
+          </text>
+        </>
       )}
     </g>
   );

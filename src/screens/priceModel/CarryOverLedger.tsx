@@ -41,9 +41,7 @@ export function CarryOverLedger({ ledger, report, currencyCode }: CarryOverLedge
   return (
     <>
       <LanePatterns />
-      <SectionHeading aside={<Legend columns={columns} referenceCount={ledger.referenceSet.length} />}>
-        Carry-over ledger
-      </SectionHeading>
+      <SectionHeading aside={<Legend columns={columns} />}>Carry-over ledger</SectionHeading>
       <div ref={box} className={css.scroll}>
         <table className={css.ledger}>
           <LedgerHead columns={columns} scale={scale} currencyCode={currencyCode} averagePrice={report.averagePrice} />
@@ -78,12 +76,12 @@ function hottest(rows: readonly PrintedRow[]): PrintedRow | undefined {
   );
 }
 
-function Legend({ columns, referenceCount }: { columns: readonly LedgerColumn[]; referenceCount: number }) {
+function Legend({ columns }: { columns: readonly LedgerColumn[] }) {
   return (
     <>
       <span className={css.legend}>
         <LaneKey lane={0} />
-        own part, beside all {formatNumber(referenceCount)}
+        own part, beside the whole set
       </span>
       {columns.map((column, index) => (
         <span key={column.heading} className={css.legend}>
@@ -210,7 +208,7 @@ function LeftOutOwn({ ledger, currencyCode }: { ledger: Ledger; currencyCode: st
   const step = (amount: number): number => rowStep({ own: amount, coefficient: amount });
   return (
     <p className="small soft" style={{ marginTop: 4 }}>
-      Left out, beside all {formatNumber(ledger.referenceSet.length)}:{" "}
+      Left out, beside the whole set:{" "}
       {ledger.leftOutOwn.map((one, index) => (
         <span key={`${one.key} ${one.level ?? ""}`}>
           {index === 0 ? "" : "; "}

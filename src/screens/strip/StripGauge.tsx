@@ -42,7 +42,7 @@ export function StripGauge({ price, move, level, currencyCode }: StripGaugeProps
       <svg width={width} height={HEIGHT} role="img" aria-label={gaugeWords(price, level, currencyCode)}>
         <Scale ruler={ruler} width={width} />
         {before === null || move === null ? null : <Before range={before} amount={move.from} at={at} />}
-        <Now price={price} level={level} at={at} width={width} />
+        <Now price={price} level={level} at={at} width={width} isMoving={before !== null} />
       </svg>
     </div>
   );
@@ -86,9 +86,11 @@ interface NowProps {
   readonly level: number;
   readonly at: (amount: number) => number;
   readonly width: number;
+  /** The former bracket is drawn too, so words keep above it. */
+  readonly isMoving: boolean;
 }
 
-function Now({ price, level, at, width }: NowProps) {
+function Now({ price, level, at, width, isMoving }: NowProps) {
   const outer = rangeAt(price.rangeForOneSale, level);
   const inner = level === INNER_LEVEL ? null : rangeAt(price.rangeForOneSale, INNER_LEVEL);
   const average = rangeAt(price.rangeForAverage, level);
@@ -118,8 +120,8 @@ function Now({ price, level, at, width }: NowProps) {
       <path d={`M${at(price.amount)} 10V48`} className="s-verd" strokeWidth="2.4" />
       {words === null ? null : (
         <>
-          <EndWords x={left} isRoom={left > 48} side="low" amount={words.low} />
-          <EndWords x={right} isRoom={width - right > 48} side="high" amount={words.high} />
+          <EndWords x={left} isRoom={!isMoving && left > 48} side="low" amount={words.low} />
+          <EndWords x={right} isRoom={!isMoving && width - right > 48} side="high" amount={words.high} />
         </>
       )}
     </g>
