@@ -92,7 +92,8 @@ function reason(row: LedgerRow, move: Move | undefined): string {
 function moveWords(row: LedgerRow, move: Move | undefined): string | null {
   if (move === undefined || move.amount === 0) return null;
   const decimals = Math.abs(move.amount) >= 10 ? 0 : Math.abs(move.amount) >= 1 ? 1 : 2;
-  const step = row.level === null && row.attribute !== MARKET_KEY ? `each ${row.stepWords}` : "it";
+  const step =
+    row.level === null && row.attribute !== MARKET_KEY ? `each ${row.stepWords.replace(/^1\u00a0/, "")}` : "it";
   return `${step} comes with ${formatNumber(Math.abs(move.amount), decimals)} ${move.amount < 0 ? "fewer" : "more"} ${move.unit}`;
 }
 

@@ -4,7 +4,7 @@
  */
 import type { NotKnownEffect, PriceEstimate } from "../domain/appraisal.ts";
 import type { NewAssetClass } from "../domain/assetClass.ts";
-import { formatMoney, formatNumber, listWords, niceStep, roundTo } from "../domain/format.ts";
+import { formatMoney, formatNumber, listWords, lowerStart, niceStep, roundTo } from "../domain/format.ts";
 import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { fitColumns } from "../hedonic/fitPriceModel.ts";
 import { quantileOfSorted } from "../numerics/quantile.ts";
@@ -93,5 +93,5 @@ function sentenceOf(
       ? `which widens the range by about ${money(wider)}`
       : "which leaves the range about as wide as it would be";
   const reads = listWords(wouldRead.map(({ value, amount }) => `${money(amount)} with ${value}`));
-  return `${group.label} is not known, ${width}. The price would read ${reads}. What is not known is often bad news: find out where you can.`;
+  return `Not known: ${lowerStart(group.label)}, ${width}. The price would read ${reads}. What is not known is often bad news: find out where you can.`;
 }

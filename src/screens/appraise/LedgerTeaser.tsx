@@ -1,6 +1,15 @@
 /** Who speaks for what is left out: the rows that carry most, with a way to the whole ledger. */
 import type { Appraisal, LedgerRow } from "../../domain/appraisal.ts";
-import { formatNumber, formatSigned, lowerStart, niceStep, roundTo, roundToAddUp } from "../../domain/format.ts";
+import {
+  formatNumber,
+  formatSigned,
+  listWords,
+  lowerStart,
+  niceStep,
+  roundTo,
+  roundToAddUp,
+} from "../../domain/format.ts";
+import { StrongMoney } from "../parts/index.ts";
 import css from "./PullRows.module.css";
 
 const SHOWN = 3;
@@ -20,7 +29,7 @@ function printed(row: LedgerRow): { own: number; carried: number; reads: number 
 export function LedgerTeaser({ appraisal }: { readonly appraisal: Appraisal }) {
   const { ledger, assetClass } = appraisal;
   const most = [...ledger.rows].sort((a, b) => Math.abs(carriedOf(b)) - Math.abs(carriedOf(a))).slice(0, SHOWN);
-  const names = ledger.leftOut.map((one) => lowerStart(one.label)).join(", ");
+  const names = listWords(ledger.leftOut.map((one) => lowerStart(one.label)));
   return (
     <section aria-labelledby="teaser-heading">
       <div className={css.heading}>
@@ -29,7 +38,9 @@ export function LedgerTeaser({ appraisal }: { readonly appraisal: Appraisal }) {
         </h2>
         <a href="#/price-model">Open the ledger</a>
       </div>
-      <p className={css.note}>{ledger.headline}</p>
+      <p className={css.note}>
+        <StrongMoney text={ledger.headline} />
+      </p>
       {ledger.leftOut.length === 0 ? null : (
         <table>
           <caption className="vh">The attributes that carry most for what is left out</caption>

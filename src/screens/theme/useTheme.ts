@@ -1,14 +1,15 @@
 /** Light or dark paper: the person's choice when there is one, else the system's. Kept on this machine only. */
-import { useCallback, useState } from "react";
+import { useCallback, useEffect, useState } from "react";
 
 export type Theme = "light" | "dark";
 
 const KEY = "lotwright.theme";
+const DARK = "(prefers-color-scheme: dark)";
 
 function storedTheme(): Theme {
   const stored = localStorage.getItem(KEY);
   if (stored === "light" || stored === "dark") return stored;
-  return matchMedia("(prefers-color-scheme: dark)").matches ? "dark" : "light";
+  return matchMedia(DARK).matches ? "dark" : "light";
 }
 
 export function applyStoredTheme(): void {
@@ -17,6 +18,15 @@ export function applyStoredTheme(): void {
 
 export function useTheme(): { theme: Theme; switchTheme: () => void } {
   const [theme, setTheme] = useState<Theme>(storedTheme);
+  useEffect(() => {
+    const system = matchMedia(DARK);
+    const follow = () => {
+      applyStoredTheme();
+      setTheme(storedTheme());
+    };
+    system.addEventListener("change", follow);
+    return () => system.removeEventListener("change", follow);
+  }, []);
   const switchTheme = useCallback(() => {
     setTheme((now) => {
       const next: Theme = now === "light" ? "dark" : "light";
