@@ -7,10 +7,12 @@ export interface FilterChoiceProps {
   /** What is set now. */
   readonly words: string;
   readonly isSet: boolean;
+  /** At the foot of the register the panel opens upwards. */
+  readonly opensUp?: boolean;
   readonly children: ReactNode;
 }
 
-export function FilterChoice({ label, words, isSet, children }: FilterChoiceProps) {
+export function FilterChoice({ label, words, isSet, opensUp = false, children }: FilterChoiceProps) {
   const [isOpen, setOpen] = useState(false);
   const whole = useRef<HTMLDivElement>(null);
   const opener = useRef<HTMLButtonElement>(null);
@@ -45,7 +47,7 @@ export function FilterChoice({ label, words, isSet, children }: FilterChoiceProp
         {label} <b className={isSet ? css.set : undefined}>{words}</b>
       </button>
       {isOpen ? (
-        <fieldset id={id} className={css.panel}>
+        <fieldset id={id} className={opensUp ? `${css.panel} ${css.up}` : css.panel}>
           <legend className="vh">{label}</legend>
           {children}
         </fieldset>

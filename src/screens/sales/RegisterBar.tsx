@@ -17,8 +17,6 @@ export interface RegisterBarProps {
   readonly register: Register;
   readonly evidence: readonly AttributeEvidence[];
   readonly saleCount: number;
-  readonly hidden: ReadonlySet<string>;
-  readonly onHide: (hidden: ReadonlySet<string>) => void;
 }
 
 export function RegisterBar(props: RegisterBarProps) {
@@ -83,7 +81,7 @@ function Find({ register, saleCount }: { register: Register; saleCount: number }
   );
 }
 
-function Filters({ assetClass, register, evidence, hidden, onHide }: RegisterBarProps) {
+function Filters({ assetClass, register, evidence }: RegisterBarProps) {
   const { query, setFilter } = register;
   const { filter } = query;
   const attributes = assetClass.attributes.filter(({ archived }) => !archived);
@@ -121,9 +119,6 @@ function Filters({ assetClass, register, evidence, hidden, onHide }: RegisterBar
       >
         <NarrowPanel filter={filter} onFilter={setFilter} attributes={others} evidence={evidence} />
       </FilterChoice>
-      <FilterChoice label="Columns" words={hidden.size === 0 ? "usual" : "chosen"} isSet={hidden.size > 0}>
-        <ColumnPanel assetClass={assetClass} hidden={hidden} onHide={onHide} />
-      </FilterChoice>
       {isFiltered(filter) ? (
         <TextLink onPress={() => setFilter({ ...NO_FILTER, search: filter.search })}>show all</TextLink>
       ) : null}
@@ -131,7 +126,22 @@ function Filters({ assetClass, register, evidence, hidden, onHide }: RegisterBar
   );
 }
 
-function ColumnPanel({ assetClass, hidden, onHide }: Pick<RegisterBarProps, "assetClass" | "hidden" | "onHide">) {
+export interface ColumnChoiceProps {
+  readonly assetClass: AssetClass;
+  readonly hidden: ReadonlySet<string>;
+  readonly onHide: (hidden: ReadonlySet<string>) => void;
+}
+
+export function ColumnChoice(props: ColumnChoiceProps) {
+  const { hidden } = props;
+  return (
+    <FilterChoice label="Columns" words={hidden.size === 0 ? "usual" : "chosen"} isSet={hidden.size > 0} opensUp>
+      <ColumnPanel {...props} />
+    </FilterChoice>
+  );
+}
+
+function ColumnPanel({ assetClass, hidden, onHide }: ColumnChoiceProps) {
   return (
     <>
       {attributeColumns(assetClass.attributes).map(({ id, attribute }) => (

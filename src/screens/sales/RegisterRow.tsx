@@ -94,9 +94,18 @@ function Cell({ column, sale, state }: { column: RegisterColumn; sale: Sale; sta
     default: {
       if (column.attribute === null) return null;
       const words = valueText(column.attribute, sale.values[column.id], sale.soldOn);
-      return words === "" ? <span className={css.missing}>not known</span> : words;
+      return words === "" ? <Missing /> : words;
     }
   }
+}
+
+function Missing() {
+  return (
+    <span className={css.missing} title="not known">
+      <span aria-hidden="true">–</span>
+      <span className="vh">not known</span>
+    </span>
+  );
 }
 
 /** The maker stands out, the model reads on. */

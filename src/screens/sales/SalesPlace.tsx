@@ -13,7 +13,7 @@ import { BringIn } from "./bringIn/BringIn.tsx";
 import { EvidencePane } from "./EvidencePane.tsx";
 import { stateOfSales } from "./evidenceState.ts";
 import { NO_FILTER } from "./filters.ts";
-import { RegisterBar } from "./RegisterBar.tsx";
+import { ColumnChoice, type ColumnChoiceProps, RegisterBar } from "./RegisterBar.tsx";
 import { RegisterTable } from "./RegisterTable.tsx";
 import css from "./SalesPlace.module.css";
 import { type Register, useRegister } from "./useRegister.ts";
@@ -103,14 +103,7 @@ function RegisterWhole({ assetClass, register, evidence, stateOf }: WholeProps) 
   const { book } = register;
   return (
     <>
-      <RegisterBar
-        assetClass={assetClass}
-        register={register}
-        evidence={evidence}
-        saleCount={saleCount}
-        hidden={hidden}
-        onHide={hide}
-      />
+      <RegisterBar assetClass={assetClass} register={register} evidence={evidence} saleCount={saleCount} />
       {book.error === null ? null : <ErrorNote error={book.error} />}
       {picking.error === null ? null : <ErrorNote error={picking.error} />}
       {saleCount === 0 && book.total === 0 ? (
@@ -133,12 +126,12 @@ function RegisterWhole({ assetClass, register, evidence, stateOf }: WholeProps) 
           onPickAll={picking.pickAll}
         />
       )}
-      <Foot assetClass={assetClass} register={register} />
+      <Foot assetClass={assetClass} register={register} hidden={hidden} onHide={hide} />
     </>
   );
 }
 
-function Foot({ assetClass, register }: { assetClass: AssetClass; register: Register }) {
+function Foot({ assetClass, register, hidden, onHide }: ColumnChoiceProps & { register: Register }) {
   const { total } = register.book;
   return (
     <div className={css.foot}>
@@ -162,6 +155,7 @@ function Foot({ assetClass, register }: { assetClass: AssetClass; register: Regi
       <span>
         rail: <i className={css.railSetAside} /> set aside <i className={css.railMissing} /> value missing
       </span>
+      <ColumnChoice assetClass={assetClass} hidden={hidden} onHide={onHide} />
       <span className={css.basis}>
         {assetClass.currencyCode}, {priceBasisWords(assetClass.priceBasis)}
       </span>

@@ -16,7 +16,7 @@ export interface RegisterColumn {
 }
 
 /** Title takes what is left, and never less than this. */
-export const TITLE_LEAST = 132;
+export const TITLE_LEAST = 124;
 
 const PICK_WIDTH = 24;
 
@@ -59,7 +59,7 @@ function unitOf(attribute: Attribute): string {
   return isSaid ? "" : `, ${attribute.unit}`;
 }
 
-/** "power (kW)" shows as its unit alone when that says enough. */
+/** "hours", "lift height, m", "age, y" */
 function headingOf(attribute: Attribute): string {
   return `${lowerStart(attribute.label)}${unitOf(attribute)}`;
 }
@@ -69,11 +69,11 @@ function attributeColumn(attribute: Attribute): RegisterColumn {
   const heading = headingOf(attribute);
   const longestWord = Math.max(...heading.split(" ").map((word) => word.length));
   const longestLevel = Math.max(2, ...attribute.levels.map((level) => level.length));
-  const content = isNumber ? 36 : Math.min(96, longestLevel * 6.4);
+  const content = isNumber ? 34 : Math.min(96, longestLevel * 6.2);
   return {
     id: attribute.key,
     heading,
-    width: Math.ceil(Math.max(content, longestWord * 6.4) + 12),
+    width: Math.ceil(Math.max(content, longestWord * 6) + 12),
     isNumber,
     attribute,
   };
@@ -107,15 +107,15 @@ export function columnsFor(
   hidden: ReadonlySet<string> = new Set(),
 ): readonly RegisterColumn[] {
   const before = [
-    text("reference", "sale", 74),
-    text("soldOn", "sold on", 88),
+    text("reference", "sale", 66),
+    text("soldOn", "sold on", 86),
     text("title", assetClass.itemWord, TITLE_LEAST),
   ];
   const after: RegisterColumn[] = [
-    text("channel", "through", 62),
-    { ...text("price", assetClass.currencyCode, 68), isNumber: true },
+    text("channel", "through", 56),
+    { ...text("price", assetClass.currencyCode, 62), isNumber: true },
     text("verified", "verified", 118),
-    text("state", "state", 128),
+    text("state", "state", 122),
   ];
   const fixed = [...before, ...after].reduce((sum, column) => sum + column.width, PICK_WIDTH);
   let left = width - fixed;

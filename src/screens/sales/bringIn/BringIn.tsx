@@ -32,14 +32,14 @@ export function BringIn({ assetClass }: { assetClass: AssetClass }) {
         </>
       }
       right={
-        <>
-          {incoming.preview === null || incoming.match === null ? (
-            <Resting hasFile={incoming.file !== null} classId={assetClass.id} />
-          ) : (
-            <>
-              <PreviewPane preview={incoming.preview} />
-              <TakeIn incoming={incoming} classId={assetClass.id} />
-            </>
+        incoming.preview === null || incoming.match === null ? (
+          <Resting hasFile={incoming.file !== null} classId={assetClass.id} />
+        ) : (
+          <>
+            <PreviewPane preview={incoming.preview} />
+            <TakeIn incoming={incoming} classId={assetClass.id} />
+          </>
+        )
           )}
         </>
       }
