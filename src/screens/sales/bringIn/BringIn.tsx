@@ -40,8 +40,6 @@ export function BringIn({ assetClass }: { assetClass: AssetClass }) {
             <TakeIn incoming={incoming} classId={assetClass.id} />
           </>
         )
-          )}
-        </>
       }
     />
   );
