@@ -58,10 +58,7 @@ export function JournalPlace() {
       ) : (
         <>
           {head.chainIntact ? (
-            <Sentence>
-              <strong>{formatNumber(head.total)}</strong> {head.total === 1 ? "entry" : "entries"};{" "}
-              {lowerFirst(head.chainSentence)}
-            </Sentence>
+            <Sentence>{head.chainSentence}</Sentence>
           ) : (
             <Notice kind="refusal" title="The journal has been touched">
               <p>{head.chainSentence}</p>
@@ -82,10 +79,6 @@ export function JournalPlace() {
       )}
     </section>
   );
-}
-
-function lowerFirst(words: string): string {
-  return words.charAt(0).toLowerCase() + words.slice(1);
 }
 
 function Entries({ entries }: { entries: readonly JournalEntry[] }) {

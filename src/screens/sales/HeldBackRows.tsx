@@ -13,12 +13,17 @@ export function mainReason(reasons: readonly HeldBackReason[]): HeldBackReason |
   return reasons.find(({ suggestion }) => suggestion !== null) ?? reasons[0] ?? null;
 }
 
-/** "marrowby-week-18.csv: 46 rows, 37 taken in", or how many files they come from. */
-export function fileWords(rows: readonly StoredHeldBackRow[], batches: readonly ImportBatch[]): string {
-  const ids = new Set(rows.map(({ batchId }) => batchId));
-  const batch = batches.find(({ id }) => ids.has(id));
-  if (ids.size > 1) return `from ${formatNumber(ids.size)} files`;
-  if (batch === undefined) return "";
+/** Rows by the file they come from, the file brought in last first. */
+export function byFile(rows: readonly StoredHeldBackRow[]): readonly (readonly StoredHeldBackRow[])[] {
+  const files = new Map<number, StoredHeldBackRow[]>();
+  for (const row of rows) files.set(row.batchId, [...(files.get(row.batchId) ?? []), row]);
+  return [...files].sort(([a], [b]) => b - a).map(([, own]) => own.sort((a, b) => a.row - b.row));
+}
+
+/** "marrowby-week-18.csv: 46 rows, 37 taken in" */
+export function fileWords(row: StoredHeldBackRow, batches: readonly ImportBatch[]): string {
+  const batch = batches.find(({ id }) => id === row.batchId);
+  if (batch === undefined) return row.fileName;
   return `${batch.fileName}: ${formatNumber(batch.read)} rows, ${formatNumber(batch.accepted)} taken in`;
 }
 
@@ -29,24 +34,23 @@ export interface HeldBackRowsProps {
 }
 
 export function HeldBackRows({ rows, batches, onDone }: HeldBackRowsProps) {
-  const isManyFiles = new Set(rows.map(({ batchId }) => batchId)).size > 1;
-  return (
-    <section className={css.section} aria-labelledby="held-back">
-      <SectionHeading id="held-back" aside={fileWords(rows, batches)}>
-        {formatNumber(rows.length)} {rows.length === 1 ? "row" : "rows"} held back
+  return byFile(rows).map((own) => (
+    <section key={own[0]!.batchId} className={css.section} aria-labelledby={`held-back-${own[0]!.batchId}`}>
+      <SectionHeading id={`held-back-${own[0]!.batchId}`} aside={fileWords(own[0]!, batches)}>
+        {formatNumber(own.length)} {own.length === 1 ? "row" : "rows"} held back
       </SectionHeading>
       <ul className={css.held}>
-        {rows.map((row) => (
-          <HeldBackItem key={row.id} row={row} showsFile={isManyFiles} onDone={onDone} />
+        {own.map((row) => (
+          <HeldBackItem key={row.id} row={row} onDone={onDone} />
         ))}
       </ul>
     </section>
-  );
+  ));
 }
 
-type ItemProps = { row: StoredHeldBackRow; showsFile: boolean; onDone: (words: string) => void };
+type ItemProps = { row: StoredHeldBackRow; onDone: (words: string) => void };
 
-function HeldBackItem({ row, showsFile, onDone }: ItemProps) {
+function HeldBackItem({ row, onDone }: ItemProps) {
   const { client, classId } = useWorkbench();
   const [asking, setAsking] = useState<"mend" | "leaveOut" | null>(null);
   const task = useTask();
@@ -77,7 +81,6 @@ function HeldBackItem({ row, showsFile, onDone }: ItemProps) {
         <div>
           {reason?.reason}
           {others > 0 ? <span className="soft"> {formatNumber(others)} more in this row.</span> : null}
-          {showsFile ? <span className="soft"> {row.fileName}</span> : null}
         </div>
       </div>
       <div className={css.heldActs}>

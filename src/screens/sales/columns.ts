@@ -16,7 +16,7 @@ export interface RegisterColumn {
 }
 
 /** Title takes what is left, and never less than this. */
-export const TITLE_LEAST = 124;
+export const TITLE_LEAST = 116;
 
 const PICK_WIDTH = 24;
 
@@ -54,9 +54,9 @@ export function channelText(sale: Sale): string {
 }
 
 function unitOf(attribute: Attribute): string {
-  if (attribute.kind === "built") return ", y";
+  if (attribute.kind === "built") return ",\u00a0y";
   const isSaid = attribute.unit === null || attribute.label.includes(`(${attribute.unit})`) || attribute.unit === "h";
-  return isSaid ? "" : `, ${attribute.unit}`;
+  return isSaid ? "" : `,\u00a0${attribute.unit}`;
 }
 
 /** "hours", "lift height, m", "age, y" */
@@ -107,7 +107,7 @@ export function columnsFor(
   hidden: ReadonlySet<string> = new Set(),
 ): readonly RegisterColumn[] {
   const before = [
-    text("reference", "sale", 66),
+    text("reference", "sale", 62),
     text("soldOn", "sold on", 86),
     text("title", assetClass.itemWord, TITLE_LEAST),
   ];

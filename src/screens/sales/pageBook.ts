@@ -12,6 +12,8 @@ export type SalesFilter = SalesQuery["filter"];
 export const PAGE = 100;
 /** Pages kept; the farthest from what is looked at go first. */
 const KEPT = 60;
+/** A register of this many is read whole in the background, so that the rail can mark all of it. */
+const WHOLE = 2000;
 /** A scroll passes over many pages: only where it rests for this long is asked. */
 const REST_MS = 30;
 
@@ -90,9 +92,12 @@ export class PageBook {
   }
 
   #askWanted(): void {
+    this.#askPages(Math.floor(this.#wanted.first / PAGE), Math.floor(this.#wanted.last / PAGE));
+  }
+
+  #askPages(first: number, last: number): void {
     if (this.#query === null) return;
-    const last = Math.floor(this.#wanted.last / PAGE);
-    for (let page = Math.floor(this.#wanted.first / PAGE); page <= last; page++) {
+    for (let page = first; page <= last; page++) {
       const lies = this.#total === null || this.isStale || page * PAGE < Math.max(1, this.#total);
       if (lies && !this.#asked.has(page)) void this.#askPage(this.#query, page);
     }
@@ -122,6 +127,7 @@ export class PageBook {
     this.#pages.set(page, rows);
     this.#forget();
     this.#tell();
+    if (total <= WHOLE) this.#askPages(0, Math.ceil(total / PAGE) - 1);
   }
 
   #forget(): void {
