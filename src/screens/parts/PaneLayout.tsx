@@ -1,5 +1,5 @@
 /** Cause left, effect right, and a divider between them that is dragged or moved by arrow keys; its place is remembered. */
-import { type KeyboardEvent, type PointerEvent, type ReactNode, useState } from "react";
+import { type CSSProperties, type KeyboardEvent, type PointerEvent, type ReactNode, useState } from "react";
 import css from "./PaneLayout.module.css";
 
 export interface PaneLayoutProps {
@@ -46,10 +46,7 @@ export function PaneLayout(props: PaneLayoutProps) {
     choose(width + step);
   };
   return (
-    <div
-      className={css.panes}
-      style={{ "--left": `min(${width}px, calc(100% - ${NARROWEST}px))` } as React.CSSProperties}
-    >
+    <div className={css.panes} style={{ "--wanted": `${width}px` } as CSSProperties}>
       <section className={css.left} aria-label={leftLabel}>
         {left}
       </section>

@@ -92,7 +92,9 @@ function Tile({ tile, bench }: { tile: TileFacts; bench: Workbench }) {
         onKeyDown={press}
       >
         <b>{attribute.label}</b>
-        <span className={css.form}>{hasReference ? `${tile.formWords}, from` : tile.formWords}</span>
+        <span className={hasReference ? `${css.form} ${css.short}` : css.form}>
+          {hasReference ? `${tile.formWords}, from` : tile.formWords}
+        </span>
       </button>
       {hasReference ? <Reference tile={tile} bench={bench} /> : null}
       <span className={css.dot} aria-hidden="true" />

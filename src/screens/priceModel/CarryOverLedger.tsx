@@ -26,12 +26,16 @@ interface CarryOverLedgerProps {
 /** Room the words and numbers of a row take; the picture gets the rest. */
 const WORDS_WIDTH = 215;
 const NUMBER_WIDTH = 76;
+/** In a narrower pane the range gives way; it stays on hover of what the row reads. */
+const NARROW = 640;
 
 export function CarryOverLedger({ ledger, report, currencyCode }: CarryOverLedgerProps) {
   const { columns, rows } = useMemo(() => printLedger(ledger), [ledger]);
   const { box, width } = useWidth<HTMLDivElement>(900);
   const [chosenId, choose] = useState<string | null>(null);
-  const picture = Math.min(640, Math.max(150, width - WORDS_WIDTH - NUMBER_WIDTH * (columns.length + 3)));
+  const hasRange = width >= NARROW;
+  const numbers = NUMBER_WIDTH * (columns.length + (hasRange ? 3 : 2));
+  const picture = Math.min(640, Math.max(110, width - WORDS_WIDTH - numbers));
   const scale = barScale(
     rows.map((row) => row.parts),
     picture,
@@ -44,7 +48,13 @@ export function CarryOverLedger({ ledger, report, currencyCode }: CarryOverLedge
       <SectionHeading aside={<Legend columns={columns} />}>Carry-over ledger</SectionHeading>
       <div ref={box} className={css.scroll}>
         <table className={css.ledger}>
-          <LedgerHead columns={columns} scale={scale} currencyCode={currencyCode} averagePrice={report.averagePrice} />
+          <LedgerHead
+            columns={columns}
+            scale={scale}
+            currencyCode={currencyCode}
+            averagePrice={report.averagePrice}
+            hasRange={hasRange}
+          />
           <tbody>
             {rows.map((row) => (
               <LedgerRowView
@@ -53,6 +63,7 @@ export function CarryOverLedger({ ledger, report, currencyCode }: CarryOverLedge
                 columns={columns}
                 scale={scale}
                 currencyCode={currencyCode}
+                hasRange={hasRange}
                 isChosen={row.id === chosen?.id}
                 onChoose={() => choose(row.id)}
               />
@@ -104,9 +115,10 @@ interface LedgerHeadProps {
   readonly scale: BarScale;
   readonly currencyCode: string;
   readonly averagePrice: number;
+  readonly hasRange: boolean;
 }
 
-function LedgerHead({ columns, scale, currencyCode, averagePrice }: LedgerHeadProps) {
+function LedgerHead({ columns, scale, currencyCode, averagePrice, hasRange }: LedgerHeadProps) {
   return (
     <thead>
       <tr>
@@ -138,9 +150,11 @@ function LedgerHead({ columns, scale, currencyCode, averagePrice }: LedgerHeadPr
         <th scope="col" className="num">
           reads now
         </th>
-        <th scope="col" className="num">
-          range, 95&nbsp;%
-        </th>
+        {hasRange ? (
+          <th scope="col" className="num">
+            range, 95&nbsp;%
+          </th>
+        ) : null}
       </tr>
     </thead>
   );
@@ -151,12 +165,14 @@ interface LedgerRowViewProps {
   readonly columns: readonly LedgerColumn[];
   readonly scale: BarScale;
   readonly currencyCode: string;
+  readonly hasRange: boolean;
   readonly isChosen: boolean;
   readonly onChoose: () => void;
 }
 
-function LedgerRowView({ row, columns, scale, currencyCode, isChosen, onChoose }: LedgerRowViewProps) {
+function LedgerRowView({ row, columns, scale, currencyCode, hasRange, isChosen, onChoose }: LedgerRowViewProps) {
   const exact = (amount: number): string => formatMoney(amount, currencyCode, undefined, 2);
+  const range = row.range === null ? "none can be given" : `${exact(row.range.low)} to ${exact(row.range.high)}`;
   const spoken = [
     `own part ${formatNumber(row.printed[0]!)}`,
     ...columns.map((column, index) => `carried for ${column.label} ${formatNumber(row.printed[index + 1]!)}`),
@@ -186,16 +202,15 @@ function LedgerRowView({ row, columns, scale, currencyCode, isChosen, onChoose }
           {row.printed[index + 1] === 0 ? "±0" : formatSigned(row.printed[index + 1]!)}
         </td>
       ))}
-      <td className={`num ${css.now}`} title={exact(row.exactReads)}>
+      <td className={`num ${css.now}`} title={`${exact(row.exactReads)}; range, 95\u00a0%: ${range}`}>
         {formatNumber(row.reads)}
         {row.signTurned ? <span className="vh">, the sign has turned</span> : null}
       </td>
-      <td
-        className="num soft"
-        title={row.range === null ? "no range can be given" : `${exact(row.range.low)} to ${exact(row.range.high)}`}
-      >
-        {row.halfRange === null ? "none" : `±\u00a0${formatNumber(row.halfRange)}`}
-      </td>
+      {hasRange ? (
+        <td className="num soft" title={range}>
+          {row.halfRange === null ? "none" : `±\u00a0${formatNumber(row.halfRange)}`}
+        </td>
+      ) : null}
     </tr>
   );
 }
