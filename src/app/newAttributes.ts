@@ -3,7 +3,7 @@
  * (levels, decimals, size of a step) from the values that came.
  */
 import type { AssetClass } from "../domain/assetClass.ts";
-import { type Attribute, type AttributeValue, keyOf } from "../domain/attribute.ts";
+import { type Attribute, type AttributeValue, keyOf, plainAttribute } from "../domain/attribute.ts";
 import type { ColumnMatch, ColumnTarget } from "../domain/importRecord.ts";
 import type { NewSale } from "../domain/sale.ts";
 
@@ -21,20 +21,12 @@ function freeKey(label: string, taken: ReadonlySet<string>): string {
 }
 
 function unsettled(key: string, target: Extract<ColumnTarget, { to: "newAttribute" }>): Attribute {
-  return {
+  return plainAttribute({
     key,
     label: target.label.trim(),
     kind: target.kind,
     unit: target.kind === "built" ? "years" : target.kind === "number" ? target.unit : null,
-    step: 1,
-    levels: [],
-    lowest: null,
-    highest: null,
-    expectedDirection: null,
-    notes: "",
-    decimals: 0,
-    archived: false,
-  };
+  });
 }
 
 /** The class's own attributes keep their keys; a label that the class has already is that attribute. */

@@ -27,6 +27,22 @@ export interface Attribute {
   readonly archived: boolean;
 }
 
+/** An attribute with nothing said of it but what is given: no unit, no limits, steps of one. */
+export function plainAttribute(given: Pick<Attribute, "key" | "label" | "kind"> & Partial<Attribute>): Attribute {
+  return {
+    unit: null,
+    step: 1,
+    levels: [],
+    lowest: null,
+    highest: null,
+    expectedDirection: null,
+    notes: "",
+    decimals: 0,
+    archived: false,
+    ...given,
+  };
+}
+
 /** Value of one attribute: number, level name, yes/no, ISO day for built; null = not known. */
 export type AttributeValue = number | string | boolean | null;
 

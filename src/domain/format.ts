@@ -78,10 +78,15 @@ export function formatPercent(fraction: number, decimals = 0, locale: Locale = D
   return `${formatNumber(fraction * 100, decimals, locale)}${NBSP}%`;
 }
 
-/** 12 May 2025, held together. */
+/** English months are fixed here: a sheet must read the same whatever a runtime's own tables say ("Sep" or "Sept"). */
+const MONTHS = ["Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"];
+
+/** 12 May 2025, held together. Text that is no day is given back as it is. */
 export function formatDay(day: Day, locale: Locale = DEFAULT_LOCALE): string {
   const number = dayNumber(day);
   if (number === null) return day;
+  const [year, month, date] = day.split("-").map(Number);
+  if (locale.tag === DEFAULT_LOCALE.tag) return `${date}${NBSP}${MONTHS[month! - 1]}${NBSP}${year}`;
   return new Intl.DateTimeFormat(locale.tag, { day: "numeric", month: "short", year: "numeric", timeZone: "UTC" })
     .format(new Date(number * 86_400_000))
     .replace(/ /g, NBSP);

@@ -1,5 +1,5 @@
 /** Which cell of a row means what, settled once for a file before its rows are read. */
-import { type Attribute, keyOf } from "../domain/attribute.ts";
+import { type Attribute, keyOf, plainAttribute } from "../domain/attribute.ts";
 import { AppError } from "../domain/errors.ts";
 import type { ColumnMatch, ColumnTarget } from "../domain/importRecord.ts";
 import { unitName, unitRatio } from "./conversions/unit.ts";
@@ -36,20 +36,12 @@ export interface Plan {
 const MAKER = new Set(["make", "maker", "brand", "manufacturer", "builder", "marque", "hersteller", "marke"]);
 
 function provisional(target: Extract<ColumnTarget, { to: "newAttribute" }>, key: string): Attribute {
-  return {
+  return plainAttribute({
     key,
     label: target.label,
     kind: target.kind,
     unit: target.unit,
-    step: 1,
-    levels: [],
-    lowest: null,
-    highest: null,
-    expectedDirection: null,
-    notes: "",
-    decimals: 0,
-    archived: false,
-  };
+  });
 }
 
 function attributeOf(

@@ -22,17 +22,6 @@ export function signedTo(step: number, amount: number): string {
   return formatSigned(roundTo(amount, step));
 }
 
-/** "age", "age and hours", "age, hours and make" */
-export function listWords(words: readonly string[]): string {
-  if (words.length <= 1) return words.join("");
-  return `${words.slice(0, -1).join(", ")} and ${words[words.length - 1]}`;
-}
-
-/** Lower case at the start, unless the word is an abbreviation. */
-export function lower(label: string): string {
-  return /^\p{Lu}\p{Ll}/u.test(label) ? label.charAt(0).toLowerCase() + label.slice(1) : label;
-}
-
 const SMALL = ["no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve"];
 
 /** Small whole numbers as words in sentences: "seven", "no"; others as figures. */

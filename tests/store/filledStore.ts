@@ -4,7 +4,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterEach } from "vitest";
 import type { NewAssetClass } from "../../src/domain/assetClass.ts";
-import type { Attribute } from "../../src/domain/attribute.ts";
+import { type Attribute, plainAttribute } from "../../src/domain/attribute.ts";
 import type { NewSale } from "../../src/domain/sale.ts";
 import { type OpenOptions, openStore, type Store } from "../../src/store/openStore.ts";
 
@@ -29,21 +29,13 @@ export function freshStore(path = join(temporaryFolder(), "sales.sqlite"), optio
 }
 
 export function attribute(key: string, change: Partial<Attribute> = {}): Attribute {
-  return {
+  return plainAttribute({
     key,
     label: key,
     kind: "number",
     unit: null,
-    step: 1,
-    levels: [],
-    lowest: null,
-    highest: null,
-    expectedDirection: null,
-    notes: "",
-    decimals: 0,
-    archived: false,
     ...change,
-  };
+  });
 }
 
 export const HOISTS: NewAssetClass = {

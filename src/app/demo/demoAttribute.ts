@@ -1,17 +1,5 @@
 /** Attributes of the demo classes, said shortly. */
-import type { Attribute } from "../../domain/attribute.ts";
-
-const PLAIN = {
-  unit: null,
-  step: 1,
-  levels: [],
-  lowest: null,
-  highest: null,
-  expectedDirection: null,
-  notes: "",
-  decimals: 0,
-  archived: false,
-} as const;
+import { type Attribute, plainAttribute } from "../../domain/attribute.ts";
 
 export function number(
   key: string,
@@ -19,12 +7,11 @@ export function number(
   unit: string | null,
   more: Partial<Pick<Attribute, "step" | "lowest" | "highest" | "expectedDirection" | "decimals" | "notes">>,
 ): Attribute {
-  return { ...PLAIN, key, label, kind: "number", unit, ...more };
+  return plainAttribute({ key, label, kind: "number", unit, ...more });
 }
 
 export function built(key: string, label: string, highest: number): Attribute {
-  return {
-    ...PLAIN,
+  return plainAttribute({
     key,
     label,
     kind: "built",
@@ -33,13 +20,13 @@ export function built(key: string, label: string, highest: number): Attribute {
     highest,
     expectedDirection: "down",
     decimals: 1,
-  };
+  });
 }
 
 export function choice(key: string, label: string, levels: readonly string[], notes = ""): Attribute {
-  return { ...PLAIN, key, label, kind: "choice", levels, notes };
+  return plainAttribute({ key, label, kind: "choice", levels, notes });
 }
 
 export function yesNo(key: string, label: string): Attribute {
-  return { ...PLAIN, key, label, kind: "yesNo", expectedDirection: "up" };
+  return plainAttribute({ key, label, kind: "yesNo", expectedDirection: "up" });
 }

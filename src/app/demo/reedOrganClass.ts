@@ -56,8 +56,8 @@ export const REED_ORGAN_ENGAGEMENT: Engagement = {
   exposureTime: "three months",
   earlierSales: "none known",
   equipment: "",
-  practice: "",
-  practiceLine: "",
+  practice: "Ansell & Thorley (invented)",
+  practiceLine: "Valuers of machines, plant and instruments · 4 Quarry Rise, Marrowby",
   valuer: "",
   ownCaveats: [],
 };

@@ -73,8 +73,8 @@ export const TELEHANDLER_ENGAGEMENT: Engagement = {
   exposureTime: "four to eight weeks",
   earlierSales: "none known in the last three years",
   equipment: "pallet forks, hydraulic coupler",
-  practice: "",
-  practiceLine: "",
+  practice: "Ansell & Thorley (invented)",
+  practiceLine: "Valuers of machines and plant · 4 Quarry Rise, Marrowby",
   valuer: "",
   ownCaveats: [],
 };

@@ -2,8 +2,16 @@
  * "How the price is built": from the average sale to the printed price, one row a step.
  * Steps are differences of rounded running totals, so that the column adds up to the price of page 1 exactly.
  */
-import { formatDay, formatMoney, formatNumber, formatSigned, roundTo } from "../../domain/format.ts";
-import { countWord, listWords, lower, moneyTo, plural, upperStart } from "../figures.ts";
+import {
+  formatDay,
+  formatMoney,
+  formatNumber,
+  formatSigned,
+  listWords,
+  lowerStart,
+  roundTo,
+} from "../../domain/format.ts";
+import { countWord, moneyTo, plural, upperStart } from "../figures.ts";
 import type { Section, StepKind, StepRow } from "../sheetContent.ts";
 import { editionWords, type SheetContext } from "./context.ts";
 
@@ -151,7 +159,7 @@ function formsWords({ appraisal }: SheetContext): string {
   for (const { key, form } of appraisal.report.model.attributes) {
     if (!inModel.has(key)) continue;
     const words = FORM_WORDS[form];
-    groups.set(words, [...(groups.get(words) ?? []), lower(names.get(key) ?? key)]);
+    groups.set(words, [...(groups.get(words) ?? []), lowerStart(names.get(key) ?? key)]);
   }
   const said = [...groups].map(
     ([words, labels]) =>

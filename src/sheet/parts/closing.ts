@@ -1,7 +1,7 @@
 /** The last sections: further caveats, assumptions and limits, the standing cautions, and how to work the price out again. */
-import { formatDay, formatMoney, formatNumber, formatPercent } from "../../domain/format.ts";
+import { formatDay, formatMoney, formatNumber, formatPercent, listWords, lowerStart } from "../../domain/format.ts";
 import { standingCautions } from "../cautions.ts";
-import { countWord, listWords, lower, plural } from "../figures.ts";
+import { countWord, plural } from "../figures.ts";
 import type { Piece, ReworkRow, Section, Words } from "../sheetContent.ts";
 import { editionWords, type SheetContext, stated } from "./context.ts";
 import { CAVEATS_ON_FIRST_PAGE, caveatRows } from "./firstPage.ts";
@@ -32,13 +32,13 @@ export function assumptionsSection(context: SheetContext): Section {
     const sum = formatMoney(Math.abs(amount), currencyCode);
     items.push(
       paragraph(
-        `Valuer’s own adjustment: ${lower(label)}.`,
+        `Valuer’s own adjustment: ${lowerStart(label)}.`,
         `${sum} ${amount < 0 ? "less" : "more"}. ${stated(reason)}`,
       ),
     );
   }
   if (priced.notKnown.length > 0) {
-    const names = listWords(priced.notKnown.map(({ label }) => lower(label)));
+    const names = listWords(priced.notKnown.map(({ label }) => lowerStart(label)));
     items.push(
       paragraph(
         "Assumption: what is not known.",

@@ -1,7 +1,7 @@
 /** "The evidence": what came in, what is used, and what is not used by reason, adding up; sources, channels, verification. */
 import type { OutReason } from "../../domain/appraisal.ts";
-import { formatDay, formatNumber } from "../../domain/format.ts";
-import { listWords, plural } from "../figures.ts";
+import { formatDay, formatNumber, listWords } from "../../domain/format.ts";
+import { plural } from "../figures.ts";
 import type { Section } from "../sheetContent.ts";
 import type { SheetContext } from "./context.ts";
 

@@ -1,10 +1,10 @@
 /** Page 1 in words: item, price, what it rests on, facts, three caveats, signature. It stands alone when copied alone. */
 import type { Range } from "../../domain/appraisal.ts";
 import type { Attribute } from "../../domain/attribute.ts";
-import { formatDay, formatMoney, formatNumber, formatPercent, levelWords } from "../../domain/format.ts";
+import { formatDay, formatMoney, formatNumber, formatPercent, levelWords, lowerStart } from "../../domain/format.ts";
 import { amountInWords } from "../amountInWords.ts";
 import { ruleRange } from "../concludePrice.ts";
-import { lower, plural, upperStart, withArticle } from "../figures.ts";
+import { plural, upperStart, withArticle } from "../figures.ts";
 import type { CaveatRow, Fact, FirstPage, Gauge, GaugeRange } from "../sheetContent.ts";
 import { editionWords, type SheetContext, stated } from "./context.ts";
 
@@ -23,7 +23,9 @@ export function firstPage(context: SheetContext): FirstPage {
     title: stated(priced.subject.title),
     identification: identification(context),
     basisLine: [
-      upperStart([engagement.basisOfValue, lower(engagement.premise)].filter((text) => text.trim() !== "").join(", ")),
+      upperStart(
+        [engagement.basisOfValue, lowerStart(engagement.premise)].filter((text) => text.trim() !== "").join(", "),
+      ),
       `on ${formatDay(priced.subject.effectiveOn)}`,
     ]
       .filter((text) => text !== "")
@@ -84,7 +86,7 @@ function identification({ sheet, priced }: SheetContext): string {
     const value = priced.subject.values[attribute.key];
     if (value == null || parts.length >= 3) continue;
     if (attribute.kind === "built") parts.unshift(`built ${formatDay(String(value))}`);
-    else if (attribute.kind === "number") parts.push(`${lower(attribute.label)} ${valueWords(attribute, value)}`);
+    else if (attribute.kind === "number") parts.push(`${lowerStart(attribute.label)} ${valueWords(attribute, value)}`);
   }
   if (priced.subject.serial !== null && priced.subject.serial.trim() !== "")
     parts.push(`serial ${priced.subject.serial}`);
@@ -108,7 +110,7 @@ function terms({ sheet, priced, itemWord, currencyCode }: SheetContext): string 
   const { engagement, adjustments } = sheet.request;
   const phrases = [engagement.marketLevel, engagement.priceBasisWords]
     .filter((text) => text.trim() !== "")
-    .map((text) => shortened(lower(text.trim())));
+    .map((text) => shortened(lowerStart(text.trim())));
   const adjusted = adjustments.length > 0 ? ", after the valuer’s own adjustments" : "";
   const first = `The ${priced.price.centre} of what such ${withArticle(itemWord)} would be sold for${phrases.map((text) => `, ${text}`).join("")}${adjusted}.`;
   const range = ruleRange(sheet.conclusion.rangeForOneSale);

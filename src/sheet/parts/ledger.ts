@@ -3,8 +3,8 @@
  * what it carries, and each left-out attribute with its reason. Parts of a row are rounded so that they add up.
  */
 import type { LedgerRow } from "../../domain/appraisal.ts";
-import { formatMoney, formatSigned, roundTo, roundToAddUp } from "../../domain/format.ts";
-import { listWords, lower, moneyTo, rowStep, signedTo } from "../figures.ts";
+import { formatMoney, formatSigned, listWords, lowerStart, roundTo, roundToAddUp } from "../../domain/format.ts";
+import { moneyTo, rowStep, signedTo } from "../figures.ts";
 import type { LedgerLine, Part, Section, Words } from "../sheetContent.ts";
 import type { SheetContext } from "./context.ts";
 
@@ -28,7 +28,7 @@ function columns({ appraisal }: SheetContext): Column[] {
     .sort((a, b) => size.get(b.key)! - size.get(a.key)! || a.index - b.index);
   const own = sorted.length <= OWN_COLUMNS + 1 ? sorted : sorted.slice(0, OWN_COLUMNS);
   const others = sorted.slice(own.length);
-  const heads: Column[] = own.map(({ key, label }) => ({ head: lower(label), keys: new Set([key]) }));
+  const heads: Column[] = own.map(({ key, label }) => ({ head: lowerStart(label), keys: new Set([key]) }));
   if (others.length > 0) {
     heads.push({ head: `${others.length} others`, keys: new Set(others.map(({ key }) => key)) });
   }
@@ -122,7 +122,7 @@ function leadWords({ appraisal }: SheetContext): string {
   if (headline !== "") return headline;
   return leftOut.length === 0
     ? "Nothing of the reference set is left out."
-    : `Left out of the reference set: ${listWords(leftOut.map(({ label }) => lower(label)))}.`;
+    : `Left out of the reference set: ${listWords(leftOut.map(({ label }) => lowerStart(label)))}.`;
 }
 
 function leftOutWords({ appraisal, priced, currencyCode, step }: SheetContext): Words[] {
@@ -144,7 +144,7 @@ function leftOutWords({ appraisal, priced, currencyCode, step }: SheetContext): 
       [];
     const would = read.length === 0 ? "" : ` The price would read ${listWords(read)}.`;
     return [
-      { text: `Left out: ${lower(label)}. `, bold: true },
+      { text: `Left out: ${lowerStart(label)}. `, bold: true },
       { text: `${sentence}${ownOf.get(key) ?? ""}${would}` },
     ];
   });
