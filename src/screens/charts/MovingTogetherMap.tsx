@@ -20,6 +20,8 @@ export interface MovingTogetherMapProps {
 /** A weaker tie says nothing. */
 const WEAKEST_TIE = 0.1;
 const MOST_TIES = 14;
+/** Wider, the ties would be long and say no more. */
+const WIDEST = 560;
 const NUMBERED_FROM = 0.3;
 
 interface Tie {
@@ -57,7 +59,8 @@ function short(value: number): string {
 }
 
 export function MovingTogetherMap({ report, attributes, justNow }: MovingTogetherMapProps) {
-  const { box, width } = useWidth<HTMLDivElement>(424);
+  const { box, width: boxWidth } = useWidth<HTMLDivElement>(424);
+  const width = Math.min(boxWidth, WIDEST);
   const labelOf = (key: string): string => attributes.find((one) => one.key === key)?.label ?? key;
   const ties = tiesOf(report, labelOf).filter(
     (tie) => attributes.some((one) => one.key === tie.a) && attributes.some((one) => one.key === tie.b),

@@ -40,7 +40,8 @@ function figuresOf(price: PriceEstimate, level: number, currencyCode: string): F
   const inner = level === INNER_LEVEL ? null : rangeAt(price.rangeForOneSale, INNER_LEVEL);
   return {
     amount: formatMoney(roundTo(price.amount, step), currencyCode),
-    mean: price.centre === "median" ? formatMoney(roundTo(price.meanAmount, Math.max(1, step / 5)), currencyCode) : null,
+    mean:
+      price.centre === "median" ? formatMoney(roundTo(price.meanAmount, Math.max(1, step / 5)), currencyCode) : null,
     outer: outward(rangeAt(price.rangeForOneSale, level)),
     inner: outward(inner),
     average: outward(rangeAt(price.rangeForAverage, level)),

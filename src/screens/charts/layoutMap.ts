@@ -24,8 +24,9 @@ interface Moving {
 }
 
 export const BOX_HEIGHT = 22;
-const GAP_X = 22;
-const GAP_Y = 16;
+/** Room for the number of a tie between two boxes. */
+const GAP_X = 44;
+const GAP_Y = 26;
 const ROUNDS = 260;
 
 function startOnEllipse(boxes: readonly { key: string; width: number }[], width: number, height: number): Moving[] {
@@ -42,7 +43,7 @@ function pullTies(moving: readonly Moving[], ties: readonly MapTie[], heat: numb
     if (a === undefined || b === undefined) continue;
     const [dx, dy] = [b.x - a.x, b.y - a.y];
     const distance = Math.hypot(dx, dy) || 1;
-    const wanted = 150 - 80 * tie.strength;
+    const wanted = 130 - 60 * tie.strength;
     const by = (heat * tie.strength * (distance - wanted)) / distance / 4;
     a.x += dx * by;
     a.y += dy * by;
@@ -101,7 +102,7 @@ export function layoutMap(
 ): { boxes: readonly MapBox[]; height: number } {
   const isTied = (key: string): boolean => ties.some((tie) => tie.a === key || tie.b === key);
   const tied = boxes.filter((box) => isTied(box.key));
-  const height = tied.length === 0 ? 0 : Math.max(70, 40 + 26 * tied.length * Math.min(1, 424 / width));
+  const height = tied.length === 0 ? 0 : Math.max(70, 30 + 28 * tied.length);
   const moving = startOnEllipse(tied, width, height);
   for (let round = 0; round < ROUNDS; round++) {
     pullTies(moving, ties, 1 - round / ROUNDS);

@@ -1,6 +1,6 @@
 /** What comes of the model: one sentence, what it does to error and price, and the carry-over ledger. */
 import { useState } from "react";
-import type { Appraisal } from "../../domain/appraisal.ts";
+import type { Appraisal, ModelReport } from "../../domain/appraisal.ts";
 import { type PlainError, sentenceOf } from "../../domain/errors.ts";
 import { formatMoney, formatNumber, formatPercent, lowerStart, roundTo } from "../../domain/format.ts";
 import { priceStep } from "../charts/figures.ts";
@@ -60,9 +60,7 @@ function SecondLine({ bench, appraisal }: { bench: Workbench; appraisal: Apprais
   const money = (amount: number): string => formatMoney(roundTo(amount, step), assetClass.currencyCode);
   return (
     <p className={css.say}>
-      {report.looTypicalError === null
-        ? `Fitted on ${formatNumber(report.n)} sales. `
-        : `Typical error on a sale not yet seen: ${formatPercent(report.looTypicalError, 1)}. `}
+      {errorWords(report, move?.fromTypicalError ?? null)}
       {move !== null ? `The price moves from ${money(move.from)} to ${money(move.to)}. ` : ""}
       {move === null && priced !== null ? `${priced.subject.title} reads ${money(priced.price.amount)}. ` : ""}
       {label === null || leftOutJustNow === null ? null : (
@@ -76,6 +74,17 @@ function SecondLine({ bench, appraisal }: { bench: Workbench; appraisal: Apprais
       )}
     </p>
   );
+}
+
+/** "Typical error on a sale not yet seen rises from 11.0 % to 18.3 %." where it has just moved. */
+export function errorWords(
+  { looTypicalError: now, n }: Pick<ModelReport, "looTypicalError" | "n">,
+  before: number | null,
+) {
+  if (now === null) return `Fitted on ${formatNumber(n)} sales. `;
+  const [from, to] = [before === null ? null : formatPercent(before, 1), formatPercent(now, 1)];
+  if (before === null || from === to) return `Typical error on a sale not yet seen: ${to}. `;
+  return `Typical error on a sale not yet seen ${now > before ? "rises" : "falls"} from ${from} to ${to}. `;
 }
 
 /** Saves model and evidence as the next edition; what it cannot do is said beside the button. */

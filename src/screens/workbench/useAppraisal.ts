@@ -40,7 +40,8 @@ export function moveBetween(before: Appraisal | null, after: Appraisal): PriceMo
   const from = before?.priced?.price;
   const to = after.priced?.price;
   if (from === undefined || to === undefined || from.amount === to.amount) return null;
-  return { from: from.amount, to: to.amount, fromRanges: from.rangeForOneSale };
+  const fromTypicalError = before?.report.looTypicalError ?? null;
+  return { from: from.amount, to: to.amount, fromRanges: from.rangeForOneSale, fromTypicalError };
 }
 
 /** `stamp` changes when the data did, so that the same model and subject are asked again. */

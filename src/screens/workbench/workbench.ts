@@ -19,6 +19,8 @@ export interface PriceMove {
   readonly to: number;
   /** Ranges for one sale before the move, for the dashed bracket. */
   readonly fromRanges: readonly Range[];
+  /** Typical error on a sale not yet seen, before the move. */
+  readonly fromTypicalError: number | null;
 }
 
 export interface Workbench {

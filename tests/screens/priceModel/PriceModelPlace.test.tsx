@@ -1,5 +1,6 @@
 import { beforeAll, describe, expect, test } from "vitest";
 import { formatMoney, formatNumber } from "../../../src/domain/format.ts";
+import { errorWords } from "../../../src/screens/priceModel/ModelOutcome.tsx";
 import { PriceModelPlace } from "../../../src/screens/priceModel/PriceModelPlace.tsx";
 import type { Workbench } from "../../../src/screens/workbench/workbench.ts";
 import { demoBench } from "../demoBench.ts";
@@ -27,6 +28,13 @@ describe("the price model's screen", () => {
     const squeeze = (text: string): string => text.replace(/\s+/g, "");
     expect(squeeze(words)).toContain(squeeze(ageOut.appraisal!.ledger.headline));
     expect(words).toContain("Put age back");
+  });
+
+  test("says how the typical error moved, and nothing of a move that cannot be seen", () => {
+    expect(errorWords({ looTypicalError: 0.183, n: 9 }, 0.11)).toContain("rises from 11.0\u00a0% to 18.3\u00a0%");
+    expect(errorWords({ looTypicalError: 0.11, n: 9 }, 0.183)).toContain("falls from");
+    expect(errorWords({ looTypicalError: 0.11, n: 9 }, 0.11001)).toContain(": 11.0");
+    expect(errorWords({ looTypicalError: null, n: 9 }, 0.11)).toContain("Fitted on 9 sales");
   });
 
   test("says an exact dependency with the choice that resolves it now", () => {

@@ -37,7 +37,10 @@ describe("the price strip", () => {
   test("shows a move as an arrow and as words, from the former price", () => {
     const { price } = bench.appraisal!.priced!;
     const from = price.amount - 4 * priceStep(price);
-    const moved = { ...bench, move: { from, to: price.amount, fromRanges: price.rangeForOneSale } };
+    const moved = {
+      ...bench,
+      move: { from, to: price.amount, fromRanges: price.rangeForOneSale, fromTypicalError: 0.1 },
+    };
     const words = wordsOf(draw(moved, <PriceStrip />));
     expect(words).toContain("▲");
     expect(words).toContain("up by");

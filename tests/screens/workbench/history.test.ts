@@ -30,9 +30,10 @@ describe("undo and redo", () => {
 });
 
 describe("the move of a price", () => {
-  const priced = (amount: number) => ({ priced: { price: { amount, rangeForOneSale: [] } } }) as never;
+  const priced = (amount: number) =>
+    ({ report: { looTypicalError: amount / 100 }, priced: { price: { amount, rangeForOneSale: [] } } }) as never;
   test("is from the former price to the new one", () => {
-    expect(moveBetween(priced(10), priced(12))).toEqual({ from: 10, to: 12, fromRanges: [] });
+    expect(moveBetween(priced(10), priced(12))).toEqual({ from: 10, to: 12, fromRanges: [], fromTypicalError: 0.1 });
   });
   test("is none when there was no price, or it stayed", () => {
     expect(moveBetween(null, priced(12))).toBeNull();
