@@ -5,6 +5,7 @@ import { formatNumber, lowerStart } from "../../domain/format.ts";
 import { Button, Notice, SectionHeading, Sentence } from "../parts/index.ts";
 import css from "./AttributesPlace.module.css";
 import { againstExpectation, kindWords } from "./attributeWords.ts";
+import { PricesOver } from "./PricesOver.tsx";
 
 export interface AttributeDetailProps {
   readonly attribute: Attribute;
@@ -32,6 +33,7 @@ export function AttributeDetail({ attribute, appraisal, isBusy, onChange, onArch
           </Notice>
         ) : null}
         {evidence !== null && evidence.levels.length > 0 ? <Levels evidence={evidence} /> : null}
+        {attribute.kind === "number" || attribute.kind === "built" ? <PricesOver attribute={attribute} /> : null}
         {appraisal === null ? null : <Together attribute={attribute} appraisal={appraisal} />}
         <div className={css.acts}>
           <Button onClick={onChange} disabled={isBusy}>
