@@ -1,5 +1,5 @@
 /** "Find or do": every place, class and act by name, chosen by typing a few letters and Enter. */
-import { type KeyboardEvent, useEffect, useRef, useState } from "react";
+import { type KeyboardEvent, useEffect, useState } from "react";
 import { KeyCap } from "../parts/index.ts";
 import { PLACES, START } from "../routes.ts";
 import { useTheme } from "../theme/useTheme.ts";
@@ -38,11 +38,8 @@ export function Palette({ placeActs, onClose }: { placeActs: readonly Act[]; onC
   const [at, setAt] = useState(0);
   const found = findActs([...placeActs, ...useFrameActs()], typed);
   const chosen = Math.min(at, found.length - 1);
-  const before = useRef<Element | null>(null);
-  useEffect(() => {
-    before.current ??= document.activeElement;
-    return () => (before.current as HTMLElement | null)?.focus?.();
-  }, []);
+  const [before] = useState(() => document.activeElement);
+  useEffect(() => () => (before as HTMLElement | null)?.focus?.(), [before]);
   const run = (act: Act | undefined): void => {
     if (act === undefined) return;
     onClose();

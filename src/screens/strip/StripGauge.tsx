@@ -19,11 +19,14 @@ interface StripGaugeProps {
 const HEIGHT = 68;
 const LINE = 44;
 const INNER_LEVEL = 0.5;
+/** A range that fills less of the ruler than this, with no move shown, gets a ruler of its own. */
+const SMALLEST_SHARE = 0.45;
 
 /** Keeps `kept` while it still holds everything shown; else a new ruler around all of it. */
 export function keepRuler(kept: Ruler | null, shown: readonly Range[], isMoving: boolean): Ruler {
   if (kept === null || shown.length === 0) return rulerAround(shown, 0.3);
-  const isSensible = isMoving || shown.some((range) => range.high - range.low > 0.25 * (kept.high - kept.low));
+  const isSensible =
+    isMoving || shown.some((range) => range.high - range.low > SMALLEST_SHARE * (kept.high - kept.low));
   return isSensible && holds(kept, shown) ? kept : rulerAround(shown, 0.3);
 }
 
