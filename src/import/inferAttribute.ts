@@ -20,27 +20,27 @@ export interface ColumnLook {
   /** Middle of the numbers, null without any. */
   readonly middle: number | null;
   readonly lowest: number | null;
-  /** The one unit written in the cells themselves. */
+  /** The one unit that most of the cells are written with; a unit in a few only is a slip, to be held back. */
   readonly unit: string | null;
 }
 
 /** Enough to know a column by; rows are taken evenly over the whole file. */
 const SAMPLE_ROWS = 5000;
 
-function numberIn(cell: string, options: ReadingOptions, units: Set<string>): number | null {
+function numberIn(cell: string, options: ReadingOptions, units: string[]): number | null {
   const plain = readNumber(cell, options);
   if (plain.ok) return plain.value;
   const parts = splitUnit(cell);
   const name = parts === null ? null : unitName(parts.unit);
   const number = name === null ? null : readNumber(parts!.number, options);
   if (number === null || !number.ok) return null;
-  units.add(name!);
+  units.push(name!);
   return number.value;
 }
 
 export function lookAtColumn(table: RawTable, index: number): ColumnLook {
   const numbers: number[] = [];
-  const units = new Set<string>();
+  const units: string[] = [];
   const distinct = new Set<string>();
   let [filled, days, yesNo, years] = [0, 0, 0, 0];
   const stride = Math.max(1, Math.floor(table.rows.length / SAMPLE_ROWS));
@@ -67,7 +67,7 @@ export function lookAtColumn(table: RawTable, index: number): ColumnLook {
     distinct: distinct.size,
     middle: numbers[numbers.length >> 1] ?? null,
     lowest: numbers[0] ?? null,
-    unit: units.size === 1 ? [...units][0]! : null,
+    unit: units.length * 2 > numbers.length && new Set(units).size === 1 ? units[0]! : null,
   };
 }
 

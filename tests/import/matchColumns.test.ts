@@ -112,6 +112,12 @@ describe("columns without a class", () => {
     });
   });
 
+  it("take no unit from a cell that stands alone: a slip, not a unit", () => {
+    expect(targets("Price,Sold on,Stops\n1200,2024-01-05,12\n1300,2024-02-05,1l\n1400,2024-03-05,9\n")).toMatchObject({
+      Stops: "number null",
+    });
+  });
+
   it("name the unit that their heading or their cells have", () => {
     const rows = houses.map((_, k) => `${100 + k},${k} m,${k * 10}`);
     expect(targets(`price,Lift,Hours (h)\n${rows.join("\n")}\n`)).toEqual({
