@@ -31,7 +31,7 @@ const STATE_WORDS: Readonly<Record<TileState, string>> = {
 };
 
 function stepWords({ kind, step, unit }: Attribute): string {
-  if (kind === "built") return "per year";
+  if (kind === "built") return step === 1 ? "per year" : `per ${formatNumber(step)}\u00a0years`;
   const size = step === 1 ? "" : formatNumber(step, Number.isInteger(step) ? 0 : 2);
   return `per ${[size, unit ?? ""].filter((part) => part !== "").join("\u00a0") || "1"}`;
 }

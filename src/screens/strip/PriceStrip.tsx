@@ -56,7 +56,9 @@ function whoWords({ subject, assetClass }: Workbench): string | null {
   const attributes = assetClass.attributes.filter((one) => !one.archived);
   const built = attributes.find((one) => one.kind === "built");
   const day = built === undefined ? null : subject.values[built.key];
-  const number = attributes.find((one) => one.kind === "number" && typeof subject.values[one.key] === "number");
+  const number = attributes.find(
+    (one) => one.kind === "number" && one.unit !== null && typeof subject.values[one.key] === "number",
+  );
   const value = number === undefined ? null : (subject.values[number.key] as number);
   const parts = [
     typeof day === "string" ? `built ${day.slice(0, 4)}` : null,

@@ -21,6 +21,7 @@ describe("the price strip", () => {
     expect(words).toContain(formatMoney(roundTo(price.amount, priceStep(price)), "EUR"));
     expect(words).toContain(`${bench.appraisal!.evidence.used} of ${bench.appraisal!.evidence.read} sales`);
     expect(words).toContain("No edition yet");
+    expect(words).toMatch(/built \d{4} · 4,200\u00a0h · at /);
   });
 
   test("names the range for one sale, rounded outward, to a screen reader", () => {
