@@ -97,6 +97,10 @@ export async function verifySheet(
     fonts: await ports.fonts,
     programVersion: ports.programVersion,
     recompute: recomputeFromSheet,
-    knowsDigest: (_number, digest) => ports.store.journal.findSheetIssued(digest) !== null,
+    // A store in which nothing was ever done has no say in which sheets there are.
+    knowsDigest:
+      ports.store.journal.count() === 0
+        ? null
+        : (_number, digest) => ports.store.journal.findSheetIssued(digest) !== null,
   });
 }

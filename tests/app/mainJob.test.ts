@@ -9,6 +9,7 @@ import type { SheetRequest } from "../../src/domain/sheetRecord.ts";
 import type { Subject } from "../../src/domain/subject.ts";
 import { readFonts } from "../../src/shells/readFonts.ts";
 import { openStore } from "../../src/store/openStore.ts";
+import { testPorts } from "./ports.ts";
 
 const LEVELS = [0.5, 0.8, 0.9, 0.95];
 let handlers: Handlers;
@@ -146,6 +147,14 @@ describe("a sheet", () => {
     const { entries, chainIntact } = await handlers.listJournal({ offset: 0, limit: 50 });
     expect(entries.find((entry) => entry.act === "sheet-issued" && entry.facts.number === sheet.number)).toBeDefined();
     expect(chainIntact).toBe(true);
+  });
+
+  test("is verified by a store that knows nothing, which then says nothing of its journal", async () => {
+    const { bytesBase64 } = await issue();
+    const elsewhere = createHandlers(testPorts({ fonts: readFonts(), programVersion: "0.1.0" }));
+    const report = await elsewhere.verifySheet({ bytesBase64 });
+    expect(report).toMatchObject({ verdict: "stands", knownToJournal: null });
+    expect(report.sentence).not.toContain("journal");
   });
 
   test("with one changed byte anywhere is altered, and says so", async () => {

@@ -28,11 +28,9 @@ function textOf(report: VerificationReport): string {
 async function run({ places, given }: VerbInput): Promise<VerbOutput> {
   const store = optional(given, "store");
   const bytesBase64 = readBase64(places[0] ?? "");
-  const report = await withStore({ storePath: store ?? IN_MEMORY, create: store === null }, async (ask) => {
-    const found = await ask("verifySheet", { bytesBase64 });
-    // An empty store knows no sheet: that says nothing about this one.
-    return store === null ? { ...found, knownToJournal: null } : found;
-  });
+  const report = await withStore({ storePath: store ?? IN_MEMORY, create: store === null }, (ask) =>
+    ask("verifySheet", { bytesBase64 }),
+  );
   const refused = report.verdict !== "stands";
   return { text: textOf(report), json: { ok: !refused, ...report }, refused };
 }
