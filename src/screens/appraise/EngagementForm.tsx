@@ -2,6 +2,7 @@
 import { useState } from "react";
 import { formatDay } from "../../domain/format.ts";
 import type { Engagement, Subject } from "../../domain/subject.ts";
+import { SectionHeading } from "../parts/index.ts";
 import css from "./EngagementForm.module.css";
 
 export interface EngagementFormProps {
@@ -50,12 +51,16 @@ export function EngagementForm(props: EngagementFormProps) {
   const [isOpen, setIsOpen] = useState(false);
   return (
     <section aria-labelledby="engagement-heading">
-      <div className={css.heading}>
-        <h2 id="engagement-heading">Engagement</h2>
-        <button type="button" className={css.change} aria-expanded={isOpen} onClick={() => setIsOpen(!isOpen)}>
-          {isOpen ? "Done" : "Change"}
-        </button>
-      </div>
+      <SectionHeading
+        id="engagement-heading"
+        aside={
+          <button type="button" className={css.change} aria-expanded={isOpen} onClick={() => setIsOpen(!isOpen)}>
+            {isOpen ? "Done" : "Change"}
+          </button>
+        }
+      >
+        Engagement
+      </SectionHeading>
       {isOpen ? <Fields {...props} /> : <Facts {...props} />}
     </section>
   );

@@ -9,7 +9,7 @@ import {
   roundTo,
   roundToAddUp,
 } from "../../domain/format.ts";
-import { StrongMoney } from "../parts/index.ts";
+import { SectionHeading, StrongMoney, TextLink } from "../parts/index.ts";
 import css from "./PullRows.module.css";
 
 const SHOWN = 3;
@@ -32,12 +32,9 @@ export function LedgerTeaser({ appraisal }: { readonly appraisal: Appraisal }) {
   const names = listWords(ledger.leftOut.map((one) => lowerStart(one.label)));
   return (
     <section aria-labelledby="teaser-heading">
-      <div className={css.heading}>
-        <h2 id="teaser-heading">
-          {ledger.leftOut.length === 0 ? "Every attribute speaks for itself" : `Who carries the ${names}`}
-        </h2>
-        <a href="#/price-model">Open the ledger</a>
-      </div>
+      <SectionHeading id="teaser-heading" aside={<TextLink href="#/price-model">Open the ledger</TextLink>}>
+        {ledger.leftOut.length === 0 ? "Every attribute speaks for itself" : `Who carries the ${names}`}
+      </SectionHeading>
       <p className={css.note}>
         <StrongMoney text={ledger.headline} />
       </p>

@@ -2,6 +2,7 @@
 import { useState } from "react";
 import type { ModelReport, PricePart, Pull } from "../../domain/appraisal.ts";
 import { formatDay, formatNumber, formatSigned, lowerStart, niceStep, roundTo } from "../../domain/format.ts";
+import { SectionHeading, TextLink } from "../parts/index.ts";
 import css from "./PullRows.module.css";
 
 export interface PullRowsProps {
@@ -25,14 +26,16 @@ export function PullRows({ priced, report, currencyCode }: PullRowsProps) {
   const largest = Math.max(...top.map((one) => Math.abs(one.weight)), Number.MIN_VALUE);
   return (
     <section aria-labelledby="pull-heading">
-      <div className={css.heading}>
-        <h2 id="pull-heading">Sales that pull hardest</h2>
-        {top.length > FEW ? (
-          <button type="button" onClick={() => setIsWhole(!isWhole)} aria-expanded={isWhole}>
-            {isWhole ? `First ${FEW}` : `First ${top.length}`}
-          </button>
-        ) : null}
-      </div>
+      <SectionHeading
+        id="pull-heading"
+        aside={
+          top.length > FEW ? (
+            <TextLink onPress={() => setIsWhole(!isWhole)}>{isWhole ? `First ${FEW}` : `First ${top.length}`}</TextLink>
+          ) : undefined
+        }
+      >
+        Sales that pull hardest
+      </SectionHeading>
       <p className={css.note}>
         {sentence}
         {negativeCount > 0 ? ` ${formatNumber(negativeCount)} pull the other way.` : ""}
