@@ -42,13 +42,13 @@ function moreOrLess(amount: number, step: number, currencyCode: string): string 
   return `${money(amount, step, currencyCode)} ${amount < 0 ? "less" : "more"}`;
 }
 
-/** "Each extra 1,000 h", "Each extra year of age", "Make Orveld, against Tessaly,", "A sale 12 months later". */
+/** "Each extra 1,000 h", "Each extra year of age", "Make Orveld, against Tessaly,", "Coupler, yes against no,", "A sale 12 months later". */
 export function subjectOf(row: Pick<LedgerRow, "attribute" | "label" | "level" | "stepWords">): string {
   if (row.attribute === MARKET_KEY) return `A sale ${row.stepWords} later`;
   if (row.level === null) return `Each extra ${stepOfLabel(row)}`;
   return row.stepWords.startsWith("against")
     ? `${row.label} ${row.level}, ${row.stepWords},`
-    : `${row.label}: ${row.level}`;
+    : `${row.label}, ${row.stepWords},`;
 }
 
 /** "1,000 h" where the unit already says it, else "10 kW of power", "year of age", "10 % more lot size". */

@@ -71,7 +71,7 @@ test.each([
   [{ label: "Power (kW)", stepWords: "10\u00a0kW" }, "Each extra 10\u00a0kW of power"],
   [{ label: "Lot size", stepWords: "10\u00a0% more" }, "Each extra 10\u00a0% of lot size"],
   [{ label: "Make", level: "Orveld", stepWords: "against Tessaly" }, "Make Orveld, against Tessaly,"],
-  [{ label: "Coupler", level: "yes", stepWords: "yes against no" }, "Coupler: yes"],
+  [{ label: "Coupler", level: "yes", stepWords: "yes against no" }, "Coupler, yes against no,"],
   [{ attribute: "market", label: "Market movement", stepWords: "12\u00a0months" }, "A sale 12\u00a0months later"],
 ])("a step is said as people say it: %o", (change, words) => {
   expect(subjectOf(row(change))).toBe(words);
