@@ -1,5 +1,5 @@
 /** The draft of the item at hand: what is still missing, the valuer's own adjustments, the pages as they would print, and issuing. */
-import { useCallback, useMemo, useState } from "react";
+import { useCallback, useEffect, useMemo, useState } from "react";
 import type { RequestInput } from "../../contract/requests.ts";
 import { listWords } from "../../domain/format.ts";
 import type { SheetRequest } from "../../domain/sheetRecord.ts";
@@ -28,6 +28,18 @@ export function missingFrom(engagement: Engagement): string[] {
   return NEEDED.filter(([key]) => String(engagement[key]).trim() === "").map(([, words]) => words);
 }
 
+/** The pages are set once typing rests. */
+const REST_MS = 500;
+
+function useRested<Value>(value: Value | null): Value | null {
+  const [rested, setRested] = useState(value);
+  useEffect(() => {
+    const rest = setTimeout(() => setRested(value), REST_MS);
+    return () => clearTimeout(rest);
+  }, [value]);
+  return rested ?? value;
+}
+
 export function DraftSheet({ bench, onIssued }: DraftSheetProps) {
   const { client, classId, model, subject, engagement, levels, appraisal } = bench;
   const [adjustments, setAdjustments] = useState<readonly Adjustment[]>([]);
@@ -40,8 +52,9 @@ export function DraftSheet({ bench, onIssued }: DraftSheetProps) {
     const request: SheetRequest = { model, subject, engagement, levels, overrideReason, adjustments };
     return { classId, request } as RequestInput<"previewSheet">;
   }, [classId, model, subject, engagement, levels, reason, adjustments, isPriced]);
-  const ask = useCallback(() => client.ask("previewSheet", input!), [client, input]);
-  const preview = useRead(input === null ? null : ask);
+  const rested = useRested(input);
+  const ask = useCallback(() => client.ask("previewSheet", rested!), [client, rested]);
+  const preview = useRead(rested === null ? null : ask);
   if (engagement === null || subject === null) return <Busy words="Opening the draft" />;
   if (!isPriced) {
     return (
@@ -75,10 +88,8 @@ export function DraftSheet({ bench, onIssued }: DraftSheetProps) {
       </div>
       {missing.length === 0 ? null : (
         <Notice kind="refusal">
-          A price may not stand on a sheet without its {listWords(missing)}.{" "}
-          <a className={css.link} href="#/appraise">
-            Fill these in under Appraise, Engagement
-          </a>
+          A price may not stand on a sheet without its {listWords(missing)}. Fill these in under Engagement, on the
+          left.
         </Notice>
       )}
       {isBeyond ? (

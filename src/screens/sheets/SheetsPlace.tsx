@@ -1,12 +1,14 @@
 /** Sheets: a draft of the item at hand, what has been issued, and verifying a sheet from its file. */
 import { useCallback, useState } from "react";
+import { EngagementForm } from "../appraise/EngagementForm.tsx";
 import { goTo, useRoute } from "../frame/useRoute.ts";
 import { Busy, ErrorNote, PaneLayout, SubPlaces } from "../parts/index.ts";
 import { useRead } from "../workbench/useTask.ts";
-import { useWorkbench } from "../workbench/workbench.ts";
+import { useWorkbench, type Workbench } from "../workbench/workbench.ts";
 import { DraftSheet } from "./DraftSheet.tsx";
 import { IssuedSheet } from "./IssuedSheet.tsx";
 import { SheetList } from "./SheetList.tsx";
+import css from "./Sheets.module.css";
 import { VerifySheet } from "./VerifySheet.tsx";
 
 export function SheetsPlace() {
@@ -26,6 +28,7 @@ export function SheetsPlace() {
   const left = (
     <>
       <SubPlaces label="Sheets" places={[view("draft", "Draft"), view("verify", "Verify a sheet")]} />
+      {open === "draft" ? <Engagement bench={bench} /> : null}
       {error === null ? null : <ErrorNote error={error} />}
       {sheets === null ? <Busy words="Reading the sheets" /> : <SheetList sheets={sheets} open={open} />}
     </>
@@ -46,4 +49,20 @@ export function SheetsPlace() {
       />
     );
   return <PaneLayout name="sheets" leftWidth={400} leftLabel="Sheets" rightLabel="Sheet" left={left} right={right} />;
+}
+
+/** What the draft states about the assignment: the same words as under Appraise, changed here or there. */
+function Engagement({ bench }: { bench: Workbench }) {
+  const { engagement, subject, changeEngagement, changeSubject } = bench;
+  if (engagement === null || subject === null) return null;
+  return (
+    <div className={css.engagement}>
+      <EngagementForm
+        engagement={engagement}
+        subject={subject}
+        onEngagement={(change) => changeEngagement((now) => ({ ...now, ...change }))}
+        onSubject={(change) => changeSubject((now) => ({ ...now, ...change }), Object.keys(change).join())}
+      />
+    </div>
+  );
 }
