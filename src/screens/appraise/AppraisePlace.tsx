@@ -1,6 +1,7 @@
 /** Appraise: the subject on the left, its price and everything that explains it on the right. */
 import type { Appraisal, PricePart, Range } from "../../domain/appraisal.ts";
 import { formatDay, formatMoney, levelWords, roundingStep, roundOutward, roundTo } from "../../domain/format.ts";
+import { priceBasisWords } from "../../domain/sale.ts";
 import { BuiltUpSteps } from "../charts/BuiltUpSteps.tsx";
 import { partStep, priceStep } from "../charts/figures.ts";
 import { RangeGauge } from "../charts/RangeGauge.tsx";
@@ -52,7 +53,12 @@ function Priced({ bench, appraisal, priced }: PricedProps) {
     <>
       <Headline bench={bench} appraisal={appraisal} priced={priced} />
       <div className={css.gauge}>
-        <RangeGauge price={priced.price} currencyCode={currencyCode} level={bench.level} />
+        <RangeGauge
+          price={priced.price}
+          currencyCode={currencyCode}
+          level={bench.level}
+          basisWords={basisWordsOf(bench)}
+        />
       </div>
       <div className={css.two}>
         <section aria-labelledby="built-up">
@@ -142,6 +148,11 @@ function Caveats({ appraisal }: { readonly appraisal: Appraisal }) {
       </ol>
     </section>
   );
+}
+
+/** "EUR, premium in, tax out" */
+function basisWordsOf({ assetClass }: Workbench): string {
+  return assetClass === null ? "" : `${assetClass.currencyCode}, ${priceBasisWords(assetClass.priceBasis)}`;
 }
 
 /** "9 in 10" → "Nine in ten" */
