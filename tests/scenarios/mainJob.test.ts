@@ -73,6 +73,26 @@ describeNeeding("chromium", "the main job on the screens", (executablePath) => {
     await page.getByText("597 of 640 sales are evidence").waitFor();
   });
 
+  test("narrows the register by the hairline under a column's head, and by the same numbers as fields", async () => {
+    const grid = page.getByRole("grid");
+    const rowCount = async (): Promise<number> => Number(await grid.getAttribute("aria-rowcount"));
+    const line = await grid.locator("th", { hasText: "hours" }).locator("svg").boundingBox();
+    await page.mouse.move(line!.x + 3, line!.y + 7);
+    await page.mouse.down();
+    await page.mouse.move(line!.x + line!.width / 2, line!.y + 7, { steps: 4 });
+    await page.mouse.up();
+    await page.getByRole("button", { name: /^Narrow hours from [\d,]+$/ }).waitFor();
+    await expect.poll(rowCount).toBeLessThan(500);
+    await page.getByRole("button", { name: /^Narrow/ }).click();
+    await page.getByLabel("hours from").fill("");
+    await expect.poll(rowCount).toBe(641);
+    await page.getByLabel("hours to").fill("1000");
+    await expect.poll(rowCount).toBeLessThan(100);
+    await page.keyboard.press("Escape");
+    await page.getByText("show all", { exact: true }).click();
+    await expect.poll(rowCount).toBe(641);
+  });
+
   test("verifies a picked sale with how it was verified", async () => {
     await page.getByRole("searchbox").fill("MB-1675");
     await expect.poll(() => page.getByRole("grid").getAttribute("aria-rowcount")).toBe("2");

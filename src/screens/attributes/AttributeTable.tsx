@@ -32,10 +32,10 @@ export function AttributeTable({ caption, attributes, evidence, subject, openKey
         <tr>
           <th scope="col">attribute</th>
           <th scope="col">what it is</th>
-          <th scope="col" className="num">
+          <th scope="col" className={`num ${css.step}`}>
             one more is
           </th>
-          <th scope="col" className="num">
+          <th scope="col" className={`num ${css.allowed}`}>
             allowed
           </th>
           <th scope="col">the price</th>
@@ -58,8 +58,8 @@ export function AttributeTable({ caption, attributes, evidence, subject, openKey
                 </button>
               </th>
               <td>{kindWords(attribute)}</td>
-              <td className="num">{stepWords(attribute)}</td>
-              <td className="num">{allowedWords(attribute)}</td>
+              <td className={`num ${css.step}`}>{stepWords(attribute)}</td>
+              <td className={`num ${css.allowed}`}>{allowedWords(attribute)}</td>
               <td className="soft">{directionWords(attribute)}</td>
               <td>
                 <Evidence

@@ -62,11 +62,11 @@ function Definitions({ assetClass }: { assetClass: AssetClass }) {
   return (
     <PaneLayout
       name="attributes"
-      leftWidth={Math.max(560, window.innerWidth - 480)}
+      rightWidth={480}
       leftLabel="Attributes"
       rightLabel="One attribute"
       left={
-        <>
+        <div className={css.left}>
           <div className={css.top}>
             <h1>
               {formatNumber(used.length)} {used.length === 1 ? "attribute" : "attributes"} of a {assetClass.itemWord}
@@ -84,7 +84,7 @@ function Definitions({ assetClass }: { assetClass: AssetClass }) {
               {table("Archived attributes", archived)}
             </section>
           )}
-        </>
+        </div>
       }
       right={
         <>

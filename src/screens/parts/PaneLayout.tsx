@@ -9,6 +9,8 @@ export interface PaneLayoutProps {
   readonly right: ReactNode;
   /** Width of the left pane in pixels until somebody drags it. */
   readonly leftWidth?: number;
+  /** Instead of leftWidth: the right pane has this width, and the left the wide share, in a narrow window too. */
+  readonly rightWidth?: number;
   readonly leftLabel?: string;
   readonly rightLabel?: string;
 }
@@ -27,9 +29,10 @@ function remembered(name: string): number | null {
 }
 
 export function PaneLayout(props: PaneLayoutProps) {
-  const { name, left, right, leftWidth = 468, leftLabel = "Evidence", rightLabel = "Outcome" } = props;
+  const { name, left, right, leftWidth = 468, rightWidth, leftLabel = "Evidence", rightLabel = "Outcome" } = props;
   const [chosen, setChosen] = useState<number | null>(() => remembered(name));
-  const width = chosen ?? leftWidth;
+  const wanted =
+    chosen !== null || rightWidth === undefined ? `${chosen ?? leftWidth}px` : `calc(100% - ${rightWidth}px)`;
   const choose = (next: number): void => {
     const kept = Math.round(Math.min(widest(), Math.max(NARROWEST, next)));
     setChosen(kept);
@@ -43,10 +46,13 @@ export function PaneLayout(props: PaneLayoutProps) {
     const step = event.key === "ArrowLeft" ? -KEY_STEP : event.key === "ArrowRight" ? KEY_STEP : 0;
     if (step === 0) return;
     event.preventDefault();
-    choose(width + step);
+    choose(event.currentTarget.offsetLeft + event.currentTarget.offsetWidth / 2 + step);
   };
   return (
-    <div className={css.panes} style={{ "--wanted": `${width}px` } as CSSProperties}>
+    <div
+      className={rightWidth === undefined ? css.panes : `${css.panes} ${css.wideLeft}`}
+      style={{ "--wanted": wanted } as CSSProperties}
+    >
       <section className={css.left} aria-label={leftLabel}>
         {left}
       </section>
@@ -56,7 +62,7 @@ export function PaneLayout(props: PaneLayoutProps) {
         role="separator"
         aria-orientation="vertical"
         aria-label="Width of the left pane"
-        aria-valuenow={width}
+        aria-valuenow={chosen ?? (rightWidth === undefined ? leftWidth : widest() + NARROWEST - rightWidth)}
         aria-valuemin={NARROWEST}
         tabIndex={0}
         onPointerDown={(event) => event.currentTarget.setPointerCapture(event.pointerId)}

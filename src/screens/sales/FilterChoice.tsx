@@ -14,6 +14,7 @@ export interface FilterChoiceProps {
 
 export function FilterChoice({ label, words, isSet, opensUp = false, children }: FilterChoiceProps) {
   const [isOpen, setOpen] = useState(false);
+  const [opensBack, setOpensBack] = useState(false);
   const whole = useRef<HTMLDivElement>(null);
   const opener = useRef<HTMLButtonElement>(null);
   const id = useId();
@@ -42,16 +43,29 @@ export function FilterChoice({ label, words, isSet, opensUp = false, children }:
         type="button"
         aria-expanded={isOpen}
         aria-controls={isOpen ? id : undefined}
-        onClick={() => setOpen(!isOpen)}
+        onClick={(event) => {
+          setOpensBack(isNearEdge(event.currentTarget));
+          setOpen(!isOpen);
+        }}
       >
         {label} <b className={isSet ? css.set : undefined}>{words}</b>
       </button>
       {isOpen ? (
-        <fieldset id={id} className={opensUp ? `${css.panel} ${css.up}` : css.panel}>
+        <fieldset id={id} className={[css.panel, opensUp ? css.up : "", opensBack ? css.back : ""].join(" ")}>
           <legend className="vh">{label}</legend>
           {children}
         </fieldset>
       ) : null}
     </div>
   );
+}
+
+/** The widest panel, in pixels. */
+const WIDEST = 510;
+
+/** True where a panel would run out of its pane to the right, and has the room to the left. */
+function isNearEdge(opener: HTMLElement): boolean {
+  const own = opener.getBoundingClientRect();
+  const pane = opener.closest("section")?.getBoundingClientRect();
+  return pane !== undefined && own.left + WIDEST > pane.right && own.right - WIDEST > pane.left;
 }

@@ -5,7 +5,7 @@ import type { AttributeEvidence } from "../../domain/appraisal.ts";
 import type { AssetClass } from "../../domain/assetClass.ts";
 import { formatNumber } from "../../domain/format.ts";
 import type { Sale } from "../../domain/sale.ts";
-import { columnsFor } from "./columns.ts";
+import { columnsFor, widthOf } from "./columns.ts";
 import type { SaleState } from "./evidenceState.ts";
 import css from "./Register.module.css";
 import { RegisterHead } from "./RegisterHead.tsx";
@@ -90,6 +90,7 @@ export function RegisterTable(props: RegisterTableProps) {
           aria-activedescendant={isInSight ? cellId(cursor.row, cursor.column) : undefined}
           data-column={columns[cursor.column - 1]?.id}
           onKeyDown={press}
+          style={{ minWidth: widthOf(columns) }}
         >
           <colgroup>
             <col style={{ width: 24 }} />

@@ -60,7 +60,7 @@ function Worktable({ assetClass }: { assetClass: AssetClass }) {
   return (
     <PaneLayout
       name="sales"
-      leftWidth={Math.max(560, window.innerWidth - RIGHT)}
+      rightWidth={RIGHT}
       leftLabel="Sales register"
       rightLabel="What it comes to"
       left={

@@ -20,6 +20,9 @@ export const TITLE_LEAST = 116;
 
 const PICK_WIDTH = 24;
 
+/** Below this width in pixels the channel goes to the sale's own account and the way of verifying is cut short. */
+const NARROW = 700;
+
 /** Years at sale of a built day, or null. */
 export function ageAtSale(built: AttributeValue | undefined, soldOn: string): number | null {
   const from = typeof built === "string" ? dayNumber(built) : null;
@@ -111,18 +114,23 @@ export function columnsFor(
     text("soldOn", "sold on", 86),
     text("title", assetClass.itemWord, TITLE_LEAST),
   ];
+  const isNarrow = width < NARROW;
   const after: RegisterColumn[] = [
-    text("channel", "through", 56),
+    ...(isNarrow ? [] : [text("channel", "through", 56)]),
     { ...text("price", assetClass.currencyCode, 62), isNumber: true },
-    text("verified", "verified", 118),
+    text("verified", "verified", isNarrow ? 84 : 118),
     text("state", "state", 122),
   ];
-  const fixed = [...before, ...after].reduce((sum, column) => sum + column.width, PICK_WIDTH);
-  let left = width - fixed;
+  let left = width - widthOf([...before, ...after]);
   const own = attributeColumns(assetClass.attributes).filter(({ id, width: needed }) => {
     if (hidden.has(id) || needed > left) return false;
     left -= needed;
     return true;
   });
   return [...before, ...own, ...after];
+}
+
+/** What the columns need at least, the pick boxes included. */
+export function widthOf(columns: readonly RegisterColumn[]): number {
+  return columns.reduce((sum, { width }) => sum + width, PICK_WIDTH);
 }

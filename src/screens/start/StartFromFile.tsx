@@ -38,7 +38,7 @@ export function StartFromFile({ file, onBack }: { file: PickedFile; onBack: () =
   return (
     <PaneLayout
       name="bring-in"
-      leftWidth={Math.max(560, window.innerWidth - 520)}
+      rightWidth={520}
       leftLabel="The file"
       rightLabel="What would come of it"
       left={

@@ -19,7 +19,7 @@ export function BringIn({ assetClass }: { assetClass: AssetClass }) {
   return (
     <PaneLayout
       name="bring-in"
-      leftWidth={Math.max(560, window.innerWidth - 520)}
+      rightWidth={520}
       leftLabel="The file"
       rightLabel="What would come of it"
       left={
