@@ -283,4 +283,13 @@ describeNeeding("chromium", "the main job on the screens", (executablePath) => {
   test("wrote nothing to the console that a developer would have to look at", () => {
     expect(workshop.complaints).toEqual([]);
   });
+
+  test("says what happened and what to do when the program has ended", async () => {
+    await go("Sales");
+    await page.getByRole("grid").getByText("in evidence").first().waitFor();
+    await workshop.endProgram();
+    await page.getByRole("button", { name: /^sold on/ }).click();
+    await page.getByRole("alert").getByText("The program does not answer.").first().waitFor();
+    expect(await lookAt(page, "ended")).toEqual([]);
+  });
 });

@@ -23,6 +23,8 @@ export interface Workshop {
   readonly folder: string;
   /** What the page wrote to its console as an error, and what it threw. */
   readonly complaints: readonly string[];
+  /** Ends the program and leaves the page open. */
+  endProgram(): Promise<void>;
   close(): Promise<void>;
 }
 
@@ -54,10 +56,15 @@ export async function openWorkshop(executablePath: string): Promise<Workshop> {
     stdio: ["ignore", "pipe", "pipe"],
   });
   let browser: Browser | null = null;
+  const endProgram = async (): Promise<void> => {
+    if (child.exitCode !== null || child.signalCode !== null) return;
+    const ended = new Promise((resolve) => child.once("exit", resolve));
+    child.kill();
+    await ended;
+  };
   const close = async (): Promise<void> => {
     await browser?.close();
-    const ended = new Promise((resolve) => child.once("exit", resolve));
-    if (child.exitCode === null && child.kill()) await ended;
+    await endProgram();
     rmSync(folder, { recursive: true, force: true });
   };
   try {
@@ -70,7 +77,7 @@ export async function openWorkshop(executablePath: string): Promise<Workshop> {
       if (message.type() === "error") complaints.push(message.text());
     });
     await page.goto(address);
-    return { page, folder, complaints, close };
+    return { page, folder, complaints, endProgram, close };
   } catch (cause) {
     await close();
     throw cause;

@@ -1,5 +1,5 @@
 /** Beside the register: what it comes to, what is being asked, and the rows that are held back. */
-import { useCallback, useEffect, useState } from "react";
+import { useCallback, useEffect, useRef, useState } from "react";
 import type { AssetClass } from "../../domain/assetClass.ts";
 import { formatNumber } from "../../domain/format.ts";
 import type { Sale } from "../../domain/sale.ts";
@@ -38,6 +38,11 @@ export function EvidencePane({ assetClass, register, stateOf, onAnswered }: Evid
     return words === null ? null : { words, undo: null };
   });
   useEffect(forgetOutcome, []);
+  // The row that had the keyboard is gone: what was said of it takes it, and Tab goes on to the next row.
+  const said = useRef<HTMLParagraphElement>(null);
+  useEffect(() => {
+    if (done !== null && document.activeElement === document.body) said.current?.focus({ preventScroll: true });
+  }, [done]);
   const held = useHeldBack(classId, assetClass.dataVersion);
   const { meant, asking, ask, clearPicks } = register;
   const saleIds = meant.map(({ id }) => id);
@@ -87,14 +92,14 @@ export function EvidencePane({ assetClass, register, stateOf, onAnswered }: Evid
         <Busy words="Judging which sales are evidence …" />
       )}
       {done === null ? null : (
-        <p className={css.done} role="status">
+        <p ref={said} className={css.done} role="status" tabIndex={-1}>
           {done.words}{" "}
           {done.undo === null ? null : (
             <TextLink
               onPress={() => {
                 const { undo } = done;
                 setDone(null);
-                void task.run(() => undo!().then(reload));
+                void task.run(() => undo!().then(reload)).then(onAnswered);
               }}
             >
               Undo

@@ -141,13 +141,14 @@ function Verified({ sale: { verification } }: { sale: Sale }) {
   return (
     <span title={`${how}, by ${by} on ${on}`}>
       <span className={css.verified} aria-hidden="true" />
-      {initialsOf(by)}, {how}
+      {[initialsOf(by), how].filter((part) => part !== "").join(", ")}
     </span>
   );
 }
 
-/** "M. Ansell" → "MA" */
+/** "M. Ansell" → "MA"; nothing for "not stated", which is no name. */
 export function initialsOf(name: string): string {
+  if (!/\p{Lu}/u.test(name)) return "";
   const parts = name.split(/[\s.,]+/).filter((part) => part !== "");
   return parts.length <= 1 ? name : parts.map((part) => part.charAt(0).toUpperCase()).join("");
 }

@@ -82,11 +82,11 @@ export function RegisterTable(props: RegisterTableProps) {
           tabIndex={0}
           // biome-ignore lint/a11y/noNoninteractiveElementToInteractiveRole: a table whose cells are moved over by key is a grid
           role="grid"
-          className={book.isStale ? `${css.grid} ${css.stale}` : css.grid}
+          className={book.isStale && book.error === null ? `${css.grid} ${css.stale}` : css.grid}
           aria-label={`Sales of ${assetClass.name}`}
           aria-rowcount={total + 1}
           aria-multiselectable="true"
-          aria-busy={book.isStale}
+          aria-busy={book.isStale && book.error === null}
           aria-activedescendant={isInSight ? cellId(cursor.row, cursor.column) : undefined}
           data-column={columns[cursor.column - 1]?.id}
           onKeyDown={press}

@@ -106,7 +106,9 @@ function RegisterWhole({ assetClass, register, evidence, stateOf }: WholeProps) 
       <RegisterBar assetClass={assetClass} register={register} evidence={evidence} saleCount={saleCount} />
       {book.error === null ? null : <ErrorNote error={book.error} />}
       {picking.error === null ? null : <ErrorNote error={picking.error} />}
-      {saleCount === 0 && book.total === 0 ? (
+      {book.total === null ? (
+        <div className={css.rest}>{book.error === null ? <Busy words="Reading the register …" /> : null}</div>
+      ) : saleCount === 0 && book.total === 0 ? (
         <EmptyState sentence="No sales yet. Bring in a file of sales: an auction’s result list, or a spreadsheet saved as CSV.">
           <Button primary onClick={() => goTo("sales", "bring-in")}>
             Bring in sales

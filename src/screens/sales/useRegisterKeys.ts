@@ -1,4 +1,4 @@
-/** The register by keyboard: arrows, PgUp/PgDn, Home/End move; Space picks; Shift with an arrow picks on; V verifies, X sets aside. */
+/** The register by keyboard: arrows, PgUp/PgDn, Home/End move; Space picks; Shift with an arrow picks on; V verifies, X sets aside, S sorts by the column under the cursor. */
 import { type KeyboardEvent, useCallback } from "react";
 import type { Register } from "./useRegister.ts";
 

@@ -127,7 +127,7 @@ describe("a row of the register", () => {
     expect(valueText(built, null, "2026-01-01")).toBe("");
     expect(priceText({ ...sales[0]!, priceMinor: 1_234_500, currencyCode: "EUR" })).toBe("12,345");
     expect(priceText({ ...sales[0]!, priceMinor: 1_234_550, currencyCode: "EUR" })).toBe("12,345.50");
-    expect(initialsOf("M. Ansell")).toBe("MA");
+    expect([initialsOf("M. Ansell"), initialsOf("Thorley"), initialsOf("not stated")]).toEqual(["MA", "Thorley", ""]);
   });
 
   test("gives attributes room as far as the width goes, and hides what is hidden", () => {
