@@ -1,155 +1,164 @@
 /**
- * Which columns are exact combinations of earlier ones (and a constant), and the equation in the simplest numbers.
- * Order-preserving: earlier columns are kept. A column is dependent when no row differs from the combination by more than
- *   T = relativeTolerance · (root mean square deviation of the column) + 4 · (what storing the columns as doubles may cost),
- * where whole numbers cost nothing and other columns half a unit in the last place of their largest value. So a large
- * offset neither invents a dependency (whole serial numbers are exact) nor hides one (decimals get the room they need).
- * Symbols: n rows; z centred columns; Q orthonormal columns of those kept so far; r what is left of a column.
+ * Exact linear dependencies among columns, in the order the columns stand: an earlier column is kept, a later one that is
+ * a combination of kept ones (and the constant) is dependent. Gram–Schmidt, each projection done twice (Giraud, Langou &
+ * Rozložník 2005), on centred and scaled columns; then the coefficients are read off and made as simple as they can be.
+ * A column depends on others when what is left of it is below RELATIVE_TOLERANCE of its centred length, plus what storing
+ * its values as doubles may have cost. 1.36 × kW, exact in decimals only, is found; kW rounded to a whole hp is not.
  */
-import { accumulateMoments, type Moments } from "./accumulateMoments.ts";
-import { type Centring, centreColumns, measureCentring, storedError } from "./centreColumns.ts";
-import { choleskyFactor, invertUpper, scaledCondition, timesOwnTranspose } from "./choleskyFactor.ts";
+import { centreColumns, measureCentring, storedError } from "./centreColumns.ts";
 import { checkColumns } from "./numericsError.ts";
-import { type Combination, describeCombination } from "./simplestCombination.ts";
-import type { Ratio } from "./simplestNumber.ts";
-
-export interface DependencyOptions {
-  readonly intercept: boolean;
-  /** T's first part; 1e-9 unless said. */
-  readonly relativeTolerance?: number;
-  /** Moments of the columns, in order, when they are at hand (more columns may follow): spares a pass in ordinary cases. */
-  readonly moments?: Moments;
-}
+import { type Ratio, simplestRatio } from "./simplestRatio.ts";
 
 export interface DependencyTerm {
   readonly column: number;
   readonly coefficient: number;
-  /** The coefficient as a fraction in lowest terms, when it is a short one. */
+  /** The coefficient as a ratio of small whole numbers, where one reproduces the column. */
   readonly ratio: Ratio | null;
 }
 
-/** column = constant + Σ coefficient · column, over the terms. */
 export interface Dependency {
   readonly column: number;
   readonly constant: number;
-  readonly terms: DependencyTerm[];
-  /** Largest difference between the two sides, relative to the column's spread (to its size if it is constant). */
+  readonly terms: readonly DependencyTerm[];
+  /** Largest |difference| between the column and the equation, relative to the column's largest value. */
   readonly exactness: number;
 }
 
 export interface Dependencies {
-  readonly kept: number[];
-  readonly dependent: Dependency[];
+  readonly kept: readonly number[];
+  readonly dependent: readonly Dependency[];
 }
 
-export const DEFAULT_TOLERANCE = 1e-9;
-/** A column with more than this share left over is independent without a closer look. */
-const CLEARLY_LEFT = 1e-6;
+export interface DependencyOptions {
+  readonly intercept: boolean;
+  readonly relativeTolerance?: number;
+}
 
-/** Kept and dependent columns, in column order. Refuses shape and notFinite. */
+export const RELATIVE_TOLERANCE = 1e-11;
+/** A coefficient whose column would move the dependent one by less than this share of its length is none. */
+const NO_PART = 1e-8;
+
+/** Kept columns and one equation per dependent one. Refuses shape and notFinite. A constant column has only a constant. */
 export function findDependencies(columns: readonly Float64Array[], options: DependencyOptions): Dependencies {
-  checkColumns(columns.length > 0 ? columns : [new Float64Array(1)]);
-  if (isClearlyIndependent(columns, options)) return { kept: columns.map((_, j) => j), dependent: [] };
+  // A choice of one level makes no column: a model of nothing else has none to compare, which is no error.
+  if (columns.length === 0) return { kept: [], dependent: [] };
+  checkColumns(columns);
   const centring = measureCentring(columns, options.intercept);
-  const z = centreColumns(columns, centring);
-  const stored = columns.map(storedError);
-  const tolerance = options.relativeTolerance ?? DEFAULT_TOLERANCE;
-  const kept: number[] = [];
-  const basis: Float64Array[] = [];
+  const centred = centreColumns(columns, centring);
+  const basis: Basis = { vectors: [], rows: [], columns: [] };
   const dependent: Dependency[] = [];
-  for (let j = 0; j < columns.length; j++) {
-    const direction = leftOver(z[j]!, basis);
-    const share = Math.max(CLEARLY_LEFT, (100 * stored[j]!) / centring.spreads[j]!);
-    const found =
-      direction.share > share && centring.spreads[j]! > 8 * stored[j]!
-        ? null
-        : describeCombination({ columns, centring, stored, kept, column: j, tolerance, intercept: options.intercept });
-    if (found !== null) dependent.push(asDependency(found, j, centring));
-    else {
-      kept.push(j);
-      basis.push(direction.unit);
+  columns.forEach((column, j) => {
+    const z = centred[j]!;
+    const length = Math.sqrt(dotOf(z, z));
+    const stored = (storedError(column) / centring.scales[j]!) * Math.sqrt(column.length) * 4;
+    const floor = Math.max((options.relativeTolerance ?? RELATIVE_TOLERANCE) * length, stored);
+    const parts = project(basis, z);
+    const rest = Math.sqrt(dotOf(parts.rest, parts.rest));
+    if (rest > floor) {
+      basis.vectors.push(parts.rest.map((value) => value / rest));
+      basis.rows.push([...parts.coordinates, rest]);
+      basis.columns.push(j);
+    } else {
+      dependent.push(
+        describe(columns, j, combine(basis, parts.coordinates, length, centred), centring, options.intercept),
+      );
     }
+  });
+  return { kept: basis.columns, dependent };
+}
+
+interface Basis {
+  /** Orthonormal, one per kept column. */
+  readonly vectors: Float64Array[];
+  /** R by kept column: coordinates on the earlier vectors and on its own. */
+  readonly rows: number[][];
+  readonly columns: number[];
+}
+
+function project(basis: Basis, z: Float64Array): { rest: Float64Array; coordinates: number[] } {
+  const rest = Float64Array.from(z);
+  const coordinates = basis.vectors.map(() => 0);
+  for (let pass = 0; pass < 2; pass++) {
+    basis.vectors.forEach((q, at) => {
+      const share = dotOf(q, rest);
+      coordinates[at]! += share;
+      for (let i = 0; i < rest.length; i++) rest[i]! -= share * q[i]!;
+    });
   }
-  return { kept, dependent };
+  return { rest, coordinates };
 }
 
-export interface Estimable {
-  /** null when there is no intercept. */
-  readonly intercept: boolean | null;
-  readonly columns: boolean[];
-}
-
-/**
- * Which single coefficients the data determine: those of columns that no dependency mentions (x_j is then outside the span
- * of the others; Searle 1971, ch. 5). The others change with the choice of the column that is left out.
- */
-export function estimable(columns: readonly Float64Array[], options: DependencyOptions): Estimable {
-  return estimableFrom(findDependencies(columns, options).dependent, columns.length, options.intercept);
-}
-
-/** The same from dependencies that are known already. */
-export function estimableFrom(dependent: readonly Dependency[], columnCount: number, intercept: boolean): Estimable {
-  const isFree = new Array<boolean>(columnCount).fill(true);
-  for (const dependency of dependent) {
-    for (const column of [dependency.column, ...dependency.terms.map((term) => term.column)]) isFree[column] = false;
+/** Coefficients on the centred, scaled kept columns, by back substitution; none where its part would be too small to matter. */
+function combine(
+  basis: Basis,
+  coordinates: readonly number[],
+  length: number,
+  centred: readonly Float64Array[],
+): { column: number; coefficient: number }[] {
+  const k = basis.columns.length;
+  const solved = new Array<number>(k).fill(0);
+  for (let a = k - 1; a >= 0; a--) {
+    let value = coordinates[a]!;
+    for (let b = a + 1; b < k; b++) value -= basis.rows[b]![a]! * solved[b]!;
+    solved[a] = value / basis.rows[a]![a]!;
   }
-  return { intercept: intercept ? dependent.every((d) => d.constant === 0) : null, columns: isFree };
+  return solved
+    .map((coefficient, a) => ({ column: basis.columns[a]!, coefficient }))
+    .filter(({ column, coefficient }) => {
+      if (coefficient === 0) return false;
+      const z = centred[column]!;
+      return Math.abs(coefficient) * Math.sqrt(dotOf(z, z)) >= NO_PART * length;
+    });
 }
 
-/** True when the moments alone rule out any dependency: a condition number below 1e4 leaves no room for one. */
-function isClearlyIndependent(columns: readonly Float64Array[], options: DependencyOptions): boolean {
-  const k = columns.length;
-  if (k === 0) return true;
-  if (columns[0]!.length <= k) return false;
-  const moments = options.moments ?? accumulateMoments(columns);
-  const q = moments.scales.length;
-  const c = new Float64Array(k * k);
-  for (let i = 0; i < k; i++) {
-    for (let j = 0; j < k; j++) {
-      const product = (moments.means[i]! / moments.scales[i]!) * (moments.means[j]! / moments.scales[j]!);
-      c[i * k + j] = moments.crossProducts[i * q + j]! + (options.intercept ? 0 : moments.rowCount * product);
-    }
-  }
-  const r = choleskyFactor(c, k, 1e-8);
-  if (typeof r === "number") return false;
-  if (hasBarelySpread(columns, moments, options.intercept)) return false;
-  return scaledCondition(c, timesOwnTranspose(invertUpper(r, k), k), k) < 1e4;
-}
-
-/** A spread near the rounding of the values themselves says nothing: look at the rows. */
-function hasBarelySpread(columns: readonly Float64Array[], moments: Moments, intercept: boolean): boolean {
-  return intercept && columns.some((_, j) => moments.scales[j]! < 1e-6 * Math.abs(moments.means[j]!));
-}
-
-/** What is left of z after projecting on the basis twice (once is not enough: Giraud, Langou & Rozložník 2005). */
-function leftOver(z: Float64Array, basis: readonly Float64Array[]): { share: number; unit: Float64Array } {
-  const rest = z.slice();
-  const whole = norm(z);
-  for (let round = 0; round < 2; round++) {
-    for (const q of basis) {
-      let s = 0;
-      for (let i = 0; i < rest.length; i++) s += q[i]! * rest[i]!;
-      for (let i = 0; i < rest.length; i++) rest[i] = rest[i]! - s * q[i]!;
-    }
-  }
-  const size = norm(rest);
-  return { share: whole > 0 ? size / whole : 0, unit: size > 0 ? rest.map((v) => v / size) : rest };
-}
-
-function norm(values: Float64Array): number {
-  let total = 0;
-  for (let i = 0; i < values.length; i++) total += values[i]! * values[i]!;
-  return Math.sqrt(total);
-}
-
-function asDependency(found: Combination, column: number, centring: Centring): Dependency {
-  const spread = centring.spreads[column]!;
-  const isConstant = found.terms.length === 0;
-  const size = isConstant ? Math.abs(found.constant) : spread;
-  return {
+function describe(
+  columns: readonly Float64Array[],
+  j: number,
+  scaled: readonly { column: number; coefficient: number }[],
+  centring: ReturnType<typeof measureCentring>,
+  intercept: boolean,
+): Dependency {
+  const target = columns[j]!;
+  const size = target.reduce((largest, value) => Math.max(largest, Math.abs(value)), 0) || 1;
+  const raw = scaled.map(({ column, coefficient }) => ({
     column,
-    constant: found.constant,
-    terms: found.terms,
-    exactness: size > 0 ? found.largestResidual / size : 0,
-  };
+    coefficient: (coefficient * centring.scales[j]!) / centring.scales[column]!,
+  }));
+  const simple = raw.map((term): DependencyTerm => {
+    const ratio = simplestRatio(term.coefficient, 1e-9);
+    return { ...term, coefficient: ratio === null ? term.coefficient : ratio.numerator / ratio.denominator, ratio };
+  });
+  const rounded = equation(columns, j, simple, intercept, size);
+  if (rounded.exactness <= 1e-9) return rounded;
+  return equation(
+    columns,
+    j,
+    raw.map((term) => ({ ...term, ratio: null })),
+    intercept,
+    size,
+  );
+}
+
+function equation(
+  columns: readonly Float64Array[],
+  j: number,
+  terms: readonly DependencyTerm[],
+  intercept: boolean,
+  size: number,
+): Dependency {
+  const target = columns[j]!;
+  const left = target.map((value, i) =>
+    terms.reduce((rest, term) => rest - term.coefficient * columns[term.column]![i]!, value),
+  );
+  const mean = intercept ? left.reduce((sum, value) => sum + value, 0) / left.length : 0;
+  const simple = simplestRatio(mean, 1e-9);
+  const constant = Math.abs(mean) < 1e-9 * size ? 0 : simple === null ? mean : simple.numerator / simple.denominator;
+  const exactness = left.reduce((largest, value) => Math.max(largest, Math.abs(value - constant)), 0) / size;
+  return { column: j, constant, terms, exactness };
+}
+
+function dotOf(a: Float64Array, b: Float64Array): number {
+  let sum = 0;
+  for (let i = 0; i < a.length; i++) sum += a[i]! * b[i]!;
+  return sum;
 }

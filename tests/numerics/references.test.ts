@@ -83,6 +83,19 @@ describe("exact dependencies of the machinery file", () => {
     );
   });
 
+  test("no columns at all are no dependencies, not an error", () => {
+    expect(findDependencies([], { intercept: true })).toEqual({ kept: [], dependent: [] });
+  });
+
+  test("a conversion factor of many decimals stays the decimal it is, and a match to ten digits is not exact", () => {
+    const kw = columns[names.indexOf("kw")]!;
+    const [found] = findDependencies([kw, kw.map((value) => value * 1.34102209)], { intercept: true }).dependent;
+    expect(found!.terms[0]!.coefficient).toBeCloseTo(1.34102209, 12);
+    expect(found!.terms[0]!.ratio).toBeNull();
+    const near = kw.map((value) => value * (1 + 1e-10 * Math.sin(value)));
+    expect(findDependencies([kw, near], { intercept: true }).dependent).toEqual([]);
+  });
+
   test("large offsets neither hide a dependency nor make one up", () => {
     const base = Float64Array.from({ length: 40 }, (_, i) => Math.sin(i * 1.7) + (i % 7));
     const far = base.map((value) => 2 ** 27 + value);
