@@ -148,3 +148,18 @@ export function listWords(words: readonly string[]): string {
   if (words.length <= 1) return words.join("");
   return `${words.slice(0, -1).join(", ")} and ${words[words.length - 1]}`;
 }
+
+/** Commas only where thousands are parted as the program itself writes them, a point before decimals. */
+const TYPED_NUMBER = /^[+-]?(\d+|\d{1,3}(,\d{3})+)(\.\d+)?$/;
+
+/**
+ * A number as a person types it into a form, or null when it could be meant otherwise: "1,500.5" and "1500.5" are read,
+ * "1,5", "1500,50" and "1.500,50" are not. Nothing is guessed, since the number goes into a price.
+ */
+export function readTypedNumber(text: string): number | null {
+  const plain = text
+    .trim()
+    .replace(/[\u00a0\u202f ]/g, "")
+    .replace("\u2212", "-");
+  return TYPED_NUMBER.test(plain) ? Number(plain.replaceAll(",", "")) : null;
+}

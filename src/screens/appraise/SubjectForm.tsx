@@ -7,7 +7,7 @@ import type { AttributeEvidence, Reach } from "../../domain/appraisal.ts";
 import type { Attribute, AttributeValue } from "../../domain/attribute.ts";
 import { CHANNEL_KEY } from "../../domain/attribute.ts";
 import { dayNumber, yearsBetween } from "../../domain/day.ts";
-import { formatNumber } from "../../domain/format.ts";
+import { formatNumber, readTypedNumber } from "../../domain/format.ts";
 import { CHANNELS } from "../../domain/sale.ts";
 import type { Subject } from "../../domain/subject.ts";
 import { EvidenceHairline } from "../charts/EvidenceHairline.tsx";
@@ -227,7 +227,7 @@ function NumberField({
   const problem = text === null ? null : problemOf(text, field.attribute);
   const typed = (next: string) => {
     setText(next);
-    if (problemOf(next, field.attribute) === null) onChange(Number(next.replace(/[\s,]/g, "")));
+    if (problemOf(next, field.attribute) === null) onChange(readTypedNumber(next));
   };
   return (
     <>
@@ -260,8 +260,9 @@ function decimalsOf(value: number, attribute: Attribute | null): number {
 }
 
 function problemOf(text: string, attribute: Attribute | null): string | null {
-  const number = Number(text.replace(/[\s,]/g, "").replace("−", "-"));
-  if (text.trim() === "" || !Number.isFinite(number)) return "Enter a number, or tick not known.";
+  if (text.trim() === "") return "Enter a number, or tick not known.";
+  const number = readTypedNumber(text);
+  if (number === null) return "Not read: write 4,200.5, with a point before decimals.";
   const { lowest, highest } = attribute ?? { lowest: null, highest: null };
   if (lowest !== null && number < lowest) return `At least ${formatNumber(lowest, decimalsOf(lowest, null))}.`;
   if (highest !== null && number > highest) return `At most ${formatNumber(highest, decimalsOf(highest, null))}.`;

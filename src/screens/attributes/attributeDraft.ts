@@ -1,5 +1,7 @@
 /** An attribute as it is being written: text in every field, and what is wrong with it in words. */
+
 import { type Attribute, type AttributeKind, keyOf } from "../../domain/attribute.ts";
+import { readTypedNumber } from "../../domain/format.ts";
 
 export interface AttributeDraft {
   readonly label: string;
@@ -46,14 +48,9 @@ export function draftOf(attribute: Attribute): AttributeDraft {
   };
 }
 
-/** Number as typed, with a comma or a point; null when empty, NaN when it is none. */
+/** Number as typed; null when empty, NaN when it cannot be read in one way only. */
 function read(text: string): number | null {
-  const plain = text
-    .trim()
-    .replace(/[\s\u00a0]/g, "")
-    .replace("\u2212", "-")
-    .replace(",", ".");
-  return plain === "" ? null : Number(plain);
+  return text.trim() === "" ? null : (readTypedNumber(text) ?? Number.NaN);
 }
 
 function linesOf(text: string): string[] {
@@ -79,8 +76,8 @@ export function faultsOf(draft: AttributeDraft, others: readonly string[]): Draf
     const [step, decimals, lowest, highest] = [draft.step, draft.decimals, draft.lowest, draft.highest].map(read);
     if (step === null || !(step! > 0)) faults.step = "A number above zero.";
     if (!Number.isInteger(decimals) || decimals! < 0 || decimals! > 6) faults.decimals = "A whole number from 0 to 6.";
-    if (Number.isNaN(lowest)) faults.lowest = "This is no number.";
-    if (Number.isNaN(highest)) faults.highest = "This is no number.";
+    if (Number.isNaN(lowest)) faults.lowest = "Not read as a number: write 1,000.5, with a point before decimals.";
+    if (Number.isNaN(highest)) faults.highest = "Not read as a number: write 1,000.5, with a point before decimals.";
     else if (typeof lowest === "number" && typeof highest === "number" && lowest > highest) {
       faults.highest = "Lower than the lowest.";
     }

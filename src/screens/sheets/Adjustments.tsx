@@ -1,6 +1,6 @@
 /** The valuer's own adjustments after the model's price, each with a reason that prints. */
 import { useState } from "react";
-import { formatSigned } from "../../domain/format.ts";
+import { formatSigned, readTypedNumber } from "../../domain/format.ts";
 import { Button, SectionHeading } from "../parts/index.ts";
 import css from "./Sheets.module.css";
 
@@ -20,9 +20,11 @@ export function Adjustments({ adjustments, currencyCode, onChange }: Adjustments
   const [label, setLabel] = useState("");
   const [amount, setAmount] = useState("");
   const [reason, setReason] = useState("");
-  const number = Number(amount.replace(/[\s,]/g, "").replace("−", "-"));
-  const isWhole = label.trim() !== "" && reason.trim() !== "" && amount.trim() !== "" && Number.isFinite(number);
+  const number = readTypedNumber(amount);
+  const isUnread = amount.trim() !== "" && number === null;
+  const isWhole = label.trim() !== "" && reason.trim() !== "" && number !== null;
   const add = () => {
+    if (number === null) return;
     onChange([...adjustments, { label: label.trim(), amount: number, reason: reason.trim() }]);
     setLabel("");
     setAmount("");
@@ -35,8 +37,10 @@ export function Adjustments({ adjustments, currencyCode, onChange }: Adjustments
       </SectionHeading>
       <ul className={css.adjustments}>
         {adjustments.map((one, index) => (
-          <li key={`${one.label} ${one.reason}`}>
-            <b>{one.label}</b> {formatSigned(one.amount)} <span className="soft">{one.reason}</span>{" "}
+          // biome-ignore lint/suspicious/noArrayIndexKey: two adjustments may be alike in every word
+          <li key={index}>
+            <b>{one.label}</b> {formatSigned(one.amount, Number.isInteger(one.amount) ? 0 : 2)}{" "}
+            <span className="soft">{one.reason}</span>{" "}
             <Button onClick={() => onChange(adjustments.filter((_, other) => other !== index))}>Take out</Button>
           </li>
         ))}
@@ -54,7 +58,12 @@ export function Adjustments({ adjustments, currencyCode, onChange }: Adjustments
         </label>
         <label>
           Amount, + or −
-          <input inputMode="decimal" value={amount} onChange={(event) => setAmount(event.target.value)} />
+          <input
+            inputMode="decimal"
+            aria-invalid={isUnread}
+            value={amount}
+            onChange={(event) => setAmount(event.target.value)}
+          />
         </label>
         <label>
           Reason, which prints
@@ -64,6 +73,11 @@ export function Adjustments({ adjustments, currencyCode, onChange }: Adjustments
           Add
         </Button>
       </form>
+      {isUnread ? (
+        <p role="alert" className="brick small">
+          “{amount}” can be read in more than one way, or in none. Write it with a point before decimals: 1,500.50.
+        </p>
+      ) : null}
     </section>
   );
 }

@@ -70,7 +70,9 @@ export function DraftSheet({ bench, onIssued }: DraftSheetProps) {
   const reach = appraisal!.priced!.reach;
   const isBeyond = reach.verdict === "beyond";
   const unreasoned = adjustments.some((one) => one.reason.trim() === "" || one.label.trim() === "");
-  const isReady = missing.length === 0 && !unreasoned && (!isBeyond || reason.trim() !== "");
+  // What is issued is what is shown: not while the pages still speak of an earlier draft.
+  const isShown = rested === input && preview.value !== null && !preview.isAwaited;
+  const isReady = isShown && missing.length === 0 && !unreasoned && (!isBeyond || reason.trim() !== "");
   const issue = async () => {
     const issued = await issuing.run(() => client.ask("issueSheet", input as RequestInput<"issueSheet">));
     if (issued !== null) await onIssued(issued.sheet.id);

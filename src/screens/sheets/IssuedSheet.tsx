@@ -33,14 +33,15 @@ export function IssuedSheet({ client, sheet, onChanged }: IssuedSheetProps) {
       <div className={css.top}>
         <Sentence>
           Sheet <strong>{sheet.number}</strong>: {sheet.title} at{" "}
-          <strong>{formatMoney(sheet.amount, sheet.currencyCode)}</strong>, {sheet.state}{" "}
-          {formatDay(sheet.issuedAtUtc.slice(0, 10))}.
+          <strong>{formatMoney(sheet.amount, sheet.currencyCode)}</strong>, issued{" "}
+          {formatDay(sheet.issuedAtUtc.slice(0, 10))}
+          {sheet.state === "issued" ? "." : ` and since ${sheet.state}.`}
         </Sentence>
         <div className={css.acts}>
           <Button
             primary
             disabled={value === null}
-            onClick={() => void saveFile(`${sheet.number}.pdf`, value!.bytesBase64)}
+            onClick={() => void act.run(() => saveFile(`${sheet.number}.pdf`, value!.bytesBase64))}
           >
             Save PDF
           </Button>

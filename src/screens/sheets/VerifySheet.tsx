@@ -1,15 +1,21 @@
 /** Verifying a sheet from its file alone: drop it or pick it, and every figure is worked out again. */
 import { useState } from "react";
 import type { Client } from "../../contract/client.ts";
-import { Sentence } from "../parts/index.ts";
+import { ErrorNote, Sentence } from "../parts/index.ts";
 import { FileDoor } from "../sales/bringIn/FileDoor.tsx";
+import { useTask } from "../workbench/useTask.ts";
 import { base64Of } from "./pdfFiles.ts";
 import { VerificationView } from "./VerificationView.tsx";
 
 export function VerifySheet({ client }: { readonly client: Client }) {
   const [file, setFile] = useState<{ name: string; bytesBase64: string } | null>(null);
+  const [picks, setPicks] = useState(0);
+  const reading = useTask();
   const take = async (picked: File) => {
-    setFile({ name: picked.name, bytesBase64: await base64Of(picked) });
+    setFile(null);
+    const bytesBase64 = await reading.run(() => base64Of(picked));
+    setPicks((now) => now + 1);
+    setFile(bytesBase64 === null ? null : { name: picked.name, bytesBase64 });
   };
   return (
     <>
@@ -22,10 +28,11 @@ export function VerifySheet({ client }: { readonly client: Client }) {
         accept="application/pdf,.pdf"
         onFile={(picked) => void take(picked)}
       />
+      {reading.error === null ? null : <ErrorNote error={reading.error} />}
       {file === null ? null : (
         <>
           <p className="soft">{file.name}</p>
-          <VerificationView client={client} bytesBase64={file.bytesBase64} />
+          <VerificationView key={picks} client={client} bytesBase64={file.bytesBase64} />
         </>
       )}
     </>

@@ -1,5 +1,8 @@
 /** Bytes of a PDF between the contract's base64 and what a page can show, save and read. */
 
+import { RequestRefused } from "../../contract/client.ts";
+import type { Reply } from "../../contract/reply.ts";
+
 export function blobOf(bytesBase64: string): Blob {
   const text = atob(bytesBase64);
   const bytes = new Uint8Array(text.length);
@@ -18,7 +21,8 @@ export async function base64Of(file: Blob): Promise<string> {
 /** Saves through the window's own dialog where there is one, else as a download. */
 export async function saveFile(fileName: string, bytesBase64: string): Promise<void> {
   if (window.bridge !== undefined) {
-    await window.bridge.request("saveFile", { fileName, bytesBase64 });
+    const reply = (await window.bridge.request("saveFile", { fileName, bytesBase64 })) as Reply<unknown>;
+    if (!reply.ok) throw new RequestRefused(reply.error);
     return;
   }
   const url = URL.createObjectURL(blobOf(bytesBase64));

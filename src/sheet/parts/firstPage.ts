@@ -1,6 +1,6 @@
 /** Page 1 in words: item, price, what it rests on, facts, three caveats, signature. It stands alone when copied alone. */
 import type { Range } from "../../domain/appraisal.ts";
-import type { Attribute } from "../../domain/attribute.ts";
+import { type Attribute, CHANNEL_KEY, MARKET_KEY } from "../../domain/attribute.ts";
 import { formatDay, formatMoney, formatNumber, formatPercent, levelWords, lowerStart } from "../../domain/format.ts";
 import { amountInWords } from "../amountInWords.ts";
 import { ruleRange } from "../concludePrice.ts";
@@ -127,7 +127,9 @@ function restsOn({ sheet, appraisal, priced }: SheetContext): Fact[] {
     rows.push(["Sold", `${formatDay(evidence.firstSoldOn)} to ${formatDay(evidence.lastSoldOn)}`]);
   }
   const out = report.leftOut.length;
-  rows.push(["Attributes", `${report.attributes.length} in, ${out === 0 ? "none" : out} left out`]);
+  // As the price strip counts: market movement and channel are of the sale, not of the item.
+  const own = report.attributes.filter((key) => key !== MARKET_KEY && key !== CHANNEL_KEY).length;
+  rows.push(["Attributes", `${own} in, ${out === 0 ? "none" : out} left out`]);
   const where = { inside: "inside the evidence", edge: "at the edge of the evidence", beyond: "beyond the evidence" };
   rows.push(["Reach", where[priced.reach.verdict]]);
   if (report.looTypicalError !== null) {

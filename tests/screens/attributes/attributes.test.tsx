@@ -81,7 +81,9 @@ describe("the form of an attribute", () => {
     );
     const twice = { ...NEW_DRAFT, label: "Case", kind: "choice" as const, levels: "oak\n\n oak " };
     expect(faultsOf(twice, []).levels).toContain("twice");
-    expect(faultsOf({ ...NEW_DRAFT, label: "Forks", lowest: "1 000,5", highest: "2000" }, [])).toEqual({});
+    expect(faultsOf({ ...NEW_DRAFT, label: "Forks", lowest: "1 000.5", highest: "2,000" }, [])).toEqual({});
+    const comma = faultsOf({ ...NEW_DRAFT, label: "Forks", lowest: "1 000,5", highest: "2000" }, []);
+    expect(comma.lowest).toMatch(/point before decimals/);
   });
 
   test("makes a key of its own for a name that gives one that is taken", () => {
