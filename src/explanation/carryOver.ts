@@ -4,8 +4,10 @@
  *   b_A(short) − b_A(long) = Δ·b_B(long),  Δ = (X_A'X_A)⁻¹X_A'X_B   (X centred; Goldberger 1991, ch. 17; Gelbach 2016, eq. 5).
  * own part of a = b_a(long); carried part from attribute g = Σ over its columns j of Δ_{a,j}·b_j(long).
  */
+
 import type { Ledger, LedgerRow, ModelReport } from "../domain/appraisal.ts";
 import type { Design, Fit } from "../hedonic/fit.ts";
+import { numbersOf } from "../numerics/column.ts";
 import { solveLeastSquares } from "../numerics/solveLeastSquares.ts";
 import { type ComesWith, ledgerHeadline, type Move, rowSentence } from "./ledgerWords.ts";
 
@@ -75,7 +77,7 @@ function associate(design: Design, included: readonly number[], leftOut: readonl
     slopes:
       columns.length === 0
         ? new Float64Array(0)
-        : solveLeastSquares(columns, design.columns[column]!.values, { intercept: true }).slopes,
+        : solveLeastSquares(columns, numbersOf(design.columns[column]!.values), { intercept: true }).slopes,
   }));
 }
 

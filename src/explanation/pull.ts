@@ -3,11 +3,13 @@
  *   w_i = 1/n + (x₀ − x̄)'C⁻¹(x_i − x̄),  C = X'X centred;  Σ w_i = 1 with an intercept;
  * and the fit without sale i is ŷ₀ − w_i·e_i/(1 − h_i) in closed form (Cook & Weisberg 1982, §2.2).
  */
+
 import type { Pull, PullReport } from "../domain/appraisal.ts";
 import { dayOf } from "../domain/day.ts";
 import { formatMoney, formatNumber, niceStep, roundTo } from "../domain/format.ts";
 import type { SaleColumns } from "../domain/sale.ts";
 import type { Fit, SubjectRow } from "../hedonic/fit.ts";
+import { numbersOf, valueAt } from "../numerics/column.ts";
 
 /** Sales listed by name; the others are summed in one row. */
 const LISTED = 40;
@@ -28,7 +30,7 @@ export function pullWeights(fit: Fit, row: SubjectRow): Float64Array {
   }
   const weights = new Float64Array(n).fill(1 / n);
   for (let a = 0; a < k; a++) {
-    const values = columns[fit.columns[a]!]!.values;
+    const values = numbersOf(columns[fit.columns[a]!]!.values);
     const mean = fit.solution.means[a]!;
     for (let i = 0; i < n; i++) weights[i]! += direction[a]! * (values[i]! - mean);
   }
@@ -72,7 +74,7 @@ function describe({ fit, row, sales, ...input }: PullInput, weights: Float64Arra
   for (const group of fit.groups) {
     const column = group.columns[0]!;
     if (group.form !== "line" || group.isMarket) continue;
-    differences[group.key] = fit.design.columns[column]!.values[i]! - row.x[column]!;
+    differences[group.key] = valueAt(fit.design.columns[column]!.values, i) - row.x[column]!;
   }
   return {
     sale: sales.ids[at]!,

@@ -3,6 +3,7 @@
  * Rows are ordered by sold-on day, then id, so that the order in which sales were entered never changes a bit.
  * Age at sale = (sold on − built)/365.2425 years; market movement in months since the first sale of the evidence.
  */
+
 import type { NewAssetClass } from "../domain/assetClass.ts";
 import { CHANNEL_KEY, MARKET_KEY } from "../domain/attribute.ts";
 import { DAYS_PER_MONTH, yearsBetween } from "../domain/day.ts";
@@ -10,6 +11,7 @@ import { AppError } from "../domain/errors.ts";
 import type { ModelAttribute, PriceModel } from "../domain/priceModel.ts";
 import { CHANNELS, type SaleColumns } from "../domain/sale.ts";
 import { accumulateMoments } from "../numerics/accumulateMoments.ts";
+import { type Column, numbersOf } from "../numerics/column.ts";
 import type { AttributeGroup, Design, DesignColumn } from "./fit.ts";
 import type { FormSource } from "./forms/form.ts";
 import { FORMS } from "./forms/index.ts";
@@ -49,6 +51,7 @@ export function buildDesign(
     columns,
     groups,
     moments: accumulateMoments([...columns.map((column) => column.values), response]),
+    weights: null,
   };
 }
 
@@ -133,6 +136,7 @@ function addMarket(columns: DesignColumn[], soldOn: Float64Array): AttributeGrou
   };
 }
 
-function meanOf(values: Float64Array): number {
+function meanOf(column: Column): number {
+  const values = numbersOf(column);
   return values.reduce((sum, value) => sum + value, 0) / values.length;
 }

@@ -2,8 +2,10 @@
  * Shapes that the computing rooms share. X is n × p without the intercept; groups tie columns to attributes, so that a
  * choice moves as one attribute. Made by buildDesign and fitColumns; read by valuation and explanation.
  */
+
 import type { AttributeForm, ResponseForm } from "../domain/priceModel.ts";
 import type { Moments } from "../numerics/accumulateMoments.ts";
+import type { Column } from "../numerics/column.ts";
 import type { LeastSquaresSolution } from "../numerics/solveLeastSquares.ts";
 
 export interface DesignColumn {
@@ -12,7 +14,7 @@ export interface DesignColumn {
   /** Level of a choice ("yes" for yes/no), null for numbers. */
   readonly level: string | null;
   /** n values in the form's own scale (ln already taken; built → age in years; market → months from the first sale). */
-  readonly values: Float64Array;
+  readonly values: Column;
   readonly mean: number;
 }
 
@@ -48,6 +50,18 @@ export interface Design {
   readonly groups: readonly AttributeGroup[];
   /** Moments of [...columns, response]. */
   readonly moments: Moments;
+  /** n weights (recency), or null when every sale counts alike. */
+  readonly weights: Float64Array | null;
+}
+
+/**
+ * Every estimator comes down to this: weights for the sales and penalties for the columns, with which least squares gives
+ * its coefficients. So ledger, built-up and pull hold for all of them, at these weights and penalties.
+ */
+export interface FitRule {
+  readonly weights: Float64Array | null;
+  /** One per column of the design, in raw units; null = none. */
+  readonly penalty: Float64Array | null;
 }
 
 /** A fit of some groups of a design. */
@@ -56,6 +70,7 @@ export interface Fit {
   readonly groups: readonly AttributeGroup[];
   /** Design column indexes in the order of solution.slopes. */
   readonly columns: readonly number[];
+  readonly rule: FitRule;
   readonly solution: LeastSquaresSolution;
   readonly leverages: Float64Array;
   /** HC3 standard errors of the slopes; null when leverage 1 or no residual df forbids them. */

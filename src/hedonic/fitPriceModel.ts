@@ -3,26 +3,33 @@
  * names here, once: what numerics refuses is said again in the words of the class.
  */
 import { AppError } from "../domain/errors.ts";
+import type { Column } from "../numerics/column.ts";
 import { hcCovariance } from "../numerics/hcCovariance.ts";
 import { leverages } from "../numerics/leverages.ts";
 import { NumericsError } from "../numerics/numericsError.ts";
 import { type LeastSquaresSolution, solveLeastSquares } from "../numerics/solveLeastSquares.ts";
-import type { AttributeGroup, Design, Fit } from "./fit.ts";
+import type { AttributeGroup, Design, Fit, FitRule } from "./fit.ts";
 
 /** A leverage this near 1 means that a sale is the only one of its kind: HC3 divides by (1 − h)² and is not given. */
 const FULL_LEVERAGE = 1 - 1e-9;
 
+/** Least squares with the design's own weights. */
+export function plainRule(design: Design): FitRule {
+  return { weights: design.weights, penalty: null };
+}
+
 /** Refuses (family "fit"): too few sales for the coefficients; columns that still depend on each other. */
-export function fitColumns(design: Design, groups: readonly AttributeGroup[]): Fit {
+export function fitColumns(design: Design, groups: readonly AttributeGroup[], rule = plainRule(design)): Fit {
   const columns = groups.flatMap((group) => [...group.columns]);
   const values = columns.map((index) => design.columns[index]!.values);
-  const solution = solve(design, values, columns, groups);
+  const solution = solve(design, values, columns, groups, rule);
   const h = leverages(values, solution);
   const robust = h.some((one) => one > FULL_LEVERAGE) ? null : hcCovariance(values, solution, "HC3");
   return {
     design,
     groups,
     columns,
+    rule,
     solution,
     leverages: h,
     hc3StandardErrors: robust?.standardErrors ?? null,
@@ -32,12 +39,18 @@ export function fitColumns(design: Design, groups: readonly AttributeGroup[]): F
 
 function solve(
   design: Design,
-  values: readonly Float64Array[],
+  values: readonly Column[],
   columns: readonly number[],
   groups: readonly AttributeGroup[],
+  rule: FitRule,
 ): LeastSquaresSolution {
   try {
-    return solveLeastSquares(values, design.response, { intercept: true });
+    const { weights, penalty } = rule;
+    return solveLeastSquares(values, design.response, {
+      intercept: true,
+      ...(weights === null ? {} : { weights }),
+      ...(penalty === null ? {} : { penalty: Float64Array.from(columns, (column) => penalty[column]!) }),
+    });
   } catch (cause) {
     if (!(cause instanceof NumericsError)) throw cause;
     throw inWords(cause, design, columns, groups);

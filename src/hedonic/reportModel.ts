@@ -2,10 +2,12 @@
  * A fit as the report that screens and sheets show. t ranges at 95 %; money per step at the average sale: after ln,
  * P̄(e^(b·step) − 1) with P̄ = exp(mean ln price). Leave-one-out: e_i/(1 − h_i) (Allen 1974, PRESS). Smearing: Duan 1983.
  */
+
 import type { AttributeEvidence, Coefficient, ModelReport } from "../domain/appraisal.ts";
 import { MARKET_KEY } from "../domain/attribute.ts";
 import type { PriceModel } from "../domain/priceModel.ts";
 import { correlation, inflation, partialCorrelation } from "../numerics/collinearity.ts";
+import { numbersOf } from "../numerics/column.ts";
 import { quantileOfSorted } from "../numerics/quantile.ts";
 import { tUpperQuantile } from "../numerics/studentT.ts";
 import type { AttributeGroup, Design, Fit } from "./fit.ts";
@@ -145,13 +147,14 @@ function evidenceOf(design: Design, group: AttributeGroup, fit: Fit): AttributeE
   if (group.form === "choice" || group.form === "yesNo") {
     const counts = columns.map(({ level, values }) => ({
       level: level!,
-      count: values.reduce((sum, one) => sum + one, 0),
+      count: numbersOf(values).reduce((sum, one) => sum + one, 0),
     }));
     const rest = design.n - counts.reduce((sum, { count }) => sum + count, 0);
     const levels = [{ level: group.reference ?? "", count: rest }, ...counts];
     return { ...base, included, spread: null, levels, reference: group.reference };
   }
-  const raw = group.form === "ln" ? columns[0]!.values.map((value) => Math.exp(value)) : columns[0]!.values;
+  const stored = numbersOf(columns[0]!.values);
+  const raw = group.form === "ln" ? stored.map((value) => Math.exp(value)) : stored;
   const sorted = Float64Array.from(raw).sort();
   const at = (p: number) => quantileOfSorted(sorted, p);
   const mean = raw.reduce((sum, value) => sum + value, 0) / raw.length;

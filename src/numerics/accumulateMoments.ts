@@ -5,6 +5,7 @@
  * Symbols: n rows, q columns, m means (q), c scales (q), S cross-products (q × q): S_jk = Σ (x_ij − m_j)(x_ik − m_k)/(c_j c_k).
  * Pairwise merging: Chan, Golub & LeVeque 1983. Adding or removing one row: Welford 1962.
  */
+import { type Column, numbersOf } from "./column.ts";
 import { add, fromNumber, mean, subtract } from "./doubleDouble.ts";
 import { checkColumns, NumericsError } from "./numericsError.ts";
 
@@ -26,7 +27,8 @@ const TILE_ROWS = 256;
 const TILE_STRIDE = TILE_ROWS + 8;
 
 /** Moments of the columns. Refuses (shape, notFinite) unequal lengths, no rows, values that are not finite. */
-export function accumulateMoments(columns: readonly Float64Array[]): Moments {
+export function accumulateMoments(given: readonly Column[]): Moments {
+  const columns = given.map(numbersOf);
   const rowCount = checkColumns(columns);
   if (columns.length === 0) throw new NumericsError("shape", "there are no columns");
   const parts: Moments[] = [];

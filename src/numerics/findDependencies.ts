@@ -5,7 +5,9 @@
  * A column depends on others when what is left of it is below RELATIVE_TOLERANCE of its centred length, plus what storing
  * its values as doubles may have cost. 1.36 × kW, exact in decimals only, is found; kW rounded to a whole hp is not.
  */
+
 import { centreColumns, measureCentring, storedError } from "./centreColumns.ts";
+import { type Column, numbersOf } from "./column.ts";
 import { checkColumns } from "./numericsError.ts";
 import { type Ratio, simplestRatio } from "./simplestRatio.ts";
 
@@ -39,7 +41,8 @@ export const RELATIVE_TOLERANCE = 1e-11;
 const NO_PART = 1e-8;
 
 /** Kept columns and one equation per dependent one. Refuses shape and notFinite. A constant column has only a constant. */
-export function findDependencies(columns: readonly Float64Array[], options: DependencyOptions): Dependencies {
+export function findDependencies(given: readonly Column[], options: DependencyOptions): Dependencies {
+  const columns = given.map(numbersOf);
   // A choice of one level makes no column: a model of nothing else has none to compare, which is no error.
   if (columns.length === 0) return { kept: [], dependent: [] };
   checkColumns(columns);

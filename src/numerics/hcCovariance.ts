@@ -2,6 +2,7 @@
  * Standard errors that do not ask for an even spread: the sandwich C⁻¹(Σ ω_i d_i d_i′)C⁻¹ with
  * HC0 ω = e² (White 1980); HC1 e²·n/(n − p); HC2 e²/(1 − h); HC3 e²/(1 − h)² (MacKinnon & White 1985).
  */
+import { type Column, numbersOf } from "./column.ts";
 import { leverages } from "./leverages.ts";
 import type { LeastSquaresSolution } from "./solveLeastSquares.ts";
 
@@ -13,11 +14,8 @@ export interface HcStandardErrors {
 }
 
 /** By the rows' influence on each coefficient, g_i = C⁻¹d_i; on the intercept 1/n − x̄′g_i. Infinite where 1 − h = 0. */
-export function hcCovariance(
-  columns: readonly Float64Array[],
-  solution: LeastSquaresSolution,
-  kind: HcKind,
-): HcStandardErrors {
+export function hcCovariance(given: readonly Column[], solution: LeastSquaresSolution, kind: HcKind): HcStandardErrors {
+  const columns = given.map(numbersOf);
   const n = solution.residuals.length;
   const k = columns.length;
   const h = leverages(columns, solution);

@@ -2,10 +2,12 @@
  * Leverage of each row: h_i = 1/n + d_i′C⁻¹d_i with d_i = x_i − x̄ (Hoaglin & Welsch 1978), as the squared length of T′d_i
  * where C⁻¹ = TT′, so that nothing cancels. Without an intercept the 1/n and the means fall away.
  */
+import { type Column, numbersOf } from "./column.ts";
 import type { LeastSquaresSolution } from "./solveLeastSquares.ts";
 
 /** n leverages; they sum to the rank. */
-export function leverages(columns: readonly Float64Array[], solution: LeastSquaresSolution): Float64Array {
+export function leverages(given: readonly Column[], solution: LeastSquaresSolution): Float64Array {
+  const columns = given.map(numbersOf);
   const n = solution.residuals.length;
   const k = columns.length;
   const { rootInverse, means } = solution;

@@ -5,9 +5,11 @@
  * then corrected with residuals in double-double until nothing is left to correct.
  * Symbols: X n × k, y n, b k, e = y − b₀ − Xb, C = X′X (centred with an intercept), T with C⁻¹ = TT′, s² = e′e/(n − p).
  */
+
 import { accumulateMoments, type Moments } from "./accumulateMoments.ts";
 import { type Centring, measureCentring } from "./centreColumns.ts";
 import { choleskyFactor, invertUpper, scaledCondition, solveByRoot, timesOwnTranspose } from "./choleskyFactor.ts";
+import { type Column, numbersOf } from "./column.ts";
 import { type DoubleDouble, dot, fromNumber, mean } from "./doubleDouble.ts";
 import { type ExactInverse, exactInverse } from "./exactInverse.ts";
 import { findDependencies } from "./findDependencies.ts";
@@ -22,6 +24,10 @@ export interface LeastSquaresOptions {
   readonly path?: "auto" | "moments" | "careful";
   /** Moments of [...columns, response], when they are at hand already. */
   readonly moments?: Moments;
+  /** One weight per row, n, ≥ 0 and not all zero: Σ w e² is made least. Rows of weight zero do not count. */
+  readonly weights?: Float64Array;
+  /** One penalty per column, k, ≥ 0: Σ w e² + Σ λ_j b_j² is made least. The intercept has none. */
+  readonly penalty?: Float64Array;
 }
 
 export interface LeastSquaresSolution {
@@ -77,10 +83,11 @@ interface Start {
  * Worked value: x = 0, 1, 2 and y = 1, 3, 5.5 give slope 2.25, intercept 11/12, residual sum of squares 1/24.
  */
 export function solveLeastSquares(
-  columns: readonly Float64Array[],
+  given: readonly Column[],
   response: Float64Array,
   options: LeastSquaresOptions,
 ): LeastSquaresSolution {
+  const columns = given.map(numbersOf);
   const n = checkColumns(columns, response);
   const rank = columns.length + (options.intercept ? 1 : 0);
   if (rank === 0) throw new NumericsError("shape", "there is nothing to fit: no columns and no intercept");

@@ -3,10 +3,12 @@
  * in; jointly the subject's leverage against the largest of the evidence — hidden extrapolation (Montgomery, Peck &
  * Vining 2012, §3.8). Edge: outside the middle 98 % of values, or in a gap wider than a tenth of their span.
  */
+
 import type { Reach, ReachVerdict } from "../domain/appraisal.ts";
 import { formatNumber, listWords, lowerStart } from "../domain/format.ts";
 import type { Subject } from "../domain/subject.ts";
 import type { AttributeGroup, Fit, SubjectRow } from "../hedonic/fit.ts";
+import { numbersOf } from "../numerics/column.ts";
 import { quantileOfSorted } from "../numerics/quantile.ts";
 import { subjectLeverage } from "./estimatePrice.ts";
 
@@ -33,7 +35,7 @@ function isNumeric(group: AttributeGroup): boolean {
 function reachOfNumber(fit: Fit, group: AttributeGroup, row: SubjectRow): AttributeReach {
   const index = group.columns[0]!;
   const undo = (value: number) => (group.form === "ln" ? Math.exp(value) : value);
-  const sorted = Float64Array.from(fit.design.columns[index]!.values).sort();
+  const sorted = Float64Array.from(numbersOf(fit.design.columns[index]!.values)).sort();
   const value = row.x[index]!;
   const [low, high] = [sorted[0]!, sorted[sorted.length - 1]!];
   const verdict: ReachVerdict = value < low || value > high ? "beyond" : isAtEdge(sorted, value) ? "edge" : "inside";
@@ -73,8 +75,8 @@ function reachOfLevel(fit: Fit, group: AttributeGroup, subject: Subject): Attrib
   const level = group.form === "yesNo" ? (asked === true || asked === "yes" ? "yes" : "no") : String(asked);
   const counts = group.columns.map((index) => fit.design.columns[index]!);
   const column = counts.find((one) => one.level === level);
-  const others = counts.reduce((sum, one) => sum + one.values.reduce((total, v) => total + v, 0), 0);
-  const count = column === undefined ? fit.design.n - others : column.values.reduce((sum, v) => sum + v, 0);
+  const others = counts.reduce((sum, one) => sum + numbersOf(one.values).reduce((total, v) => total + v, 0), 0);
+  const count = column === undefined ? fit.design.n - others : numbersOf(column.values).reduce((sum, v) => sum + v, 0);
   const verdict: ReachVerdict = count === 0 ? "beyond" : count < FEW_SALES ? "edge" : "inside";
   const sales = count === 1 ? "1 sale" : `${formatNumber(count)} sales`;
   const sentence = `${sales} of the evidence ${count === 1 ? "has" : "have"} ${lowerStart(group.label)} ${level}.`;

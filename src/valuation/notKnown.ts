@@ -2,11 +2,13 @@
  * What not knowing an attribute does. The price is that of the model without it; the range is compared with the one the
  * model with it would give at the attribute's typical value. Per value the model with it says what the price would read.
  */
+
 import type { NotKnownEffect, PriceEstimate } from "../domain/appraisal.ts";
 import type { NewAssetClass } from "../domain/assetClass.ts";
 import { formatMoney, formatNumber, listWords, lowerStart, niceStep, roundTo } from "../domain/format.ts";
 import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { fitColumns } from "../hedonic/fitPriceModel.ts";
+import { numbersOf } from "../numerics/column.ts";
 import { quantileOfSorted } from "../numerics/quantile.ts";
 import { estimatePrice } from "./estimatePrice.ts";
 
@@ -69,7 +71,7 @@ function valuesOf(design: Design, group: AttributeGroup): Typical[] {
       { value: "no", x: [0] },
       { value: "yes", x: [1] },
     ];
-  const sorted = Float64Array.from(columns[0]!.values).sort();
+  const sorted = Float64Array.from(numbersOf(columns[0]!.values)).sort();
   return [0.25, 0.5, 0.75].map((p) => {
     const x = quantileOfSorted(sorted, p);
     const shown = formatNumber(group.form === "ln" ? Math.exp(x) : x, group.decimals);

@@ -2,6 +2,7 @@
  * Choice: one 0/1 column for each level that occurs in the evidence, but for the reference level.
  * Reference = the stated one if it occurs, else the most frequent (ties: the earlier in the attribute's list).
  */
+import { indicator } from "../../numerics/column.ts";
 import type { AttributeFormRule } from "./form.ts";
 
 export const choice: AttributeFormRule = {
@@ -15,10 +16,9 @@ export const choice: AttributeFormRule = {
       stated >= 0 && counts[stated]! > 0
         ? stated
         : present.reduce((best, at) => (counts[at]! > counts[best]! ? at : best), present[0] ?? -1);
+    const codes = Uint16Array.from(stored);
     return {
-      columns: present
-        .filter((at) => at !== base)
-        .map((at) => ({ level: levels[at]!, values: stored.map((level) => (level === at ? 1 : 0)) })),
+      columns: present.filter((at) => at !== base).map((at) => ({ level: levels[at]!, values: indicator(codes, at) })),
       reference: levels[base] ?? null,
       step: 1,
       stepWords: null,

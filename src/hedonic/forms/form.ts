@@ -2,7 +2,9 @@
  * A form turns an attribute's stored values into columns of the design, and a subject's value into the same columns.
  * Members share one signature, so that a design takes any of them.
  */
+
 import type { Attribute, AttributeValue } from "../../domain/attribute.ts";
+import type { Column } from "../../numerics/column.ts";
 
 export interface FormSource {
   readonly label: string;
@@ -16,7 +18,7 @@ export interface FormSource {
 }
 
 export interface FormColumns {
-  readonly columns: readonly { readonly level: string | null; readonly values: Float64Array }[];
+  readonly columns: readonly { readonly level: string | null; readonly values: Column }[];
   readonly reference: string | null;
   /** One step on the column's scale, and in words; null words where they depend on the level. */
   readonly step: number;
