@@ -6,6 +6,7 @@ import { EVERYTHING, type PriceModel, usualForm } from "../domain/priceModel.ts"
 import type { SaleColumns } from "../domain/sale.ts";
 import { computeAppraisal } from "./computeAppraisal.ts";
 import type { Ports } from "./ports.ts";
+import type { EvidenceMemory } from "./rememberEvidence.ts";
 
 export function currentModel(ports: Ports, { classId }: RequestInput<"currentModel">): RequestOutput<"currentModel"> {
   const edition = ports.store.editions.latest(classId);
@@ -43,15 +44,16 @@ export function usualModel(assetClass: AssetClass, sales: SaleColumns): PriceMod
   };
 }
 
-export function appraise(ports: Ports, input: RequestInput<"appraise">): RequestOutput<"appraise"> {
+export function appraise(
+  ports: Ports,
+  memory: EvidenceMemory,
+  input: RequestInput<"appraise">,
+): RequestOutput<"appraise"> {
   const began = performance.now();
   const assetClass = ports.store.assetClasses.get(input.classId);
-  const { appraisal } = computeAppraisal({
-    assetClass,
-    sales: ports.store.sales.readColumns(input.classId),
-    model: input.model,
-    subject: input.subject,
-    levels: input.levels,
-  });
+  const { model, subject, levels } = input;
+  const question = { assetClass, model, subject, levels };
+  const { sales, prepared } = memory.recall(assetClass, question, () => ports.store.sales.readColumns(input.classId));
+  const { appraisal } = computeAppraisal({ ...question, sales }, prepared);
   return { appraisal, dataVersion: assetClass.dataVersion, milliseconds: performance.now() - began };
 }

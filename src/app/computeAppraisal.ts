@@ -40,11 +40,23 @@ export interface ComputedAppraisal {
   readonly used: Int32Array;
 }
 
+/** What is the same for every attribute set, subject and way of estimating: which sales count, and their columns. */
+export interface PreparedEvidence {
+  readonly account: EvidenceAccount;
+  readonly used: Int32Array;
+  readonly design: Design;
+}
+
+export function prepareEvidence({ sales, assetClass, model, ...input }: AppraisalInput): PreparedEvidence {
+  const until = input.subject?.effectiveOn ?? input.effectiveOn ?? null;
+  const { account, used } = selectEvidence(sales, assetClass, model, until);
+  return { account, used, design: buildDesign(sales, used, assetClass, model) };
+}
+
 /** The evidence is bounded by the subject's effective date. Refuses what selectEvidence … fitColumns refuse (AppError). */
-export function computeAppraisal(input: AppraisalInput): ComputedAppraisal {
-  const { sales, assetClass, model, subject } = input;
-  const { account, used } = selectEvidence(sales, assetClass, model, subject?.effectiveOn ?? input.effectiveOn ?? null);
-  const design = buildDesign(sales, used, assetClass, model);
+export function computeAppraisal(input: AppraisalInput, prepared = prepareEvidence(input)): ComputedAppraisal {
+  const { assetClass, model, subject } = input;
+  const { account, used, design } = prepared;
   const row = subject === null ? null : describeSubject(design, assetClass, subject);
   const resolved = resolveDependencies(design, model, row?.notKnown ?? []);
   const stays = (group: AttributeGroup) => !model.leftOut.includes(group.key) && !row?.notKnown.includes(group.key);

@@ -33,11 +33,13 @@ import {
   saveDraft,
   withdrawSheet,
 } from "./records.ts";
+import { rememberEvidence } from "./rememberEvidence.ts";
 import { listSales, putBackSales, setAsideSales, verifySales } from "./saleRegister.ts";
 import { saveEdition } from "./saveEdition.ts";
 import { listBatches, undoBatch } from "./undoBatch.ts";
 
 export function createHandlers(ports: Ports): Handlers {
+  const memory = rememberEvidence();
   return {
     listClasses: () => listClasses(ports),
     createClass: (input) => createClass(ports, input),
@@ -68,7 +70,7 @@ export function createHandlers(ports: Ports): Handlers {
     changeSettings: (input) => changeSettings(ports, input),
     openDemo: () => openDemo(ports, openableDemos()),
     currentModel: (input) => currentModel(ports, input),
-    appraise: (input) => appraise(ports, input),
+    appraise: (input) => appraise(ports, memory, input),
     saveEdition: (input) => saveEdition(ports, input),
     previewSheet: (input) => previewSheet(ports, input),
     issueSheet: (input) => issueSheet(ports, input),
