@@ -184,6 +184,13 @@ export interface LedgerRow {
   /** The same in money per step at the average sale; shares of the exact one-step change, adding up. */
   readonly money: { coefficient: number; own: number; carried: readonly { from: string; amount: number }[] };
   readonly moneyRange95: { low: number; high: number } | null;
+  /** Standard errors of the parts, on the response's scale and in money per step; null where no spread is known. */
+  readonly errors?: {
+    readonly own: number;
+    readonly carried: readonly { from: string; amount: number }[];
+    readonly moneyOwn: number;
+    readonly moneyCarried: readonly { from: string; amount: number }[];
+  } | null;
   readonly signTurned: boolean;
   readonly sentence: string;
 }

@@ -6,9 +6,10 @@
  */
 
 import type { Ledger, LedgerRow, ModelReport } from "../domain/appraisal.ts";
-import type { Design, Fit } from "../hedonic/fit.ts";
+import type { Fit } from "../hedonic/fit.ts";
 import { numbersOf } from "../numerics/column.ts";
 import { solveLeastSquares } from "../numerics/solveLeastSquares.ts";
+import { type Association, carriedErrors } from "./carriedErrors.ts";
 import { type ComesWith, ledgerHeadline, type Move, rowSentence } from "./ledgerWords.ts";
 
 export interface CarryOverInput {
@@ -21,19 +22,16 @@ export interface CarryOverInput {
   readonly currencyCode: string;
 }
 
-/** Association of each left-out column with the included ones: slopes[a] of included column a, one array per left-out column. */
-interface Association {
-  readonly column: number;
-  readonly slopes: Float64Array;
-}
-
 /**
  * Rows in the order of the short fit's columns. Coefficients on the response's scale per unit of the column; money per step
  * at the average sale. Guards: nothing left out → every carried list is empty and own part = coefficient.
  */
 export function carryOver({ long, short, report, currencyCode }: CarryOverInput): Ledger {
   const leftOutGroups = long.groups.filter((group) => !short.groups.some((kept) => kept.key === group.key));
-  const associations = leftOutGroups.flatMap((group) => associate(long.design, short.columns, group.columns));
+  const associations = leftOutGroups.flatMap((group) => associate(short, group.columns));
+  const carriedError = new Map(
+    leftOutGroups.map((group) => [group.key, carriedErrors(short, long, group, associations)]),
+  );
   const slopeInLong = new Map(long.columns.map((column, at) => [column, long.solution.slopes[at]!]));
   let identityError = 0;
   const described = short.columns.map((column, at) => {
@@ -55,7 +53,22 @@ export function carryOver({ long, short, report, currencyCode }: CarryOverInput)
       ...carriedParts.map((part) => Math.abs(part.amount)),
     );
     if (size > 0) identityError = Math.max(identityError, Math.abs(coefficient - total) / size);
-    return describeRow({ short, report, column, coefficient, ownPart, carriedParts, associations, at, currencyCode });
+    const ownError =
+      long.solution.residualStandardError === null ? null : long.solution.standardErrors[long.columns.indexOf(column)]!;
+    const partErrors = leftOutGroups.map(({ key }) => ({ from: key, amount: carriedError.get(key)?.[at] ?? null }));
+    return describeRow({
+      short,
+      report,
+      column,
+      coefficient,
+      ownPart,
+      ownError,
+      carriedParts,
+      carriedErrors: partErrors,
+      associations,
+      at,
+      currencyCode,
+    });
   });
   const rows = described.map(({ row }) => row);
   const leftOut = leftOutGroups.map((group) => ({ key: group.key, label: group.label }));
@@ -70,15 +83,17 @@ export function carryOver({ long, short, report, currencyCode }: CarryOverInput)
 }
 
 /** Δ column by column: each left-out column regressed on the included ones, as carefully as a reported fit. */
-function associate(design: Design, included: readonly number[], leftOut: readonly number[]): Association[] {
+function associate({ design, columns: included, rule }: Fit, leftOut: readonly number[]): Association[] {
   const columns = included.map((index) => design.columns[index]!.values);
-  return leftOut.map((column) => ({
-    column,
-    slopes:
-      columns.length === 0
-        ? new Float64Array(0)
-        : solveLeastSquares(columns, numbersOf(design.columns[column]!.values), { intercept: true }).slopes,
-  }));
+  const options = {
+    intercept: true,
+    ...(rule.weights === null ? {} : { weights: rule.weights }),
+    ...(rule.penalty === null ? {} : { penalty: Float64Array.from(included, (index) => rule.penalty![index]!) }),
+  };
+  return leftOut.map((column) => {
+    const { slopes, residuals } = solveLeastSquares(columns, numbersOf(design.columns[column]!.values), options);
+    return { column, slopes, residuals };
+  });
 }
 
 interface RowParts {
@@ -88,7 +103,9 @@ interface RowParts {
   readonly at: number;
   readonly coefficient: number;
   readonly ownPart: number;
+  readonly ownError: number | null;
   readonly carriedParts: LedgerRow["carriedParts"];
+  readonly carriedErrors: readonly { from: string; amount: number | null }[];
   readonly associations: readonly Association[];
   readonly currencyCode: string;
 }
@@ -115,10 +132,23 @@ function describeRow(parts: RowParts): { row: LedgerRow; moves: ComesWith } {
       carried: carriedParts.map((part) => ({ from: part.from, amount: part.amount * perUnit })),
     },
     moneyRange95: low === null || high === null ? null : { low, high },
+    errors: errorsOf(parts, perUnit),
     signTurned: carriedParts.length > 0 && Math.sign(coefficient) === -Math.sign(ownPart) && ownPart !== 0,
   };
   const moves = comesWith(parts, group.step);
   return { row: { ...row, sentence: rowSentence({ ...row, sentence: "" }, moves, currencyCode) }, moves };
+}
+
+/** Standard errors of the parts; null unless all of them are known. */
+function errorsOf(
+  { ownError, carriedErrors: errors }: RowParts,
+  perUnit: number,
+): NonNullable<LedgerRow["errors"]> | null {
+  const carried = errors.flatMap(({ from, amount }) => (amount === null ? [] : [{ from, amount }]));
+  if (ownError === null || carried.length < errors.length) return null;
+  const size = Math.abs(perUnit);
+  const moneyCarried = carried.map(({ from, amount }) => ({ from, amount: amount * size }));
+  return { own: ownError, carried, moneyOwn: ownError * size, moneyCarried };
 }
 
 /** "each 1,000 h comes with 0.88 more years": how a step of this column moves the one column of each left-out number. */

@@ -5,8 +5,10 @@ import type { PriceModel } from "../../domain/priceModel.ts";
 import { MovingTogetherMap } from "../charts/MovingTogetherMap.tsx";
 import { SectionHeading } from "../parts/index.ts";
 import type { Workbench } from "../workbench/workbench.ts";
+import { AttributeForms } from "./AttributeForms.tsx";
 import { DependencyNotices } from "./DependencyNotices.tsx";
 import { EvidenceChoice } from "./EvidenceChoice.tsx";
+import { PairsAndBlends } from "./PairsAndBlends.tsx";
 import css from "./PriceModelPlace.module.css";
 import { ResponseAndFit } from "./ResponseAndFit.tsx";
 
@@ -24,6 +26,8 @@ export function ModelPane({ bench, model }: { bench: Workbench; model: PriceMode
       )}
       {report === null ? null : <MovingTogether bench={bench} report={report} />}
       <ResponseAndFit bench={bench} model={model} report={report} />
+      <AttributeForms bench={bench} model={model} />
+      <PairsAndBlends bench={bench} model={model} />
       <EvidenceChoice bench={bench} model={model} />
     </>
   );

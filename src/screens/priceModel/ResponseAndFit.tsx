@@ -5,6 +5,7 @@ import { formatNumber, formatPercent } from "../../domain/format.ts";
 import type { PriceModel } from "../../domain/priceModel.ts";
 import { SectionHeading, SegmentedChoice } from "../parts/index.ts";
 import type { Workbench } from "../workbench/workbench.ts";
+import { FitSettings } from "./FitSettings.tsx";
 import { isIn, setChannelIn } from "./modelChanges.ts";
 import css from "./PriceModelPlace.module.css";
 
@@ -32,18 +33,7 @@ export function ResponseAndFit({ bench, model, report }: ResponseAndFitProps) {
             onChoose={(response) => changeModel((now) => ({ ...now, response }))}
           />
         </dd>
-        <dt>Market movement</dt>
-        <dd>
-          <SegmentedChoice
-            label="Market movement"
-            value={model.market}
-            options={[
-              { value: "line", label: "steady" },
-              { value: "none", label: "none" },
-            ]}
-            onChoose={(market) => changeModel((now) => ({ ...now, market }))}
-          />
-        </dd>
+        <FitSettings bench={bench} model={model} />
         <dt>Sold through</dt>
         <dd>
           <SegmentedChoice
