@@ -38,6 +38,9 @@ export interface ComputedAppraisal {
   readonly appraisal: Appraisal;
   /** Rows of `sales` that are evidence. */
   readonly used: Int32Array;
+  /** The fit in use and the subject on its columns, for what is worked out beside the result. */
+  readonly fit: Fit;
+  readonly row: SubjectRow | null;
 }
 
 /** What is the same for every attribute set, subject and way of estimating: which sales count, and their columns. */
@@ -68,7 +71,17 @@ export function computeAppraisal(input: AppraisalInput, prepared = prepareEviden
   const priced = subject === null || row === null ? null : pricePart(input, short, long, row, subject);
   const { name, itemWord, currencyCode, invented } = assetClass;
   const found = { assetClass: { name, itemWord, currencyCode, invented }, evidence: account, report, ledger, priced };
-  return { appraisal: { ...found, caveats: writeCaveats(found) }, used };
+  return { appraisal: { ...found, caveats: writeCaveats(found) }, used, fit: short, row };
+}
+
+/** The subject's price alone, from the attributes of the model that it has values for; null without a subject. */
+export function priceOf(input: AppraisalInput, { design }: PreparedEvidence): number | null {
+  const { assetClass, model, subject } = input;
+  if (subject === null) return null;
+  const row = describeSubject(design, assetClass, subject);
+  const { referenceGroups } = resolveDependencies(design, model, row.notKnown);
+  const stays = ({ key }: AttributeGroup) => !model.leftOut.includes(key) && !row.notKnown.includes(key);
+  return estimatePrice(fitColumns(design, referenceGroups.filter(stays)), row, [], null).amount;
 }
 
 /** The whole reference set fitted, or null when it has more coefficients than the sales can carry and the set in use has not. */

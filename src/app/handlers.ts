@@ -15,6 +15,7 @@ import {
   describeClass,
   listClasses,
 } from "./assetClasses.ts";
+import { compareModels } from "./compareModels.ts";
 import { openableDemos } from "./demo/demoClasses.ts";
 import { importSales, startClassFromFile } from "./importSales.ts";
 import { issueSheet, previewSheet, verifySheet } from "./issueSheet.ts";
@@ -71,6 +72,7 @@ export function createHandlers(ports: Ports): Handlers {
     openDemo: () => openDemo(ports, openableDemos()),
     currentModel: (input) => currentModel(ports, input),
     appraise: (input) => appraise(ports, memory, input),
+    compare: (input) => compareModels(ports, input),
     saveEdition: (input) => saveEdition(ports, input),
     previewSheet: (input) => previewSheet(ports, input),
     issueSheet: (input) => issueSheet(ports, input),

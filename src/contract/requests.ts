@@ -5,6 +5,7 @@
 import { z } from "zod";
 import type { Appraisal } from "../domain/appraisal.ts";
 import type { AssetClass, AssetClassSummary } from "../domain/assetClass.ts";
+import type { Comparison } from "../domain/comparison.ts";
 import type {
   ColumnMatch,
   DuplicateRow,
@@ -165,6 +166,9 @@ const salesQuery = z.object({
   }),
 });
 
+/** One side of a comparison: a saved edition, or a model. */
+const sideChoice = z.union([z.object({ editionId: id }), z.object({ model: priceModelInput })]);
+
 const none = z.object({});
 const byClass = z.object({ classId: id });
 const saleIds = z.array(id).min(1).max(100_000);
@@ -202,6 +206,13 @@ export const requestInputs = {
   leaveOutHeldBack: z.object({ classId: id, heldBackId: id, reason: text }),
   currentModel: byClass,
   appraise: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable(), levels }),
+  compare: z.object({
+    classId: id,
+    first: sideChoice,
+    second: sideChoice,
+    subject: subjectInput.nullable(),
+    level: z.number().gt(0).lt(1),
+  }),
   saveEdition: z.object({ classId: id, model: priceModelInput }),
   listEditions: byClass,
   saveDraft: z.object({ classId: id, subject: subjectInput, engagement: engagementInput.nullable() }),
@@ -279,6 +290,7 @@ export interface RequestOutputs {
   /** The model the class is looked at with: of the latest edition, else the usual one over all attributes. */
   currentModel: { model: PriceModel; edition: Edition | null };
   appraise: { appraisal: Appraisal; dataVersion: number; milliseconds: number };
+  compare: Comparison;
   saveEdition: Edition;
   listEditions: readonly Edition[];
   saveDraft: { savedAtUtc: string };

@@ -48,7 +48,7 @@ export function selectEvidence(
       sentence: EVIDENCE_FILTERS[rule]!.sentence(ids.length, detail, context),
       saleIds: ids,
     }));
-  return { account: describe(sales, used, reasons), used: Int32Array.from(used) };
+  return { account: accountOf(sales, used, reasons), used: Int32Array.from(used) };
 }
 
 function reasonOf(context: FilterContext, at: number): { rule: number; detail: string } | null {
@@ -59,7 +59,12 @@ function reasonOf(context: FilterContext, at: number): { rule: number; detail: s
   return null;
 }
 
-function describe(sales: SaleColumns, used: readonly number[], out: EvidenceAccount["out"]): EvidenceAccount {
+/** The account of the rows used; without reasons, they are all there is. */
+export function accountOf(
+  sales: SaleColumns,
+  used: ArrayLike<number> & Iterable<number>,
+  out: EvidenceAccount["out"] | null = null,
+): EvidenceAccount {
   const counts = new Map<string, number>();
   let first = Number.POSITIVE_INFINITY;
   let last = Number.NEGATIVE_INFINITY;
@@ -71,9 +76,9 @@ function describe(sales: SaleColumns, used: readonly number[], out: EvidenceAcco
     verifiedCount += sales.verified[at] === 1 ? 1 : 0;
   }
   return {
-    read: sales.count,
+    read: out === null ? used.length : sales.count,
     used: used.length,
-    out,
+    out: out ?? [],
     firstSoldOn: used.length === 0 ? null : dayOf(first),
     lastSoldOn: used.length === 0 ? null : dayOf(last),
     channels: [...counts]

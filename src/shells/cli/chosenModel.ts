@@ -15,7 +15,11 @@ export function plainModel(model: PriceModel): AppraiseInput["model"] {
   return structuredClone(model) as AppraiseInput["model"];
 }
 
-function leftOutKeys(names: readonly string[], model: PriceModel, attributes: readonly NamedAttribute[]): string[] {
+export function leftOutKeys(
+  names: readonly string[],
+  model: PriceModel,
+  attributes: readonly NamedAttribute[],
+): string[] {
   return names.map((name) => {
     const found = attributes.find(
       ({ key, label }) => key === name || label.toLowerCase() === name.toLowerCase() || key === keyOf(name),

@@ -1,5 +1,6 @@
 /** All verbs, in the order of the help. */
 import type { Verb } from "../verb.ts";
+import { compareVerb } from "./compare.ts";
 import { demoVerb } from "./demo.ts";
 import { digitsVerb } from "./digits.ts";
 import { importVerb } from "./import.ts";
@@ -15,6 +16,7 @@ export const VERBS: readonly Verb[] = [
   importVerb,
   refitVerb,
   priceVerb,
+  compareVerb,
   sheetVerb,
   verifyVerb,
   serveVerb,
