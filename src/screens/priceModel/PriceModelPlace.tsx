@@ -1,18 +1,26 @@
 /** Price model: the attribute set on its rail, what it rests on at the left, what comes of it at the right. */
 import { useMemo } from "react";
-import { hrefOf } from "../frame/useRoute.ts";
-import { Busy, EmptyState, ErrorNote, PaneLayout, TextLink } from "../parts/index.ts";
+import { hrefOf, useRoute } from "../frame/useRoute.ts";
+import { Busy, EmptyState, ErrorNote, PaneLayout, SubPlaces, TextLink } from "../parts/index.ts";
 import { useActs } from "../workbench/acts.ts";
 import { useWorkbench } from "../workbench/workbench.ts";
 import { AttributeRail } from "./AttributeRail.tsx";
+import { CompareChoice, CompareOutcome, useCompare } from "./CompareModels.tsx";
 import { ModelOutcome } from "./ModelOutcome.tsx";
 import { ModelPane } from "./ModelPane.tsx";
 import { switchAttribute } from "./modelChanges.ts";
 import css from "./PriceModelPlace.module.css";
 import { tilesOf } from "./tiles.ts";
 
+const VIEWS: readonly { readonly sub: string | null; readonly href: string; readonly label: string }[] = [
+  { sub: null, href: hrefOf("price-model"), label: "Fit and ledger" },
+  { sub: "compare", href: hrefOf("price-model", "compare"), label: "Compare" },
+];
+
 export function PriceModelPlace() {
   const bench = useWorkbench();
+  const { sub } = useRoute();
+  const compare = useCompare(bench);
   const { assetClass, model, appraisal, leftOutJustNow, changeModel, error } = bench;
   const tiles = useMemo(
     () =>
@@ -50,8 +58,13 @@ export function PriceModelPlace() {
         leftWidth={480}
         leftLabel="What the model rests on"
         rightLabel="What comes of it"
-        left={<ModelPane bench={bench} model={model} />}
-        right={<ModelOutcome bench={bench} />}
+        left={
+          <>
+            <SubPlaces label="Price model" places={VIEWS.map((view) => ({ ...view, isCurrent: view.sub === sub }))} />
+            {sub === "compare" ? <CompareChoice state={compare} /> : <ModelPane bench={bench} model={model} />}
+          </>
+        }
+        right={sub === "compare" ? <CompareOutcome bench={bench} state={compare} /> : <ModelOutcome bench={bench} />}
       />
     </div>
   );
