@@ -57,7 +57,7 @@ function solve(
   }
 }
 
-function inWords(
+export function inWords(
   cause: NumericsError,
   design: Design,
   columns: readonly number[],
