@@ -3,7 +3,7 @@
  * is shared out over the attributes, the sales and the settings that differ, averaged over every order of changing them.
  */
 import type { RequestInput, RequestOutput } from "../contract/requests.ts";
-import type { EvidenceAccount } from "../domain/appraisal.ts";
+import type { Appraisal, EvidenceAccount } from "../domain/appraisal.ts";
 import type { AssetClass } from "../domain/assetClass.ts";
 import type { ComparedSale, ComparedSide, Comparison, PriceCause } from "../domain/comparison.ts";
 import { dayOf } from "../domain/day.ts";
@@ -81,7 +81,7 @@ function sideFrom(
     const input = { ...common, model: choice.model };
     const prepared = prepareEvidence(input);
     const computed = computeAppraisal(input, prepared);
-    return { name: "The model on the table", editionNumber: null, input, prepared, computed, gone: 0 };
+    return { name: modelName(computed.appraisal), editionNumber: null, input, prepared, computed, gone: 0 };
   }
   const edition = ports.store.editions.find(choice.editionId);
   if (edition === null || edition.assetClassId !== assetClass.id) {
@@ -100,6 +100,12 @@ function sideFrom(
   const computed = computeAppraisal(input, prepared);
   const name = `Edition ${edition.number}`;
   return { name, editionNumber: edition.number, input, prepared, computed, gone: ids.size - used.length };
+}
+
+/** "The model with nothing left out", "The model without age and hours". */
+function modelName({ report }: Appraisal): string {
+  const out = report.leftOut.filter(({ why }) => why === "person").map(({ label }) => lowerStart(label));
+  return out.length === 0 ? "The model with nothing left out" : `The model without ${listWords(out)}`;
 }
 
 function rowsWith(sales: SaleColumns, holds: (at: number) => boolean): Int32Array {
@@ -169,10 +175,15 @@ function changesBetween(first: Side, second: Side, sameSales: boolean): Change[]
   const labelOf = (key: string) =>
     [first, second].flatMap((side) => side.computed.appraisal.report.attributeEvidence).find((one) => one.key === key)
       ?.label ?? key;
+  const changeWords = (key: string): string => {
+    const label = lowerStart(labelOf(key));
+    if (!membersOf(second).has(key)) return `Leaving out ${label}`;
+    return membersOf(first).has(key) ? `Another form of ${label}` : `Taking in ${label}`;
+  };
   const isSingle =
     keys.length <= MOST_SINGLE && Math.max(first.prepared.used.length, second.prepared.used.length) <= MANY_SALES;
   const attributes: Change[] = isSingle
-    ? keys.map((key) => ({ kind: "attribute" as const, label: labelOf(key), keys: [key] }))
+    ? keys.map((key) => ({ kind: "attribute" as const, label: changeWords(key), keys: [key] }))
     : [{ kind: "attributes" as const, label: `${keys.length} attributes together`, keys }];
   const sales: Change[] = sameSales ? [] : [{ kind: "sales", label: "Other sales", keys: [] }];
   const settings: Change[] = sameSettings(first.input.model, second.input.model)

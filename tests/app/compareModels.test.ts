@@ -54,7 +54,7 @@ describe("two attribute sets on the same sales", () => {
     const found = await compare({ model }, { model: { ...model, leftOut: ["built", "tyres_left"] } });
     const [first, second] = found.sides;
     expect(found.causes.map(({ kind }) => kind)).toEqual(["attribute", "attribute"]);
-    expect(found.causes.map(({ label }) => label)).toContain("Age");
+    expect(found.causes.map(({ label }) => label)).toContain("Leaving out age");
     expect(total(found)).toBeCloseTo(second.price!.amount - first.price!.amount, 6);
     expect(found.sales).toMatchObject({ onlyFirst: 0, onlySecond: 0, both: first.saleCount });
     const hours = found.coefficients.find(({ attribute }) => attribute === "hours")!;
@@ -82,7 +82,7 @@ describe("two editions", () => {
     const found = await compare({ editionId: before.id }, { model: other });
     expect(found.causes.map(({ kind }) => kind).sort()).toEqual(["attribute", "sales", "settings"]);
     expect(total(found)).toBeCloseTo(found.sides[1].price!.amount - found.sides[0].price!.amount, 6);
-    expect(found.headline).toMatch(/^Edition \d+ prices the item at €[\d,]+, the model on the table at €[\d,]+: /);
+    expect(found.headline).toMatch(/^Edition \d+ prices the item at €[\d,]+, the model without age at €[\d,]+: /);
   });
 
   test("are refused when there is no such edition", async () => {

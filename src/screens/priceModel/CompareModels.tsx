@@ -18,6 +18,7 @@ import { isBlank } from "../workbench/blank.ts";
 import { useRead } from "../workbench/useTask.ts";
 import type { Workbench } from "../workbench/workbench.ts";
 import css from "./compare.module.css";
+import { nameOf } from "./ledgerTable.ts";
 
 /** "now", "all" (the whole reference set), or the id of an edition. */
 export type SideName = string;
@@ -258,8 +259,7 @@ function Coefficients({
           {coefficients.map((one) => (
             <tr key={`${one.attribute} ${one.level ?? ""}`}>
               <th scope="row">
-                {one.level === null || one.level === "yes" ? one.label : one.level}{" "}
-                <span className="soft">{one.stepWords}</span>
+                {nameOf(one)} <span className="soft">{one.stepWords}</span>
               </th>
               {cell(one.first, one.firstRange95)}
               {cell(one.second, one.secondRange95)}
