@@ -13,6 +13,7 @@ import { selectEvidence } from "../evidence/selectEvidence.ts";
 import { carryOver } from "../explanation/carryOver.ts";
 import { pull } from "../explanation/pull.ts";
 import { buildDesign } from "../hedonic/buildDesign.ts";
+import { estimate } from "../hedonic/estimators/index.ts";
 import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { fitColumns } from "../hedonic/fitPriceModel.ts";
 import { reportModel } from "../hedonic/reportModel.ts";
@@ -63,7 +64,9 @@ export function computeAppraisal(input: AppraisalInput, prepared = prepareEviden
   const row = subject === null ? null : describeSubject(design, assetClass, subject);
   const resolved = resolveDependencies(design, model, row?.notKnown ?? []);
   const stays = (group: AttributeGroup) => !model.leftOut.includes(group.key) && !row?.notKnown.includes(group.key);
-  const short = fitColumns(design, resolved.referenceGroups.filter(stays));
+  const kept = resolved.referenceGroups.filter(stays);
+  const estimated = estimate(design, kept, model.estimator);
+  const short = fitColumns(design, kept, estimated.rule);
   const long = fitReference(design, resolved, short);
   const leftOut = leftOutOf(design, model, resolved, row);
   const report = reportModel({ fit: short, model, resolved, leftOut, reference: long ?? short });
@@ -81,14 +84,16 @@ export function priceOf(input: AppraisalInput, { design }: PreparedEvidence): nu
   const row = describeSubject(design, assetClass, subject);
   const { referenceGroups } = resolveDependencies(design, model, row.notKnown);
   const stays = ({ key }: AttributeGroup) => !model.leftOut.includes(key) && !row.notKnown.includes(key);
-  return estimatePrice(fitColumns(design, referenceGroups.filter(stays)), row, [], null).amount;
+  const kept = referenceGroups.filter(stays);
+  const { rule } = estimate(design, kept, model.estimator);
+  return estimatePrice(fitColumns(design, kept, rule), row, [], null).amount;
 }
 
 /** The whole reference set fitted, or null when it has more coefficients than the sales can carry and the set in use has not. */
 function fitReference(design: Design, resolved: ResolvedSet, short: Fit): Fit | null {
   if (resolved.referenceGroups.length === short.groups.length) return short;
   try {
-    return fitColumns(design, resolved.referenceGroups);
+    return fitColumns(design, resolved.referenceGroups, short.rule);
   } catch (cause) {
     if (cause instanceof AppError && cause.code === "too-few-sales") return null;
     throw cause;

@@ -1,7 +1,8 @@
 /**
  * Pull: which sales made this price. The fitted value is an exact weighted sum of the responses, ŷ₀ = Σ w_i y_i with
- *   w_i = 1/n + (x₀ − x̄)'C⁻¹(x_i − x̄),  C = X'X centred;  Σ w_i = 1 with an intercept;
- * and the fit without sale i is ŷ₀ − w_i·e_i/(1 − h_i) in closed form (Cook & Weisberg 1982, §2.2).
+ *   w_i = ω_i(1/Σω + (x₀ − x̄)'C⁻¹(x_i − x̄)),  C = X'ΩX + Λ centred;  Σ w_i = 1 with an intercept;
+ * and the fit without sale i is ŷ₀ − w_i·e_i/(1 − h_i) in closed form (Cook & Weisberg 1982, §2.2), at the weights ω and
+ * penalties Λ of the fit. Least squares has ω = 1 and Λ = 0.
  */
 
 import type { Pull, PullReport } from "../domain/appraisal.ts";
@@ -28,12 +29,14 @@ export function pullWeights(fit: Fit, row: SubjectRow): Float64Array {
     }
     direction[a] = sum;
   }
-  const weights = new Float64Array(n).fill(1 / n);
+  const counts = fit.rule.weights;
+  const weights = new Float64Array(n).fill(1 / (counts === null ? n : counts.reduce((sum, one) => sum + one, 0)));
   for (let a = 0; a < k; a++) {
     const values = numbersOf(columns[fit.columns[a]!]!.values);
     const mean = fit.solution.means[a]!;
     for (let i = 0; i < n; i++) weights[i]! += direction[a]! * (values[i]! - mean);
   }
+  if (counts !== null) for (let i = 0; i < n; i++) weights[i]! *= counts[i]!;
   return weights;
 }
 
