@@ -20,9 +20,10 @@ export function assemblyPlugin(): Plugin {
   return {
     name: "lotwright-assembly",
     enforce: "pre",
-    resolveId(source, importer) {
-      if (!source.endsWith(`.ts${MARK}`) || importer === undefined) return null;
-      return `${resolve(dirname(importer), source.slice(0, -MARK.length))}${MARK}`;
+    async resolveId(source, importer) {
+      if (!source.endsWith(`.ts${MARK}`)) return null;
+      const file = await this.resolve(source.slice(0, -MARK.length), importer, { skipSelf: true });
+      return file === null ? null : `${file.id}${MARK}`;
     },
     async load(id) {
       if (!id.endsWith(`.ts${MARK}`)) return null;

@@ -4,7 +4,7 @@ import { existsSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { giveUp, pinnedNode, run, say, top } from "./tools.mjs";
 
-const SOURCES = ["src", "electron.vite.config.ts", "package.json", "package-lock.json", "tsconfig.json"];
+const SOURCES = ["src", "resources/build", "electron.vite.config.ts", "package.json", "package-lock.json", "tsconfig.json"];
 const ENTRIES = ["main/index.js", "main/cli.js", "main/server.js", "main/start.js", "preload/index.cjs", "renderer/index.html"];
 
 function filesUnder(path) {

@@ -1,0 +1,171 @@
+/**
+ * Count, means and centred cross-products of columns: all that coefficients, ranges and attribute sets need. They add up:
+ * parts merge, one row comes and goes in O(q²).
+ * Symbols: q columns, w weights (1 without weights), W = Σ w, m means Σ w x / W (q), c scales (q),
+ * S cross-products (q × q): S_jk = Σ w (x_ij − m_j)(x_ik − m_k)/(c_j c_k).
+ * Merging: Chan, Golub & LeVeque 1983. Adding or removing one row: Welford 1962; with weights West 1979.
+ */
+import { add, fromNumber, subtract } from "./doubleDouble.ts";
+import { NumericsError } from "./numericsError.ts";
+import { powerOfTwoNear } from "./spread.ts";
+
+export interface Moments {
+  /** Rows with a weight above 0. */
+  readonly rowCount: number;
+  /** W; the row count without weights. */
+  readonly weightSum: number;
+  /** Means, q. */
+  readonly means: Float64Array;
+  /** What rounding the means to doubles took, q: keeps merging exact for columns with a large offset. */
+  readonly meanTails: Float64Array;
+  /** Powers of two near each column's root mean square deviation, q; 1 for a constant column. */
+  readonly scales: Float64Array;
+  /** S, q × q row-major, symmetric. */
+  readonly crossProducts: Float64Array;
+}
+
+/** The moments of no rows. */
+export function emptyMoments(q: number): Moments {
+  return {
+    rowCount: 0,
+    weightSum: 0,
+    means: new Float64Array(q),
+    meanTails: new Float64Array(q),
+    scales: new Float64Array(q).fill(1),
+    crossProducts: new Float64Array(q * q),
+  };
+}
+
+/**
+ * The moments of all parts together: neighbours are merged in pairs, then the pairs, so that rounding grows with the logarithm
+ * of the number of parts. Refuses (shape) no parts and unequal column counts.
+ */
+export function mergeMoments(parts: readonly Moments[]): Moments {
+  if (parts.length === 0) throw new NumericsError("shape", "there are no moments to merge");
+  let level = parts;
+  while (level.length > 1) {
+    const pairs: Moments[] = [];
+    for (let i = 0; i < level.length; i += 2) {
+      const second = level[i + 1];
+      pairs.push(second === undefined ? level[i]! : mergeTwo(level[i]!, second));
+    }
+    level = pairs;
+  }
+  return parts.length === 1 ? level[0]! : rescaled(level[0]!);
+}
+
+/** The moments with one row more; O(q²). A row of weight 0 changes nothing. */
+export function addRow(moments: Moments, row: ArrayLike<number>, weight = 1): Moments {
+  return mergeTwo(moments, singleRow(moments, row, weight));
+}
+
+/**
+ * The moments without one row that is in them, at the weight it has there; O(q²). Digits go when rows far from the mean leave
+ * one after another: accumulate anew after some ten thousand edits. Refuses (tooFewRows) to remove the last row.
+ */
+export function removeRow(moments: Moments, row: ArrayLike<number>, weight = 1): Moments {
+  const { rowCount, scales } = moments;
+  const q = scales.length;
+  if (singleRow(moments, row, weight).rowCount === 0) return moments;
+  const weightSum = moments.weightSum - weight;
+  if (rowCount < 2 || !(weightSum > 0)) throw new NumericsError("tooFewRows", "the last row cannot be removed");
+  const means = new Float64Array(q);
+  const meanTails = new Float64Array(q);
+  const z = new Float64Array(q);
+  for (let j = 0; j < q; j++) {
+    const old = { hi: moments.means[j]!, lo: moments.meanTails[j]! };
+    const distance = subtract(fromNumber(row[j]!), old);
+    const next = subtract(old, fromNumber((distance.hi + distance.lo) * (weight / weightSum)));
+    means[j] = next.hi;
+    meanTails[j] = next.lo;
+    z[j] = (distance.hi + distance.lo) / scales[j]!;
+  }
+  const factor = weight * (moments.weightSum / weightSum);
+  const crossProducts = moments.crossProducts.map((s, at) => s - factor * (z[Math.floor(at / q)]! * z[at % q]!));
+  return { rowCount: rowCount - 1, weightSum, means, meanTails, scales: scales.slice(), crossProducts };
+}
+
+function singleRow(moments: Moments, row: ArrayLike<number>, weight: number): Moments {
+  const q = moments.scales.length;
+  const means = Float64Array.from(row);
+  if (means.length !== q) throw new NumericsError("shape", `a row has ${means.length} values where ${q} were expected`);
+  if (!(weight >= 0 && weight < Number.POSITIVE_INFINITY))
+    throw new NumericsError("notFinite", `a weight of ${weight} where a number from 0 up was expected`);
+  const bad = [...means.keys()].filter((j) => !Number.isFinite(means[j]!));
+  if (bad.length > 0) throw new NumericsError("notFinite", "some values are not finite numbers", bad);
+  return { ...emptyMoments(q), rowCount: weight > 0 ? 1 : 0, weightSum: weight, means, scales: moments.scales };
+}
+
+/** S = S₁ + S₂ + W₁W₂/(W₁ + W₂)·δδ′ with δ the difference of the means, in the scales of the larger spread. */
+function mergeTwo(a: Moments, b: Moments): Moments {
+  const q = a.scales.length;
+  if (b.scales.length !== q) throw new NumericsError("shape", `moments of ${q} and ${b.scales.length} columns`);
+  if (b.rowCount === 0) return a;
+  if (a.rowCount === 0) return b;
+  const weightSum = a.weightSum + b.weightSum;
+  const share = b.weightSum / weightSum;
+  const scales = new Float64Array(q);
+  const means = new Float64Array(q);
+  const meanTails = new Float64Array(q);
+  const z = new Float64Array(q);
+  for (let j = 0; j < q; j++) {
+    const ma = { hi: a.means[j]!, lo: a.meanTails[j]! };
+    const distance = subtract({ hi: b.means[j]!, lo: b.meanTails[j]! }, ma);
+    const merged = add(ma, fromNumber((distance.hi + distance.lo) * share));
+    means[j] = merged.hi;
+    meanTails[j] = merged.lo;
+    scales[j] = mergedScale(a, b, j, distance.hi);
+    z[j] = (distance.hi + distance.lo) / scales[j]!;
+  }
+  const crossProducts = mergedCrossProducts(a, b, scales, z, a.weightSum * share);
+  return { rowCount: a.rowCount + b.rowCount, weightSum, means, meanTails, scales, crossProducts };
+}
+
+function mergedCrossProducts(
+  a: Moments,
+  b: Moments,
+  scales: Float64Array,
+  z: Float64Array,
+  factor: number,
+): Float64Array {
+  const q = scales.length;
+  const ratioA = a.scales.map((scale, j) => scale / scales[j]!);
+  const ratioB = b.scales.map((scale, j) => scale / scales[j]!);
+  const crossProducts = new Float64Array(q * q);
+  for (let j = 0; j < q; j++) {
+    for (let k = 0; k <= j; k++) {
+      const at = j * q + k;
+      const fromA = a.crossProducts[at]! * ratioA[j]! * ratioA[k]!;
+      const fromB = b.crossProducts[at]! * ratioB[j]! * ratioB[k]!;
+      const value = fromA + fromB + factor * z[j]! * z[k]!;
+      crossProducts[at] = value;
+      crossProducts[k * q + j] = value;
+    }
+  }
+  return crossProducts;
+}
+
+/** The larger scale; a column that is constant in one part takes the other's, in both that of the distance between them. */
+function mergedScale(a: Moments, b: Moments, j: number, distance: number): number {
+  const at = j * a.scales.length + j;
+  const spreadA = a.crossProducts[at]! > 0;
+  const spreadB = b.crossProducts[at]! > 0;
+  if (!spreadA && !spreadB) return powerOfTwoNear(Math.abs(distance));
+  if (!spreadA) return b.scales[j]!;
+  return spreadB ? Math.max(a.scales[j]!, b.scales[j]!) : a.scales[j]!;
+}
+
+/** The same moments with each scale near the root mean square deviation √(S_jj/W)·c_j; exact. */
+export function rescaled(moments: Moments): Moments {
+  const { weightSum, crossProducts: old } = moments;
+  const q = moments.scales.length;
+  const scales = moments.scales.map((scale, j) => {
+    const spread = old[j * q + j]!;
+    return spread > 0 ? powerOfTwoNear(scale * Math.sqrt(spread / weightSum)) : 1;
+  });
+  const ratios = moments.scales.map((scale, j) => scale / scales[j]!);
+  const crossProducts = new Float64Array(q * q);
+  for (let j = 0; j < q; j++)
+    for (let k = 0; k < q; k++) crossProducts[j * q + k] = old[j * q + k]! * ratios[j]! * ratios[k]!;
+  return { ...moments, scales, crossProducts };
+}
