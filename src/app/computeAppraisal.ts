@@ -11,7 +11,8 @@ import type { SaleColumns } from "../domain/sale.ts";
 import type { Subject } from "../domain/subject.ts";
 import { selectEvidence } from "../evidence/selectEvidence.ts";
 import { carryOver } from "../explanation/carryOver.ts";
-import { pull } from "../explanation/pull.ts";
+import { nearSales } from "../explanation/nearSales.ts";
+import { pull, pullWeights } from "../explanation/pull.ts";
 import { buildDesign } from "../hedonic/buildDesign.ts";
 import { estimate } from "../hedonic/estimators/index.ts";
 import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
@@ -141,6 +142,14 @@ function pricePart(input: AppraisalInput, short: Fit, long: Fit | null, row: Sub
       row,
       sales,
       fitted: price.fitted,
+      amount: price.amount,
+      currencyCode: assetClass.currencyCode,
+    }),
+    near: nearSales({
+      fit: short,
+      row,
+      sales,
+      weights: pullWeights(short, row),
       amount: price.amount,
       currencyCode: assetClass.currencyCode,
     }),

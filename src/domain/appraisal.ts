@@ -238,6 +238,31 @@ export interface PullReport {
   readonly sentence: string;
 }
 
+/** A sale much like the subject, adjusted to it by the model. */
+export interface NearSale {
+  readonly sale: number;
+  readonly reference: string | null;
+  readonly title: string;
+  readonly soldOn: Day;
+  readonly price: number;
+  readonly channel: string;
+  readonly verified: boolean;
+  /** Weight on the subject's price. */
+  readonly weight: number;
+  /** Adjustments added up without their signs: a share of price after ln, money otherwise. */
+  readonly gross: number;
+  /** Its price with every attribute of the model adjusted to the subject's. */
+  readonly adjusted: number;
+  /** Adjustment per attribute: a share of price after ln, money otherwise; those that are zero are not listed. */
+  readonly adjustments: readonly { readonly key: string; readonly label: string; readonly amount: number }[];
+}
+
+export interface NearReport {
+  /** Least gross adjustment first. */
+  readonly sales: readonly NearSale[];
+  readonly sentence: string;
+}
+
 export type ReachVerdict = "inside" | "edge" | "beyond";
 
 export interface Reach {
@@ -267,6 +292,7 @@ export interface PricePart {
   readonly price: PriceEstimate;
   readonly builtUp: BuiltUp;
   readonly pull: PullReport;
+  readonly near?: NearReport;
   readonly reach: Reach;
   readonly notKnown: readonly NotKnownEffect[];
 }

@@ -9,6 +9,7 @@ import { Busy, ErrorNote, PaneLayout, SectionHeading, SegmentedChoice } from "..
 import { useWorkbench, type Workbench } from "../workbench/workbench.ts";
 import css from "./AppraisePlace.module.css";
 import { LedgerTeaser } from "./LedgerTeaser.tsx";
+import { NearRows } from "./NearRows.tsx";
 import { NotPriced } from "./NotPriced.tsx";
 import { PullRows } from "./PullRows.tsx";
 import { SubjectPane } from "./SubjectPane.tsx";
@@ -77,6 +78,7 @@ function Priced({ bench, appraisal, priced }: PricedProps) {
         <div className={css.side}>
           <LedgerTeaser appraisal={appraisal} />
           <PullRows priced={priced} report={appraisal.report} currencyCode={currencyCode} />
+          <NearRows priced={priced} report={appraisal.report} currencyCode={currencyCode} />
           <Caveats appraisal={appraisal} />
         </div>
       </div>
