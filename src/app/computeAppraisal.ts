@@ -24,6 +24,7 @@ import { buildUp } from "../valuation/buildUp.ts";
 import { describeSubject, marketHeldAt } from "../valuation/describeSubject.ts";
 import { estimatePrice } from "../valuation/estimatePrice.ts";
 import { measureReach } from "../valuation/measureReach.ts";
+import { notKnowing } from "../valuation/notKnowing.ts";
 import { notKnownEffects } from "../valuation/notKnown.ts";
 
 export interface AppraisalInput {
@@ -155,6 +156,7 @@ function pricePart(input: AppraisalInput, short: Fit, long: Fit | null, row: Sub
     }),
     reach: measureReach(short, row, subject, assetClass.itemWord),
     notKnown: notKnownEffects(short, row, unknown, assetClass),
+    notKnowing: notKnowing(short, row, unknown, assetClass.currencyCode),
   };
 }
 

@@ -152,6 +152,24 @@ export interface NotKnownEffect {
   readonly sentence: string;
 }
 
+/** The range split by what it comes from, and what assuming values for the unknown attributes would do. */
+export interface NotKnowing {
+  readonly level: number;
+  /** Width of the range for one sale now, and with the unknown attributes at typical values, in money. */
+  readonly width: number;
+  readonly widthIfKnown: number;
+  /** Shares of the squared half-range; they add up to 1. */
+  readonly shares: { readonly noise: number; readonly notKnowing: number; readonly estimation: number };
+  readonly assumed: readonly {
+    readonly code: "low" | "typical" | "high";
+    readonly label: string;
+    readonly amount: number;
+    readonly low: number;
+    readonly high: number;
+  }[];
+  readonly sentence: string;
+}
+
 export interface BuiltUpStep {
   readonly key: string;
   readonly label: string;
@@ -295,6 +313,7 @@ export interface PricePart {
   readonly near?: NearReport;
   readonly reach: Reach;
   readonly notKnown: readonly NotKnownEffect[];
+  readonly notKnowing?: NotKnowing | null;
 }
 
 export interface Caveat {

@@ -10,6 +10,7 @@ import { useWorkbench, type Workbench } from "../workbench/workbench.ts";
 import css from "./AppraisePlace.module.css";
 import { LedgerTeaser } from "./LedgerTeaser.tsx";
 import { NearRows } from "./NearRows.tsx";
+import { NotKnowingView } from "./NotKnowingView.tsx";
 import { NotPriced } from "./NotPriced.tsx";
 import { PullRows } from "./PullRows.tsx";
 import { SubjectPane } from "./SubjectPane.tsx";
@@ -77,6 +78,14 @@ function Priced({ bench, appraisal, priced }: PricedProps) {
         </section>
         <div className={css.side}>
           <LedgerTeaser appraisal={appraisal} />
+          {priced.notKnowing === undefined || priced.notKnowing === null ? null : (
+            <NotKnowingView
+              found={priced.notKnowing}
+              amount={priced.price.amount}
+              step={priceStep(priced.price)}
+              currencyCode={currencyCode}
+            />
+          )}
           <PullRows priced={priced} report={appraisal.report} currencyCode={currencyCode} />
           <NearRows priced={priced} report={appraisal.report} currencyCode={currencyCode} />
           <Caveats appraisal={appraisal} />
