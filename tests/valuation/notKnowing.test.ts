@@ -2,13 +2,14 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { computeAppraisal } from "../../src/app/computeAppraisal.ts";
+import type { AttributeValue } from "../../src/domain/attribute.ts";
 import type { Subject } from "../../src/domain/subject.ts";
 import { CLASS, model, SUBJECT, sales } from "../fixtures/randomClass.ts";
 
 const RUNS = { numRuns: 30, seed: 20_261_201 };
 
-function appraise(seed: number, unknown: readonly string[], change: Partial<Subject["values"]> = {}) {
-  const values: Record<string, Subject["values"][string]> = { ...SUBJECT.values, ...change };
+function appraise(seed: number, unknown: readonly string[], change: Subject["values"] = {}) {
+  const values: Record<string, AttributeValue> = { ...SUBJECT.values, ...change };
   for (const key of unknown) values[key] = null;
   const input = {
     assetClass: CLASS,
