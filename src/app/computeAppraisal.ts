@@ -13,6 +13,7 @@ import { selectEvidence } from "../evidence/selectEvidence.ts";
 import { carryOver } from "../explanation/carryOver.ts";
 import { nearSales } from "../explanation/nearSales.ts";
 import { pull, pullWeights } from "../explanation/pull.ts";
+import { accountForFit, errorsFor } from "../hedonic/accountForFit.ts";
 import { buildDesign } from "../hedonic/buildDesign.ts";
 import { estimate } from "../hedonic/estimators/index.ts";
 import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
@@ -71,7 +72,9 @@ export function computeAppraisal(input: AppraisalInput, prepared = prepareEviden
   const short = fitColumns(design, kept, estimated.rule);
   const long = fitReference(design, resolved, short);
   const leftOut = leftOutOf(design, model, resolved, row);
-  const report = reportModel({ fit: short, model, resolved, leftOut, reference: long ?? short });
+  const errors = errorsFor(model, short, estimated, input.sales.sources);
+  const fitted = accountForFit(model, short, estimated, errors, input.sales);
+  const report = reportModel({ fit: short, model, resolved, leftOut, reference: long ?? short, errors, fitted });
   const ledger = ledgerOf(long, short, report, assetClass.currencyCode);
   const priced = subject === null || row === null ? null : pricePart(input, short, long, row, subject);
   const { name, itemWord, currencyCode, invented } = assetClass;

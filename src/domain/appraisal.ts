@@ -96,6 +96,7 @@ export interface ModelReport {
   readonly digitsToTrust: number;
   readonly condition: number;
   readonly path: "moments" | "careful";
+  readonly fitted?: FitAccount;
   readonly averagePrice: number;
   readonly smearing: number | null;
   readonly coefficients: readonly Coefficient[];
@@ -106,6 +107,36 @@ export interface ModelReport {
   readonly movingTogether: readonly { a: string; b: string; partialCorrelation: number; correlation: number }[];
   /** √VIF per included attribute: how many times wider its coefficient's range is for standing beside the others. */
   readonly widening: readonly { key: string; label: string; times: number }[];
+}
+
+/** How the fit was come by, in words for screen and sheet. Absent on what was worked out before there was a choice. */
+export interface FitAccount {
+  readonly estimator: NonNullable<PriceModel["estimator"]>["kind"];
+  /** What the estimator did to these sales. */
+  readonly sentence: string;
+  /** What the errors of coefficients and averages suppose. */
+  readonly errorsSentence: string;
+  readonly errorsCaution: string | null;
+  /** Degrees of freedom of the ranges of coefficients. */
+  readonly errorsDf: number | null;
+  /** Which range for one sale can honestly be given. */
+  readonly whichRange: string;
+  /** Ridge: the penalty in sales and how it was come by; null otherwise. */
+  readonly ridge: {
+    readonly penalty: number;
+    readonly isChosen: boolean;
+    readonly curve: readonly { penalty: number; looError: number }[];
+  } | null;
+  /** Choices whose levels are drawn together, in response units from the mean over levels. */
+  readonly pooled: readonly {
+    readonly key: string;
+    readonly label: string;
+    readonly levels: readonly { level: string; sales: number; before: number | null; after: number }[];
+  }[];
+  /** Robust estimates: sales that count for less than half, least first, at most twenty. */
+  readonly countedLess: readonly { readonly sale: number; readonly weight: number }[];
+  /** Levels merged, weights by recency and the like, each a sentence. */
+  readonly notes: readonly string[];
 }
 
 export interface AttributeEvidence {

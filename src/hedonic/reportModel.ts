@@ -3,13 +3,14 @@
  * P̄(e^(b·step) − 1) with P̄ = exp(mean ln price). Leave-one-out: e_i/(1 − h_i) (Allen 1974, PRESS). Smearing: Duan 1983.
  */
 
-import type { AttributeEvidence, Coefficient, ModelReport } from "../domain/appraisal.ts";
+import type { AttributeEvidence, Coefficient, FitAccount, ModelReport } from "../domain/appraisal.ts";
 import { MARKET_KEY } from "../domain/attribute.ts";
 import type { PriceModel } from "../domain/priceModel.ts";
 import { correlation, inflation, partialCorrelation } from "../numerics/collinearity.ts";
 import { numbersOf } from "../numerics/column.ts";
 import { quantileOfSorted } from "../numerics/quantile.ts";
 import { tUpperQuantile } from "../numerics/studentT.ts";
+import type { FitErrors } from "./errorRules/errors.ts";
 import type { AttributeGroup, Design, Fit } from "./fit.ts";
 import type { ResolvedSet } from "./resolveDependencies.ts";
 
@@ -20,9 +21,12 @@ export interface ReportInput {
   readonly leftOut: ModelReport["leftOut"];
   /** Fit of the whole reference set: what moves together is judged among all of it. */
   readonly reference: Fit;
+  /** Null: an even spread, every sale counting alike and nothing drawn in. */
+  readonly errors: FitErrors | null;
+  readonly fitted: FitAccount;
 }
 
-export function reportModel({ fit, model, resolved, leftOut, reference }: ReportInput): ModelReport {
+export function reportModel({ fit, model, resolved, leftOut, reference, errors, fitted }: ReportInput): ModelReport {
   const { solution, design } = fit;
   const { residualSumOfSquares: rss, totalSumOfSquares: sst, residualDf } = solution;
   const press = pressOf(fit);
@@ -44,9 +48,10 @@ export function reportModel({ fit, model, resolved, leftOut, reference }: Report
     digitsToTrust: solution.digitsToTrust,
     condition: solution.condition,
     path: solution.path,
+    fitted,
     averagePrice,
     smearing: design.responseForm === "lnPrice" ? smearingOf(solution.residuals) : null,
-    coefficients: coefficientsOf(fit, averagePrice),
+    coefficients: coefficientsOf(fit, averagePrice, errors),
     dependencies: resolved.notices,
     attributeEvidence: design.groups.map((group) => evidenceOf(design, group, fit)),
     movingTogether: pairsOf(reference),
@@ -76,16 +81,18 @@ export function smearingOf(residuals: Float64Array): number {
   return residuals.reduce((sum, e) => sum + Math.exp(e), 0) / residuals.length;
 }
 
-function coefficientsOf(fit: Fit, averagePrice: number): Coefficient[] {
+function coefficientsOf(fit: Fit, averagePrice: number, errors: FitErrors | null): Coefficient[] {
   const { solution, design, columns, groups } = fit;
-  const t = solution.residualDf > 0 ? tUpperQuantile(0.025, solution.residualDf) : null;
+  const df = errors?.df ?? solution.residualDf;
+  const t = df > 0 ? tUpperQuantile(0.025, df) : null;
+  const { standardErrors, interceptStandardError } = errors ?? solution;
   const intercept: Coefficient = {
     attribute: "intercept",
     label: "Intercept",
     level: null,
     stepWords: "",
     estimate: solution.intercept!,
-    ...errorsOf(solution.intercept!, solution.interceptStandardError, fit.hc3InterceptStandardError, t),
+    ...rangeOf(solution.intercept!, interceptStandardError, fit.hc3InterceptStandardError, t),
     moneyPerStep: null,
     moneyLow95: null,
     moneyHigh95: null,
@@ -94,8 +101,8 @@ function coefficientsOf(fit: Fit, averagePrice: number): Coefficient[] {
     const { attribute, level } = design.columns[index]!;
     const group = groups.find((one) => one.key === attribute)!;
     const estimate = solution.slopes[at]!;
-    const standardError = t === null ? null : solution.standardErrors[at]!;
-    const errors = errorsOf(estimate, standardError, fit.hc3StandardErrors?.[at] ?? null, t);
+    const standardError = t === null ? null : standardErrors[at]!;
+    const range = rangeOf(estimate, standardError, fit.hc3StandardErrors?.[at] ?? null, t);
     const money = (b: number | null) => (b === null ? null : moneyOf(design, b, group.step, averagePrice));
     return {
       attribute,
@@ -103,16 +110,16 @@ function coefficientsOf(fit: Fit, averagePrice: number): Coefficient[] {
       level,
       stepWords: group.stepWords ?? (group.form === "choice" ? `against ${group.reference}` : "yes against no"),
       estimate,
-      ...errors,
+      ...range,
       moneyPerStep: money(estimate),
-      moneyLow95: money(errors.low95),
-      moneyHigh95: money(errors.high95),
+      moneyLow95: money(range.low95),
+      moneyHigh95: money(range.high95),
     };
   });
   return [intercept, ...others];
 }
 
-function errorsOf(estimate: number, standardError: number | null, hc3: number | null, t: number | null) {
+function rangeOf(estimate: number, standardError: number | null, hc3: number | null, t: number | null) {
   const isKnown = standardError !== null && t !== null;
   return {
     standardError,
