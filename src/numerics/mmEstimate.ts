@@ -18,7 +18,7 @@ export const SEARCH_SEEDS = [20061129, 19870601] as const;
 const STARTS = 500;
 const CONCENTRATION_STEPS = 2;
 const CARRIED_ON = 5;
-/** From more rows than this the search runs on a random part of this size, and only its best are judged on all rows. */
+/** From more rows than this the search runs on a random part of this size, and its best is carried on over all rows. */
 export const SEARCH_ROWS = 2000;
 /** The two searches have ended alike when their scales agree this well. */
 const ALIKE = 1e-8;
@@ -87,11 +87,12 @@ export function sEstimate(
   const draw = seededRandom(seed);
   const part = searchPart(frame, response, weights, draw);
   if (part === null) return null;
-  const carriedOn = candidates(part, draw).map((start) => concentrate(frame, response, weights, start));
-  return carriedOn.reduce<SEstimate | null>(
-    (best, end) => (end !== null && (best === null || end.scale < best.scale) ? end : best),
+  const ends = candidates(part, draw).map((start) => concentrate(part.frame, part.response, part.weights, start));
+  const best = ends.reduce<SEstimate | null>(
+    (least, end) => (end !== null && (least === null || end.scale < least.scale) ? end : least),
     null,
   );
+  return best === null || part.frame === frame ? best : concentrate(frame, response, weights, best.coefficients);
 }
 
 interface SearchPart {

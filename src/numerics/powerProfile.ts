@@ -6,6 +6,7 @@
 
 import { solveByRoot } from "./choleskyFactor.ts";
 import type { Column } from "./column.ts";
+import { goldenSection } from "./goldenSection.ts";
 import { checkColumns, NumericsError } from "./numericsError.ts";
 import { type Frame, frameOf, productsWith, residualsAt, rootOf, weightedProducts } from "./weightedSteps.ts";
 
@@ -43,7 +44,8 @@ export function profilePower(
   const powers = Array.from({ length: CURVE_STEPS + 1 }, (_, step) => (step - CURVE_STEPS / 2) / 10);
   const values = powers.map(at);
   const top = values.reduce((most, value, step) => (value > values[most]! ? step : most), 0);
-  const best = highestBetween(at, powers[Math.max(0, top - 1)]!, powers[Math.min(CURVE_STEPS, top + 1)]!);
+  const [from, to] = [powers[Math.max(0, top - 1)]!, powers[Math.min(CURVE_STEPS, top + 1)]!];
+  const best = goldenSection((power) => -at(power), from, to, 1e-7);
   const most = Math.max(at(best), values[top]!);
   const cut = most - HALF_CHI_SQUARE;
   return {
@@ -72,44 +74,35 @@ function prepare(
   return { frame, root: rootOf(matrix, frame.k + 1), weights, logs };
 }
 
-/** ℓ(λ) up to a constant; +Infinity when the residuals are zero to rounding. */
+/**
+ * ℓ(λ) up to a constant; very large, but a number, when the residuals are zero. One step is enough: near its minimum the residual sum of
+ * squares errs by the square of what the coefficients err by.
+ */
 function logLikelihood({ frame, root, weights, logs }: Profile, power: number): number {
   const v = power === 0 ? logs : logs.map((log) => Math.expm1(power * log) / power);
-  const q = frame.k + 1;
-  const coefficients = new Float64Array(q);
-  let residuals = v;
-  for (let pass = 0; pass < 2; pass++) {
-    const vector = productsWith(frame, weights, residuals);
-    for (let j = 0; j < q; j++) vector[j]! -= frame.penalty[j]! * coefficients[j]!;
-    const step = solveByRoot(root, vector);
-    for (let j = 0; j < q; j++) coefficients[j]! += step[j]!;
-    residuals = residualsAt(frame, v, coefficients);
-  }
-  let rss = 0;
+  const residuals = residualsAt(frame, v, solveByRoot(root, productsWith(frame, weights, v)));
+  let rss = Number.MIN_VALUE;
   for (let i = 0; i < residuals.length; i++) rss += (weights === null ? 1 : weights[i]!) * residuals[i]! ** 2;
   return (-logs.length / 2) * Math.log(rss / logs.length);
 }
 
-/** The maximum of a curve with one top between two powers, by thirds. */
-function highestBetween(at: (power: number) => number, low: number, high: number): number {
-  let a = low;
-  let b = high;
-  while (b - a > 1e-7) {
-    const third = (b - a) / 3;
-    if (at(a + third) >= at(b - third)) b -= third;
-    else a += third;
-  }
-  return (a + b) / 2;
-}
-
-/** Where ℓ passes `cut` between a power outside the interval and one inside, by halving. */
+/** Where ℓ passes `cut` between a power outside the interval and one inside (Illinois: Dowell & Jarratt 1971). */
 function crossing(at: (power: number) => number, cut: number, outside: number, inside: number): number {
-  let out = outside;
-  let within = inside;
-  while (Math.abs(within - out) > 1e-9) {
-    const middle = (out + within) / 2;
-    if (at(middle) >= cut) within = middle;
-    else out = middle;
+  let out = { x: outside, f: at(outside) - cut };
+  let within = { x: inside, f: at(inside) - cut };
+  for (let steps = 0; steps < 100 && Math.abs(within.x - out.x) > 1e-10; steps++) {
+    const secant = (out.x * within.f - within.x * out.f) / (within.f - out.f);
+    const x = Number.isFinite(secant) ? secant : (out.x + within.x) / 2;
+    const f = at(x) - cut;
+    if (f === 0) return x;
+    if (f > 0) {
+      within = { x, f };
+      out = { x: out.x, f: out.f / 2 };
+    } else {
+      out = { x, f };
+      within = { x: within.x, f: within.f / 2 };
+    }
+    if (Math.abs(f) < 1e-9) return x;
   }
-  return within;
+  return within.x;
 }

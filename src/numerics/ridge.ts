@@ -7,6 +7,7 @@
  */
 import { EigenvalueDecomposition, Matrix } from "ml-matrix";
 import type { Column } from "./column.ts";
+import { goldenSection } from "./goldenSection.ts";
 import { checkColumns, NumericsError } from "./numericsError.ts";
 import { eachTile, type Frame, frameOf, TILE_ROWS, weightedProducts } from "./weightedSteps.ts";
 
@@ -35,6 +36,8 @@ export interface RidgeOptions {
 const GRID = { from: -8, to: 2, steps: 40 } as const;
 /** The chosen penalty keeps three digits: the error is flat there, and a stated penalty can be typed again. */
 const DIGITS = 3;
+/** Of ln λ: half a unit of the third digit is 5·10⁻⁴. */
+const LN_TOLERANCE = 1e-4;
 
 interface Spectrum {
   readonly frame: Frame;
@@ -67,7 +70,7 @@ export function chooseRidgePenalty(
   if (least === 0) return { best: curve[0]!, curve };
   const low = least === 1 ? Math.log(gridPenalty(-1, unit)) : Math.log(curve[least - 1]!.penalty);
   const high = Math.log(curve[Math.min(least + 1, curve.length - 1)]!.penalty);
-  const found = goldenSection((at) => ridgeCurve(spectrum, [Math.exp(at)])[0]!.looError, low, high);
+  const found = goldenSection((at) => ridgeCurve(spectrum, [Math.exp(at)])[0]!.looError, low, high, LN_TOLERANCE);
   const [rounded] = ridgeCurve(spectrum, [Number(Math.exp(found).toPrecision(DIGITS))]);
   const best = [rounded!, curve[least]!, curve[0]!].reduce((a, b) => (b.looError < a.looError ? b : a));
   return { best, curve };
@@ -162,29 +165,4 @@ function eachScore(spectrum: Spectrum, visit: (score: Float64Array, row: number)
       visit(score, start + i);
     }
   });
-}
-
-/** Where f is least between low and high (Kiefer 1953), to 10⁻⁴ of ln λ: half a unit of the third digit is 5·10⁻⁴. */
-function goldenSection(f: (x: number) => number, low: number, high: number): number {
-  const ratio = (Math.sqrt(5) - 1) / 2;
-  let a = low;
-  let b = high;
-  let left = { x: b - ratio * (b - a), f: 0 };
-  let right = { x: a + ratio * (b - a), f: 0 };
-  left.f = f(left.x);
-  right.f = f(right.x);
-  while (b - a > 1e-4) {
-    if (left.f <= right.f) {
-      b = right.x;
-      right = left;
-      left = { x: b - ratio * (b - a), f: 0 };
-      left.f = f(left.x);
-    } else {
-      a = left.x;
-      left = right;
-      right = { x: a + ratio * (b - a), f: 0 };
-      right.f = f(right.x);
-    }
-  }
-  return (a + b) / 2;
 }
