@@ -10,6 +10,7 @@ import { dirname, join, relative, resolve } from "node:path";
 import { fileURLToPath } from "node:url";
 import asc from "assemblyscript/asc";
 import type { Plugin } from "vite";
+import type {} from "vitest/node";
 
 const MARK = "?wasm";
 const root = fileURLToPath(new URL("../..", import.meta.url));
@@ -20,6 +21,10 @@ export function assemblyPlugin(): Plugin {
   return {
     name: "lotwright-assembly",
     enforce: "pre",
+    // Vitest keeps modules by the text of one file, but a binary comes from several.
+    configureVitest({ defineCacheKeyGenerator }) {
+      defineCacheKeyGenerator(({ id }) => (id.endsWith(MARK) ? false : undefined));
+    },
     async resolveId(source, importer) {
       if (!source.endsWith(`.ts${MARK}`)) return null;
       const file = await this.resolve(source.slice(0, -MARK.length), importer, { skipSelf: true });

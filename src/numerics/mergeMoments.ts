@@ -42,6 +42,11 @@ export function emptyMoments(q: number): Moments {
  */
 export function mergeMoments(parts: readonly Moments[]): Moments {
   if (parts.length === 0) throw new NumericsError("shape", "there are no moments to merge");
+  return rescaled(mergeParts(parts));
+}
+
+/** As `mergeMoments`, with scales as they come. */
+export function mergeParts(parts: readonly Moments[]): Moments {
   let level = parts;
   while (level.length > 1) {
     const pairs: Moments[] = [];
@@ -51,7 +56,7 @@ export function mergeMoments(parts: readonly Moments[]): Moments {
     }
     level = pairs;
   }
-  return parts.length === 1 ? level[0]! : rescaled(level[0]!);
+  return level[0]!;
 }
 
 /** The moments with one row more; O(q²). A row of weight 0 changes nothing. */
@@ -138,11 +143,16 @@ function mergedCrossProducts(
       const fromA = a.crossProducts[at]! * ratioA[j]! * ratioA[k]!;
       const fromB = b.crossProducts[at]! * ratioB[j]! * ratioB[k]!;
       const value = fromA + fromB + factor * z[j]! * z[k]!;
-      crossProducts[at] = value;
-      crossProducts[k * q + j] = value;
+      setBoth(crossProducts, q, j, k, value);
     }
   }
   return crossProducts;
+}
+
+/** Sets S_jk and S_kj. */
+export function setBoth(crossProducts: Float64Array, q: number, j: number, k: number, value: number): void {
+  crossProducts[j * q + k] = value;
+  crossProducts[k * q + j] = value;
 }
 
 /** The larger scale; a column that is constant in one part takes the other's, in both that of the distance between them. */
@@ -156,7 +166,7 @@ function mergedScale(a: Moments, b: Moments, j: number, distance: number): numbe
 }
 
 /** The same moments with each scale near the root mean square deviation √(S_jj/W)·c_j; exact. */
-export function rescaled(moments: Moments): Moments {
+function rescaled(moments: Moments): Moments {
   const { weightSum, crossProducts: old } = moments;
   const q = moments.scales.length;
   const scales = moments.scales.map((scale, j) => {

@@ -1,6 +1,6 @@
 /**
- * Addresses of one block in a kernel's memory, in bytes: the columns (a column of ones first, which brings sums and counts out
- * of the same products), with weights once more times the weights, the codes of the choices, then the sums.
+ * Addresses of one block in a kernel's memory, in bytes: the numbers, a column of ones (which brings the weight of each group
+ * out of the grouped sums), with weights all of it once more times the weights, the codes of the choices, then the sums.
  */
 import type { ColumnPlan } from "./columnPlan.ts";
 import { BLOCK_ROWS, COLUMN_STRIDE, CROSS_WIDTH, GROUP_WIDTH } from "./layout.ts";
@@ -8,13 +8,16 @@ import { BLOCK_ROWS, COLUMN_STRIDE, CROSS_WIDTH, GROUP_WIDTH } from "./layout.ts
 export const COLUMN_BYTES = COLUMN_STRIDE * 8;
 
 export interface BlockLayout {
-  /** Columns of cross-products and of grouped sums: the numbers and the ones, filled up with zeros to the kernels' widths. */
+  /** Columns of cross-products (the numbers) and of grouped sums (with the ones), filled up to the kernels' widths. */
   readonly crossColumns: number;
   readonly groupColumns: number;
   readonly filledColumns: number;
   readonly first: number;
+  readonly ones: number;
   /** Columns times weights; `first` without weights. */
   readonly weighted: number;
+  /** The weights; the ones without weights. */
+  readonly weights: number;
   /** Per choice. */
   readonly codes: readonly number[];
   readonly range: number;
@@ -29,9 +32,8 @@ export interface BlockLayout {
 
 /** Where everything lies when the first free byte is `start`. */
 export function layOut({ numbers, choices }: ColumnPlan, isWeighted: boolean, start: number): BlockLayout {
-  const used = numbers.length + 1;
-  const crossColumns = Math.ceil(used / CROSS_WIDTH) * CROSS_WIDTH;
-  const groupColumns = Math.ceil(used / GROUP_WIDTH) * GROUP_WIDTH;
+  const crossColumns = Math.ceil(numbers.length / CROSS_WIDTH) * CROSS_WIDTH;
+  const groupColumns = Math.ceil((numbers.length + 1) / GROUP_WIDTH) * GROUP_WIDTH;
   const filledColumns = Math.max(crossColumns, groupColumns);
   let free = start;
   const take = (bytes: number): number => {
@@ -40,12 +42,15 @@ export function layOut({ numbers, choices }: ColumnPlan, isWeighted: boolean, st
     return at;
   };
   const first = take(filledColumns * COLUMN_BYTES);
+  const weighted = isWeighted ? take(filledColumns * COLUMN_BYTES) : first;
   return {
     crossColumns,
     groupColumns,
     filledColumns,
     first,
-    weighted: isWeighted ? take(filledColumns * COLUMN_BYTES) : first,
+    ones: first + numbers.length * COLUMN_BYTES,
+    weighted,
+    weights: weighted + numbers.length * COLUMN_BYTES,
     codes: choices.map(() => take(BLOCK_ROWS * 2)),
     range: take(24),
     high: take(crossColumns * crossColumns * 8),

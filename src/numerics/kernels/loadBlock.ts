@@ -25,19 +25,12 @@ function loadLevel(f64: Float64Array, at: number, codes: Uint16Array, level: num
   for (let i = start; i < end; i++) f64[at + i - start] = codes[i] === level ? 1 : 0;
 }
 
-/** Writes the group of each row from u16[at] on; gives back the rows of each group. */
-export function loadGroups(u16: Uint16Array, at: number, choice: GroupedChoice, rows: Rows): Uint32Array {
-  const { codes, groupOf, groups } = choice;
-  const counts = new Uint32Array(groups);
+/** Writes the group of each row from u16[at] on. */
+export function loadGroups(u16: Uint16Array, at: number, { codes, groupOf }: GroupedChoice, rows: Rows): void {
   const known = groupOf.length;
-  const size = countOf(rows);
-  const chosen = rows instanceof Uint32Array ? rows : null;
-  const start = rows instanceof Uint32Array ? 0 : rows.start;
-  for (let i = 0; i < size; i++) {
-    const code = codes[chosen === null ? start + i : chosen[i]!]!;
-    const group = code < known ? groupOf[code]! : 0;
-    u16[at + i] = group;
-    counts[group] = counts[group]! + 1;
-  }
-  return counts;
+  const place = (i: number, code: number): void => {
+    u16[at + i] = code < known ? groupOf[code]! : 0;
+  };
+  if (rows instanceof Uint32Array) for (let i = 0; i < rows.length; i++) place(i, codes[rows[i]!]!);
+  else for (let i = rows.start; i < rows.end; i++) place(i - rows.start, codes[i]!);
 }

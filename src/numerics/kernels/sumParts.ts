@@ -3,7 +3,7 @@
  * whoever computes a part, the bits are the same.
  */
 import type { Column } from "../column.ts";
-import { type Moments, mergeMoments } from "../mergeMoments.ts";
+import { type Moments, mergeParts } from "../mergeMoments.ts";
 import { blockMoments } from "./blockMoments.ts";
 import type { ColumnPlan } from "./columnPlan.ts";
 import type { Kernel } from "./kernel.ts";
@@ -24,7 +24,7 @@ export function partCount(rows: Rows): number {
   return Math.max(1, Math.ceil(countOf(rows) / PART_ROWS));
 }
 
-/** Moments of one part; null when some value is not finite. */
+/** Moments of one part, scales as they come; null when some value is not finite. */
 export function partMoments(
   kernel: Kernel,
   plan: ColumnPlan,
@@ -38,7 +38,7 @@ export function partMoments(
     if (moments === null) return null;
     blocks.push(moments);
   }
-  return mergeMoments(blocks);
+  return mergeParts(blocks);
 }
 
 function slice(rows: Rows, start: number, end: number): Rows {

@@ -9,7 +9,10 @@ const NEXT: usize = COLUMN_STRIDE * 8;
 const NEXT2: usize = NEXT * 2;
 const NEXT3: usize = NEXT * 3;
 
-/** Writes sum, least and largest value of a column to `out`; NaN spreads to all three. Eight running sums. */
+/**
+ * Writes sum, least and largest value of a column to `out`. Eight running sums; the sum alone tells of values that are not
+ * finite, so that the two others may use the plain comparisons of one instruction.
+ */
 export function rangeOfColumn(column: usize, rows: i32, out: usize): void {
   let sum0 = f64x2.splat(0);
   let sum1 = f64x2.splat(0);
@@ -28,43 +31,109 @@ export function rangeOfColumn(column: usize, rows: i32, out: usize): void {
     sum1 = f64x2.add(sum1, b);
     sum2 = f64x2.add(sum2, c);
     sum3 = f64x2.add(sum3, d);
-    least = f64x2.min(least, f64x2.min(f64x2.min(a, b), f64x2.min(c, d)));
-    largest = f64x2.max(largest, f64x2.max(f64x2.max(a, b), f64x2.max(c, d)));
+    least = f64x2.pmin(least, f64x2.pmin(f64x2.pmin(a, b), f64x2.pmin(c, d)));
+    largest = f64x2.pmax(largest, f64x2.pmax(f64x2.pmax(a, b), f64x2.pmax(c, d)));
   }
-  const sums = f64x2.add(f64x2.add(sum0, sum1), f64x2.add(sum2, sum3));
-  let sum = f64x2.extract_lane(sums, 0) + f64x2.extract_lane(sums, 1);
-  let low = min(f64x2.extract_lane(least, 0), f64x2.extract_lane(least, 1));
-  let high = max(f64x2.extract_lane(largest, 0), f64x2.extract_lane(largest, 1));
+  let sum = sumOfLanes(sum0, sum1, sum2, sum3);
+  let low = smaller(f64x2.extract_lane(least, 0), f64x2.extract_lane(least, 1));
+  let high = larger(f64x2.extract_lane(largest, 0), f64x2.extract_lane(largest, 1));
   const end = column + (<usize>rows << 3);
   for (; at < end; at += 8) {
     const x = load<f64>(at);
     sum += x;
-    low = min(low, x);
-    high = max(high, x);
+    low = smaller(low, x);
+    high = larger(high, x);
   }
   store<f64>(out, sum);
   store<f64>(out, low, 8);
   store<f64>(out, high, 16);
 }
 
-/** Replaces each x of a column by (x − shift) · factor, and the row after an odd last one by 0. */
-export function shiftColumn(column: usize, rows: i32, shift: f64, factor: f64): void {
-  const shifts = f64x2.splat(shift);
-  const factors = f64x2.splat(factor);
-  const end = column + (<usize>rows << 3);
-  for (let at = column; at < end; at += 16) {
-    v128.store(at, f64x2.mul(f64x2.sub(v128.load(at), shifts), factors));
-  }
-  if (rows & 1) store<f64>(end, 0);
+// @ts-ignore: decorators on functions belong to AssemblyScript
+@inline
+function smaller(a: f64, b: f64): f64 {
+  return b < a ? b : a;
 }
 
-/** Writes w · z to `out` for the rows of a column, and 0 after an odd last one. */
-export function weightColumn(column: usize, weights: usize, rows: i32, out: usize): void {
+// @ts-ignore: decorators on functions belong to AssemblyScript
+@inline
+function larger(a: f64, b: f64): f64 {
+  return a < b ? b : a;
+}
+
+/** Replaces each x of a column by (x − shift) · factor, and the row after an odd last one by 0; gives back the sum. */
+export function shiftColumn(column: usize, rows: i32, shift: f64, factor: f64): f64 {
+  const shifts = f64x2.splat(shift);
+  const factors = f64x2.splat(factor);
+  let sum0 = f64x2.splat(0);
+  let sum1 = sum0;
+  let sum2 = sum0;
+  let sum3 = sum0;
+  let at = column;
+  const whole = column + (<usize>(rows & ~7) << 3);
+  for (; at < whole; at += 64) {
+    const a = f64x2.mul(f64x2.sub(v128.load(at), shifts), factors);
+    const b = f64x2.mul(f64x2.sub(v128.load(at, 16), shifts), factors);
+    const c = f64x2.mul(f64x2.sub(v128.load(at, 32), shifts), factors);
+    const d = f64x2.mul(f64x2.sub(v128.load(at, 48), shifts), factors);
+    v128.store(at, a);
+    v128.store(at, b, 16);
+    v128.store(at, c, 32);
+    v128.store(at, d, 48);
+    sum0 = f64x2.add(sum0, a);
+    sum1 = f64x2.add(sum1, b);
+    sum2 = f64x2.add(sum2, c);
+    sum3 = f64x2.add(sum3, d);
+  }
+  let sum = sumOfLanes(sum0, sum1, sum2, sum3);
+  const end = column + (<usize>rows << 3);
+  for (; at < end; at += 8) {
+    const z = (load<f64>(at) - shift) * factor;
+    store<f64>(at, z);
+    sum += z;
+  }
+  if (rows & 1) store<f64>(end, 0);
+  return sum;
+}
+
+/** Writes w · z to `out` for the rows of a column, and 0 after an odd last one; gives back the sum. */
+export function weightColumn(column: usize, weights: usize, rows: i32, out: usize): f64 {
+  let sum0 = f64x2.splat(0);
+  let sum1 = sum0;
+  let sum2 = sum0;
+  let sum3 = sum0;
+  let at: usize = 0;
+  const whole = <usize>(rows & ~7) << 3;
+  for (; at < whole; at += 64) {
+    const a = f64x2.mul(v128.load(column + at), v128.load(weights + at));
+    const b = f64x2.mul(v128.load(column + at, 16), v128.load(weights + at, 16));
+    const c = f64x2.mul(v128.load(column + at, 32), v128.load(weights + at, 32));
+    const d = f64x2.mul(v128.load(column + at, 48), v128.load(weights + at, 48));
+    v128.store(out + at, a);
+    v128.store(out + at, b, 16);
+    v128.store(out + at, c, 32);
+    v128.store(out + at, d, 48);
+    sum0 = f64x2.add(sum0, a);
+    sum1 = f64x2.add(sum1, b);
+    sum2 = f64x2.add(sum2, c);
+    sum3 = f64x2.add(sum3, d);
+  }
+  let sum = sumOfLanes(sum0, sum1, sum2, sum3);
   const end = <usize>rows << 3;
-  for (let at: usize = 0; at < end; at += 16) {
-    v128.store(out + at, f64x2.mul(v128.load(column + at), v128.load(weights + at)));
+  for (; at < end; at += 8) {
+    const z = load<f64>(column + at) * load<f64>(weights + at);
+    store<f64>(out + at, z);
+    sum += z;
   }
   if (rows & 1) store<f64>(out + end, 0);
+  return sum;
+}
+
+// @ts-ignore: decorators on functions belong to AssemblyScript
+@inline
+function sumOfLanes(sum0: v128, sum1: v128, sum2: v128, sum3: v128): f64 {
+  const sums = f64x2.add(f64x2.add(sum0, sum1), f64x2.add(sum2, sum3));
+  return f64x2.extract_lane(sums, 0) + f64x2.extract_lane(sums, 1);
 }
 
 /**

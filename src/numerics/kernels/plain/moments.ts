@@ -7,8 +7,8 @@ import type { PlainMemory } from "./plainMemory.ts";
 
 export interface MomentOperations {
   rangeOfColumn(column: number, rows: number, out: number): void;
-  shiftColumn(column: number, rows: number, shift: number, factor: number): void;
-  weightColumn(column: number, weights: number, rows: number, out: number): void;
+  shiftColumn(column: number, rows: number, shift: number, factor: number): number;
+  weightColumn(column: number, weights: number, rows: number, out: number): number;
   crossProducts(left: number, right: number, columns: number, rows: number, high: number, low: number): void;
   groupSums(codes: number, groups: number, first: number, columns: number, rows: number, out: number): void;
   pairSums(codesA: number, codesB: number, groupsB: number, weights: number, rows: number, out: number): void;
@@ -28,33 +28,40 @@ export function momentOperations(memory: PlainMemory): MomentOperations {
   };
 }
 
-function rangeOfColumn(f64: Float64Array, column: number, rows: number, out: number): void {
+/** Sum of `rows` doubles: eight running sums for whole eights of rows, added up in pairs, then the rest one by one. */
+function sumOf(f64: Float64Array, at: number, rows: number): number {
   const sums = new Float64Array(8);
-  let least = Number.POSITIVE_INFINITY;
-  let largest = Number.NEGATIVE_INFINITY;
   const whole = rows - (rows % 8);
-  for (let i = 0; i < rows; i++) {
-    const x = f64[column + i]!;
-    if (i < whole) sums[i % 8] = sums[i % 8]! + x;
-    least = Math.min(least, x);
-    largest = Math.max(largest, x);
-  }
+  for (let i = 0; i < whole; i++) sums[i % 8] = sums[i % 8]! + f64[at + i]!;
   const lane = (l: number): number => sums[l]! + sums[2 + l]! + (sums[4 + l]! + sums[6 + l]!);
   let sum = lane(0) + lane(1);
-  for (let i = whole; i < rows; i++) sum += f64[column + i]!;
-  f64[out] = sum;
+  for (let i = whole; i < rows; i++) sum += f64[at + i]!;
+  return sum;
+}
+
+function rangeOfColumn(f64: Float64Array, column: number, rows: number, out: number): void {
+  let least = Number.POSITIVE_INFINITY;
+  let largest = Number.NEGATIVE_INFINITY;
+  for (let i = 0; i < rows; i++) {
+    const x = f64[column + i]!;
+    if (x < least) least = x;
+    if (largest < x) largest = x;
+  }
+  f64[out] = sumOf(f64, column, rows);
   f64[out + 1] = least;
   f64[out + 2] = largest;
 }
 
-function shiftColumn(f64: Float64Array, column: number, rows: number, shift: number, factor: number): void {
+function shiftColumn(f64: Float64Array, column: number, rows: number, shift: number, factor: number): number {
   for (let i = 0; i < rows; i++) f64[column + i] = (f64[column + i]! - shift) * factor;
   if (rows % 2 === 1) f64[column + rows] = 0;
+  return sumOf(f64, column, rows);
 }
 
-function weightColumn(f64: Float64Array, column: number, weights: number, rows: number, out: number): void {
+function weightColumn(f64: Float64Array, column: number, weights: number, rows: number, out: number): number {
   for (let i = 0; i < rows; i++) f64[out + i] = f64[column + i]! * f64[weights + i]!;
   if (rows % 2 === 1) f64[out + rows] = 0;
+  return sumOf(f64, out, rows);
 }
 
 function crossProducts(
