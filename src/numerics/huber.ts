@@ -5,7 +5,7 @@
  * Symbols: a weights that sales have already, e residuals (n), s scale.
  */
 import type { Column } from "./column.ts";
-import { checkColumns } from "./numericsError.ts";
+import { checkColumns, NumericsError } from "./numericsError.ts";
 import { weightedMedian } from "./weightedMedian.ts";
 import { type Frame, frameOf, largestMove, meanOf, residualsAt, weightedStep } from "./weightedSteps.ts";
 
@@ -50,14 +50,18 @@ export const HUBER: Psi = {
   slope: (u) => (Math.abs(u) <= HUBER_K ? 1 : 0),
 };
 
-/** Refuses shape, notFinite, rankDeficient. Residuals of zero (more than half of them): scale 0, and least squares stands. */
+/** Refuses shape, notFinite, tooFewRows (n ≤ k + 1 without penalties), rankDeficient. Residuals of zero (more than half of them): scale 0, and least squares stands. */
 export function huberEstimate(
   columns: readonly Column[],
   response: Float64Array,
   options: RobustOptions = {},
 ): MEstimate {
   checkColumns([], response);
-  const frame = frameOf(columns, response.length, options.penalty ?? null);
+  const n = response.length;
+  const count = columns.length + 1;
+  if (!options.penalty && n <= count)
+    throw new NumericsError("tooFewRows", `${n} rows cannot carry ${count} coefficients`);
+  const frame = frameOf(columns, n, options.penalty ?? null);
   const given = options.weights ?? null;
   const start = weightedStep(frame, given, response, new Float64Array(frame.k + 1));
   return iterate(frame, response, given, start, HUBER, (residuals) => usualScale(residuals, given, response));

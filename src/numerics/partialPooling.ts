@@ -8,6 +8,7 @@
  */
 import { choleskyFactor, invertUpper } from "./choleskyFactor.ts";
 import type { Column } from "./column.ts";
+import { findRoot } from "./findRoot.ts";
 import { checkColumns, NumericsError } from "./numericsError.ts";
 import { type Frame, frameOf, weightedProducts } from "./weightedSteps.ts";
 
@@ -35,8 +36,10 @@ const NEARLY_NO_DIFFERENCE = 1e6;
 /** λ below this leaves the levels as they are to nine digits. */
 const NO_POOLING = 1e-9;
 /** Cells that the range of ln λ is looked at in. */
-const GRID_STEPS = 96;
+const GRID_STEPS = 48;
 const MOST_ROUNDS = 100;
+/** What stands for RSS_λ, against the response's own sum of squares, where rounding leaves none. */
+const FITTED_EXACTLY = 1e-13;
 
 /** Products of the columns and the response; everything else follows from these. */
 interface Products {
@@ -123,14 +126,8 @@ function bestPenalty(
   if (start < 0) return NO_POOLING;
   const isFlat = lowest + start * cell > Math.log(NEARLY_NO_DIFFERENCE * products.totalWeight);
   if (isFlat || start >= GRID_STEPS) return none;
-  let low = lowest + start * cell;
-  let high = low + cell;
-  while (true) {
-    const middle = (low + high) / 2;
-    if (middle <= low || middle >= high) return Math.exp(middle);
-    if (look(middle).slope > 0) high = middle;
-    else low = middle;
-  }
+  const low = lowest + start * cell;
+  return Math.exp(findRoot((x) => look(x).slope, low, low + cell, 1e-15));
 }
 
 /** −2ℓ and its slope in ln λ of one group. */
@@ -163,11 +160,13 @@ function solveAt(products: Products, groups: readonly (readonly number[])[], pen
   for (const [at, members] of groups.entries()) {
     for (const column of members) c[(column + 1) * (q + 1)]! += penalties[at]! / frame.scales[column]! ** 2;
   }
-  const r = choleskyFactor(c, q, 0);
+  let r = choleskyFactor(c, q, 0);
+  if (r === q - 1) {
+    c[q * q - 1]! *= 1 + FITTED_EXACTLY;
+    r = choleskyFactor(c, q, 0);
+  }
   if (typeof r === "number") {
-    const isResponse = r === q - 1;
-    const message = isResponse ? "the response is fitted exactly" : "the other columns depend on each other";
-    throw new NumericsError("rankDeficient", message, r === 0 || isResponse ? [] : [r - 1]);
+    throw new NumericsError("rankDeficient", "the other columns depend on each other", r === 0 ? [] : [r - 1]);
   }
   const t = invertUpper(r, q);
   const last = q - 1;

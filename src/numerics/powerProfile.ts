@@ -6,6 +6,7 @@
 
 import { solveByRoot } from "./choleskyFactor.ts";
 import type { Column } from "./column.ts";
+import { findRoot } from "./findRoot.ts";
 import { goldenSection } from "./goldenSection.ts";
 import { checkColumns, NumericsError } from "./numericsError.ts";
 import { type Frame, frameOf, productsWith, residualsAt, rootOf, weightedProducts } from "./weightedSteps.ts";
@@ -47,12 +48,12 @@ export function profilePower(
   const [from, to] = [powers[Math.max(0, top - 1)]!, powers[Math.min(CURVE_STEPS, top + 1)]!];
   const best = goldenSection((power) => -at(power), from, to, 1e-7);
   const most = Math.max(at(best), values[top]!);
-  const cut = most - HALF_CHI_SQUARE;
+  const above = (power: number) => at(power) - most + HALF_CHI_SQUARE;
   return {
     curve: powers.map((power, step) => ({ power, logLikelihood: values[step]! - most })),
     best,
-    low: at(LOWEST_POWER) >= cut ? null : crossing(at, cut, LOWEST_POWER, best),
-    high: at(HIGHEST_POWER) >= cut ? null : crossing(at, cut, HIGHEST_POWER, best),
+    low: above(LOWEST_POWER) >= 0 ? null : findRoot(above, LOWEST_POWER, best, 1e-10),
+    high: above(HIGHEST_POWER) >= 0 ? null : findRoot(above, HIGHEST_POWER, best, 1e-10),
   };
 }
 
@@ -84,25 +85,4 @@ function logLikelihood({ frame, root, weights, logs }: Profile, power: number): 
   let rss = Number.MIN_VALUE;
   for (let i = 0; i < residuals.length; i++) rss += (weights === null ? 1 : weights[i]!) * residuals[i]! ** 2;
   return (-logs.length / 2) * Math.log(rss / logs.length);
-}
-
-/** Where ℓ passes `cut` between a power outside the interval and one inside (Illinois: Dowell & Jarratt 1971). */
-function crossing(at: (power: number) => number, cut: number, outside: number, inside: number): number {
-  let out = { x: outside, f: at(outside) - cut };
-  let within = { x: inside, f: at(inside) - cut };
-  for (let steps = 0; steps < 100 && Math.abs(within.x - out.x) > 1e-10; steps++) {
-    const secant = (out.x * within.f - within.x * out.f) / (within.f - out.f);
-    const x = Number.isFinite(secant) ? secant : (out.x + within.x) / 2;
-    const f = at(x) - cut;
-    if (f === 0) return x;
-    if (f > 0) {
-      within = { x, f };
-      out = { x: out.x, f: out.f / 2 };
-    } else {
-      out = { x, f };
-      within = { x: within.x, f: within.f / 2 };
-    }
-    if (Math.abs(f) < 1e-9) return x;
-  }
-  return within.x;
 }

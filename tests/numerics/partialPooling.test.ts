@@ -127,6 +127,15 @@ function eliminate(a: ArrayLike<number>[], b: ArrayLike<number>[], n: number) {
   return { rows, logDeterminant };
 }
 
+test("responses that the levels fit exactly are left as they are", () => {
+  const level = [0, 0, 1, 1, 2, 2, 2];
+  const columns = [0, 1, 2].map((l) => Float64Array.from(level, (one) => (one === l ? 1 : 0)));
+  const y = Float64Array.from(level, (l) => 3 + l * l);
+  const [group] = poolLevels(columns, y, [[0, 1, 2]]).groups;
+  const { slopes } = fitAt(columns, y, new Float64Array(3).fill(group!.penalty));
+  expect(slopes[2]! - slopes[0]!).toBeCloseTo(4, 8);
+});
+
 test("too few rows beside the other columns are refused", () => {
   const one = Float64Array.from([1, 0]);
   expect(() => poolLevels([one, one.map((v) => 1 - v), Float64Array.from([3, 5])], one, [[0, 1]])).toThrow(

@@ -1,4 +1,5 @@
 /** The columns of some groups as numerics wants them, and its refusals in the words of the class. */
+import { AppError } from "../../domain/errors.ts";
 import type { Column } from "../../numerics/column.ts";
 import { NumericsError } from "../../numerics/numericsError.ts";
 import type { AttributeGroup, Design, FitRule } from "../fit.ts";
@@ -28,6 +29,7 @@ export function inClassWords<T>(design: Design, groups: readonly AttributeGroup[
     return work();
   } catch (cause) {
     if (!(cause instanceof NumericsError)) throw cause;
+    if (cause.code === "rankDeficient" && cause.columns.length === 0) throw notComputable(cause);
     throw inWords(
       cause,
       design,
@@ -35,4 +37,16 @@ export function inClassWords<T>(design: Design, groups: readonly AttributeGroup[
       groups,
     );
   }
+}
+
+/** Nothing to name: no single attribute is to blame. */
+function notComputable(cause: NumericsError): AppError {
+  return new AppError({
+    family: "fit",
+    code: "not-computable",
+    what: `The fit cannot be worked out: ${cause.message}.`,
+    where: "Price model",
+    whatToDo: "Use another estimator or error rule, or leave attributes out.",
+    cause,
+  });
 }
