@@ -24,6 +24,7 @@ export default defineConfig({
           server: at("src/shells/browser/main.ts"),
           cli: at("src/shells/cli/main.ts"),
           start: at("src/shells/start/main.ts"),
+          computeBlocks: at("src/workers/computeBlocks.ts"),
         },
       },
     },

@@ -5,7 +5,7 @@ import { join } from "node:path";
 import { giveUp, pinnedNode, run, say, top } from "./tools.mjs";
 
 const SOURCES = ["src", "resources/build", "electron.vite.config.ts", "package.json", "package-lock.json", "tsconfig.json"];
-const ENTRIES = ["main/index.js", "main/cli.js", "main/server.js", "main/start.js", "preload/index.cjs", "renderer/index.html"];
+const ENTRIES = ["main/index.js", "main/cli.js", "main/server.js", "main/start.js", "main/computeBlocks.js", "preload/index.cjs", "renderer/index.html"];
 
 function filesUnder(path) {
   const whole = join(top, path);

@@ -1,7 +1,7 @@
 /** Where the program's own files are, run from the build, from a package or from the sources. */
 import { existsSync, readFileSync } from "node:fs";
 import { dirname, join } from "node:path";
-import { fileURLToPath } from "node:url";
+import { fileURLToPath, pathToFileURL } from "node:url";
 
 /** The folder that holds package.json, looked for upwards from this file. */
 export function programRoot(from: string = dirname(fileURLToPath(import.meta.url))): string {
@@ -19,3 +19,5 @@ export function programVersion(): string {
 export const rendererFolder = (): string => join(programRoot(), "out", "renderer");
 export const preloadFile = (): string => join(programRoot(), "out", "preload", "index.cjs");
 export const iconFile = (): string => join(programRoot(), "resources", "icon.png");
+/** What a thread runs that helps to sum rows. */
+export const blockThreadFile = (): URL => pathToFileURL(join(programRoot(), "out", "main", "computeBlocks.js"));
