@@ -15,7 +15,7 @@ export const mm: EstimatorRule<"mm"> = {
   about: "Stands even when nearly half of the sales are wrong, odd items included; takes longer to work out.",
   estimate(design, groups, _setting, ground) {
     const found = search(design, groups, ground);
-    if (!found.isReproduced) throw refusal("Two searches for the bulk of the sales ended at different fits");
+    if (!found.isReproduced) throw refusal("Five searches for the bulk of the sales ended at different fits");
     const opening =
       found.scale === 0
         ? "MM: more than half of the sales lie on the model exactly; only these count."
