@@ -1,5 +1,5 @@
 /** Sums over threads: the same bits whatever the number of threads, and an answer whatever becomes of them. */
-import { afterEach, describe, expect, test } from "vitest";
+import { afterEach, describe, expect, test, vi } from "vitest";
 import { accumulateMoments } from "../../src/numerics/accumulateMoments.ts";
 import { type Column, indicator, isIndicator } from "../../src/numerics/column.ts";
 import type { BlockPool, PartTask } from "../../src/numerics/kernels/blockPool.ts";
@@ -80,6 +80,16 @@ describe("a pool of threads", () => {
   test("whose thread dies with a part in hand does not hold up the caller", () => {
     const lost: BlockPool = { size: 1, offer: (task) => void Atomics.add(task.next, 0, 1) };
     expect(accumulateMoments(onShared, { pool: lost })).toStrictEqual(accumulateMoments(columns));
+  });
+
+  test("helps a caller that may not block, too", () => {
+    const lost: BlockPool = { size: 1, offer: (task) => void Atomics.add(task.next, 0, 1) };
+    const wait = vi.spyOn(Atomics, "wait").mockImplementation(() => {
+      throw new TypeError("Atomics.wait cannot be called in this context");
+    });
+    expect(accumulateMoments(onShared, { pool: lost })).toStrictEqual(accumulateMoments(columns));
+    expect(wait).toHaveBeenCalledTimes(1);
+    wait.mockRestore();
   });
 
   test("that is closed leaves all work to the caller", async () => {

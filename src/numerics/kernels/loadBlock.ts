@@ -28,9 +28,17 @@ function loadLevel(f64: Float64Array, at: number, codes: Uint16Array, level: num
 /** Writes the group of each row from u16[at] on. */
 export function loadGroups(u16: Uint16Array, at: number, { codes, groupOf }: GroupedChoice, rows: Rows): void {
   const known = groupOf.length;
-  const place = (i: number, code: number): void => {
-    u16[at + i] = code < known ? groupOf[code]! : 0;
-  };
-  if (rows instanceof Uint32Array) for (let i = 0; i < rows.length; i++) place(i, codes[rows[i]!]!);
-  else for (let i = rows.start; i < rows.end; i++) place(i - rows.start, codes[i]!);
+  if (rows instanceof Uint32Array) {
+    for (let i = 0; i < rows.length; i++) {
+      const code = codes[rows[i]!]!;
+      u16[at + i] = code < known ? groupOf[code]! : 0;
+    }
+    return;
+  }
+  const { start, end } = rows;
+  const offset = at - start;
+  for (let i = start; i < end; i++) {
+    const code = codes[i]!;
+    u16[offset + i] = code < known ? groupOf[code]! : 0;
+  }
 }
