@@ -2,7 +2,7 @@
  * Columns moved to mean zero and scaled by powers of two, and what storing them as doubles may have cost.
  * Symbols: n rows, k columns; m means in double-double; c scales; z_ij = (x_ij − m_j)/c_j.
  */
-import { powerOfTwoNear, rootMeanSquare } from "./accumulateMoments.ts";
+import { type Moments, powerOfTwoNear, rootMeanSquare } from "./accumulateMoments.ts";
 import { type DoubleDouble, mean } from "./doubleDouble.ts";
 
 export interface Centring {
@@ -21,6 +21,21 @@ export function measureCentring(columns: readonly Float64Array[], centred: boole
   return { means, spreads, scales: spreads.map(powerOfTwoNear) };
 }
 
+/** The same from moments: about the weighted means, or about zero. */
+export function centringOf(moments: Moments, centred: boolean): Centring {
+  const { means, meanTails, scales, weightSum, crossProducts } = moments;
+  const q = scales.length;
+  if (centred) {
+    const both = Array.from(means, (hi, j) => ({ hi, lo: meanTails[j]! }));
+    const spreads = scales.map((scale, j) => scale * Math.sqrt(crossProducts[j * q + j]! / weightSum));
+    return { means: both, spreads, scales };
+  }
+  const spreads = scales.map((scale, j) =>
+    Math.hypot(scale * Math.sqrt(crossProducts[j * q + j]! / weightSum), means[j]!),
+  );
+  return { means: Array.from(means, () => ({ hi: 0, lo: 0 })), spreads, scales: spreads.map(powerOfTwoNear) };
+}
+
 /** New columns z. */
 export function centreColumns(columns: readonly Float64Array[], centring: Centring): Float64Array[] {
   return columns.map((column, j) => {
@@ -37,12 +52,8 @@ export function centreColumns(columns: readonly Float64Array[], centring: Centri
  * stored exactly, else half a unit in the last place of the largest value.
  */
 export function storedError(column: Float64Array): number {
+  const isWhole = column.every(Number.isInteger);
   let largest = 0;
-  let isWhole = true;
-  for (let i = 0; i < column.length; i++) {
-    const x = column[i]!;
-    largest = Math.max(largest, Math.abs(x));
-    isWhole &&= Number.isInteger(x);
-  }
+  for (let i = 0; i < column.length; i++) largest = Math.max(largest, Math.abs(column[i]!));
   return isWhole && largest <= Number.MAX_SAFE_INTEGER ? 0 : largest * 2 ** -53;
 }

@@ -2,7 +2,7 @@
  * The inverse cross-product with all its digits: C accumulated and factored in double-double.
  * Needed for standard errors, whose digits fall with the square of the condition number otherwise. About twenty times the
  * work of plain cross-products, so the caller decides when it is worth it.
- * Symbols: Z n × k centred, scaled; C = Z′Z = R′R; T = R⁻¹ so that C⁻¹ = TT′.
+ * Symbols: Z n × k centred, scaled; C = Z′WZ + Λ = R′R; T = R⁻¹ so that C⁻¹ = TT′.
  */
 import type { Centring } from "./centreColumns.ts";
 import {
@@ -15,6 +15,7 @@ import {
   SPLITTER,
   squareRoot,
   subtract,
+  twoProduct,
   twoSum,
 } from "./doubleDouble.ts";
 
@@ -30,9 +31,19 @@ export interface ExactInverse {
 }
 
 /** C⁻¹ and its root in raw units, or null when 32 digits do not suffice to find all pivots positive. */
-export function exactInverse(columns: readonly Float64Array[], centring: Centring): ExactInverse | null {
+export function exactInverse(
+  columns: readonly Float64Array[],
+  centring: Centring,
+  weights: Float64Array | null,
+  penalty: Float64Array | null,
+): ExactInverse | null {
   const k = columns.length;
-  const r = factor(crossProducts(columns, centring), k);
+  const c = crossProducts(columns, centring, weights);
+  penalty?.forEach((one, j) => {
+    const scale = centring.scales[j]!;
+    c[j * k + j] = add(c[j * k + j]!, { hi: one / scale / scale, lo: 0 });
+  });
+  const r = factor(c, k);
   if (r === null) return null;
   const t = invert(r, k);
   const inverse = new Float64Array(k * k);
@@ -65,17 +76,25 @@ function quadraticForm(t: DoubleDouble[], centring: Centring, k: number): number
   return total.hi;
 }
 
-function crossProducts(columns: readonly Float64Array[], centring: Centring): DoubleDouble[] {
+function crossProducts(
+  columns: readonly Float64Array[],
+  centring: Centring,
+  weights: Float64Array | null,
+): DoubleDouble[] {
   const k = columns.length;
   const n = columns[0]?.length ?? 0;
   const sums = new Float64Array(2 * k * k);
   const high = columns.map(() => new Float64Array(TILE_ROWS));
   const low = columns.map(() => new Float64Array(TILE_ROWS));
+  const weightedHigh = new Float64Array(TILE_ROWS);
+  const weightedLow = new Float64Array(TILE_ROWS);
   for (let start = 0; start < n; start += TILE_ROWS) {
     const size = Math.min(TILE_ROWS, n - start);
     for (let j = 0; j < k; j++) {
       pack(columns[j]!, start, size, centring.means[j]!, 1 / centring.scales[j]!, high[j]!, low[j]!);
-      for (let l = 0; l <= j; l++) addTile(high[j]!, low[j]!, high[l]!, low[l]!, size, sums, 2 * (j * k + l));
+      const [own, rest] = weights === null ? [high[j]!, low[j]!] : [weightedHigh, weightedLow];
+      if (weights !== null) weigh(weights, start, size, high[j]!, low[j]!, own, rest);
+      for (let l = 0; l <= j; l++) addTile(own, rest, high[l]!, low[l]!, size, sums, 2 * (j * k + l));
     }
   }
   return Array.from({ length: k * k }, (_, at) => {
@@ -102,6 +121,24 @@ function pack(
     const hi = s + rest;
     low[i] = (rest - (hi - s)) * factor;
     high[i] = hi * factor;
+  }
+}
+
+/** w·(high + low), the product of w and high exact. */
+function weigh(
+  weights: Float64Array,
+  start: number,
+  size: number,
+  high: Float64Array,
+  low: Float64Array,
+  outHigh: Float64Array,
+  outLow: Float64Array,
+): void {
+  for (let i = 0; i < size; i++) {
+    const w = weights[start + i]!;
+    const p = twoProduct(w, high[i]!);
+    outHigh[i] = p.hi;
+    outLow[i] = p.lo + w * low[i]!;
   }
 }
 

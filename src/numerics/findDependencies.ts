@@ -6,7 +6,9 @@
  * its values as doubles may have cost. 1.36 × kW, exact in decimals only, is found; kW rounded to a whole hp is not.
  */
 
+import { accumulateMoments, type Moments } from "./accumulateMoments.ts";
 import { centreColumns, measureCentring, storedError } from "./centreColumns.ts";
+import { choleskyFactor, invertUpper, scaledCondition, timesOwnTranspose } from "./choleskyFactor.ts";
 import { type Column, numbersOf } from "./column.ts";
 import { checkColumns } from "./numericsError.ts";
 import { type Ratio, simplestRatio } from "./simplestRatio.ts";
@@ -34,6 +36,8 @@ export interface Dependencies {
 export interface DependencyOptions {
   readonly intercept: boolean;
   readonly relativeTolerance?: number;
+  /** Of exactly these columns, when they are at hand already. */
+  readonly moments?: Moments;
 }
 
 export const RELATIVE_TOLERANCE = 1e-11;
@@ -42,9 +46,12 @@ const NO_PART = 1e-8;
 
 /** Kept columns and one equation per dependent one. Refuses shape and notFinite. A constant column has only a constant. */
 export function findDependencies(given: readonly Column[], options: DependencyOptions): Dependencies {
-  const columns = given.map(numbersOf);
   // A choice of one level makes no column: a model of nothing else has none to compare, which is no error.
-  if (columns.length === 0) return { kept: [], dependent: [] };
+  if (given.length === 0) return { kept: [], dependent: [] };
+  if (areClearlyIndependent(options.moments ?? accumulateMoments(given), options)) {
+    return { kept: [...given.keys()], dependent: [] };
+  }
+  const columns = given.map(numbersOf);
   checkColumns(columns);
   const centring = measureCentring(columns, options.intercept);
   const centred = centreColumns(columns, centring);
@@ -68,6 +75,22 @@ export function findDependencies(given: readonly Column[], options: DependencyOp
     }
   });
   return { kept: basis.columns, dependent };
+}
+
+/** What is left of a column beside the others is at least its length over the condition number; far from what is looked for. */
+const CLEAR_CONDITION = 1e5;
+/** A column whose mean is this much larger than its spread may have lost what tells it apart to its own storing. */
+const FAR_OFFSET = 1e5;
+
+/** Whether the moments alone rule every dependency out: positive pivots, a modest condition number, no far offset. */
+function areClearlyIndependent(moments: Moments, { intercept, relativeTolerance }: DependencyOptions): boolean {
+  if (!intercept || (relativeTolerance ?? 0) > 1e-8) return false;
+  const { crossProducts, means, scales } = moments;
+  const k = scales.length;
+  if (means.some((mean, j) => Math.abs(mean) > FAR_OFFSET * scales[j]!)) return false;
+  const r = choleskyFactor(crossProducts, k, 1e-12);
+  if (typeof r === "number") return false;
+  return scaledCondition(crossProducts, timesOwnTranspose(invertUpper(r, k), k), k) < CLEAR_CONDITION;
 }
 
 interface Basis {

@@ -1,8 +1,10 @@
 /**
- * Standard errors that do not ask for an even spread: the sandwich C⁻¹(Σ ω_i d_i d_i′)C⁻¹ with
- * HC0 ω = e² (White 1980); HC1 e²·n/(n − p); HC2 e²/(1 − h); HC3 e²/(1 − h)² (MacKinnon & White 1985).
+ * Standard errors that do not ask for an even spread: the sandwich C⁻¹(Σ ω_i d_i d_i′)C⁻¹ with, at weights w,
+ * HC0 ω = w²e² (White 1980); HC1 w²e²·n/(n − p); HC2 w²e²/(1 − h); HC3 w²e²/(1 − h)² (MacKinnon & White 1985).
+ * The middle sum is a weighted cross-product, so it comes from the moments of the columns at weights ω.
  */
-import { type Column, numbersOf } from "./column.ts";
+import { accumulateMoments } from "./accumulateMoments.ts";
+import type { Column } from "./column.ts";
 import { leverages } from "./leverages.ts";
 import type { LeastSquaresSolution } from "./solveLeastSquares.ts";
 
@@ -13,36 +15,62 @@ export interface HcStandardErrors {
   readonly interceptStandardError: number | null;
 }
 
-/** By the rows' influence on each coefficient, g_i = C⁻¹d_i; on the intercept 1/n − x̄′g_i. Infinite where 1 − h = 0. */
-export function hcCovariance(given: readonly Column[], solution: LeastSquaresSolution, kind: HcKind): HcStandardErrors {
-  const columns = given.map(numbersOf);
-  const n = solution.residuals.length;
+/** Infinite where 1 − h = 0 under HC2 and HC3; zeros when every residual is zero. `h` saves working them out again. */
+export function hcCovariance(
+  columns: readonly Column[],
+  solution: LeastSquaresSolution,
+  kind: HcKind,
+  weights: Float64Array | null = null,
+  h: Float64Array = leverages(columns, solution, weights),
+): HcStandardErrors {
   const k = columns.length;
-  const h = leverages(columns, solution);
-  const { inverse, means, residuals } = solution;
-  const sums = new Float64Array(k);
-  let interceptSum = 0;
-  const d = new Float64Array(k);
-  for (let i = 0; i < n; i++) {
-    const weight = weightOf(kind, residuals[i]!, h[i]!, n, solution.rank);
-    for (let a = 0; a < k; a++) d[a] = columns[a]![i]! - means[a]!;
-    let intercept = 1 / n;
+  const { residuals, residualDf, rank } = solution;
+  const omega = residuals.map((e, i) => omegaOf(kind, (weights?.[i] ?? 1) * e, h[i]!, residualDf, rank));
+  const isAlone = omega.some((one) => !Number.isFinite(one));
+  const isNothing = omega.every((one) => one === 0);
+  if (isAlone || isNothing || k === 0) return plainSums(solution, omega, k, isAlone);
+  const middle = accumulateMoments(columns, { weights: omega });
+  // Rows of the influences on each coefficient: C⁻¹d for the slopes, 1/Σw − x̄′C⁻¹d for the intercept.
+  const { inverse, means } = solution;
+  const spread = (g: ArrayLike<number>, constant: number): number => {
+    let offset = constant;
+    for (let a = 0; a < k; a++) offset += g[a]! * (middle.means[a]! - means[a]! + middle.meanTails[a]!);
+    let sum = middle.weightSum * offset * offset;
     for (let a = 0; a < k; a++) {
-      let g = 0;
-      for (let b = 0; b < k; b++) g += inverse[a * k + b]! * d[b]!;
-      sums[a]! += weight * g * g;
-      intercept -= means[a]! * g;
+      for (let b = 0; b < k; b++) {
+        sum += g[a]! * middle.scales[a]! * middle.crossProducts[a * k + b]! * middle.scales[b]! * g[b]!;
+      }
     }
-    interceptSum += weight * intercept * intercept;
-  }
+    return sum;
+  };
+  const rowOf = (a: number) => inverse.subarray(a * k, a * k + k);
+  const onIntercept = Float64Array.from({ length: k }, (_, b) => -sumOver(k, (a) => means[a]! * inverse[a * k + b]!));
   return {
-    standardErrors: sums.map(Math.sqrt),
-    interceptStandardError: solution.intercept === null ? null : Math.sqrt(interceptSum),
+    standardErrors: Float64Array.from({ length: k }, (_, a) => Math.sqrt(Math.max(0, spread(rowOf(a), 0)))),
+    interceptStandardError:
+      solution.intercept === null ? null : Math.sqrt(Math.max(0, spread(onIntercept, 1 / solution.weightSum))),
   };
 }
 
-function weightOf(kind: HcKind, e: number, h: number, n: number, p: number): number {
+/** An intercept alone, or nothing to sum, or a row without which there is no fit. */
+function plainSums(solution: LeastSquaresSolution, omega: Float64Array, k: number, isAlone: boolean): HcStandardErrors {
+  const total = isAlone ? Number.POSITIVE_INFINITY : omega.reduce((sum, one) => sum + one, 0);
+  const each = k > 0 ? Math.sqrt(total) : 0;
+  return {
+    standardErrors: new Float64Array(k).fill(each),
+    interceptStandardError: solution.intercept === null ? null : Math.sqrt(total) / solution.weightSum,
+  };
+}
+
+function sumOver(count: number, term: (a: number) => number): number {
+  let sum = 0;
+  for (let a = 0; a < count; a++) sum += term(a);
+  return sum;
+}
+
+function omegaOf(kind: HcKind, e: number, h: number, residualDf: number, rank: number): number {
+  if (e === 0) return 0;
   if (kind === "HC0") return e * e;
-  if (kind === "HC1") return (e * e * n) / (n - p);
+  if (kind === "HC1") return (e * e * (residualDf + rank)) / residualDf;
   return kind === "HC2" ? (e * e) / (1 - h) : (e / (1 - h)) ** 2;
 }

@@ -1,147 +1,45 @@
 /**
- * One pass over the rows in double-double: residuals of given coefficients and what they still have in common with the
- * columns. Correcting the coefficients by C⁻¹X′e until nothing is left gives the correctly rounded least-squares solution
- * of the stored data (Björck 1967; extra-precise residuals: Demmel, Hida, Riedy & Li 2009).
- * Symbols: b slopes, b₀ intercept, e = y − b₀ − Xb, g = X′e (centred columns when there is an intercept).
+ * Coefficients corrected by C⁻¹X′We with residuals in double-double until nothing is left to correct: the correctly rounded
+ * least-squares solution of the stored data (Björck 1967; Demmel, Hida, Riedy & Li 2009).
+ * Symbols: b slopes, b₀ intercept, w weights, λ penalties, e = y − b₀ − Xb, g = X′We − Λb (centred columns with an intercept).
  */
 import { solveByRoot } from "./choleskyFactor.ts";
-import { add, type DoubleDouble, fromNumber, multiply, SPLITTER, subtract } from "./doubleDouble.ts";
-
+import { add, type DoubleDouble, divide, fromNumber, multiply, subtract } from "./doubleDouble.ts";
 import { NumericsError } from "./numericsError.ts";
+import { moveResiduals, passOverRows, type RowPass, type RowProblem } from "./passOverRows.ts";
 
-const TILE_ROWS = 512;
-
-export interface RowPass {
-  /** e rounded to doubles, n. */
-  readonly residuals: Float64Array;
-  /** Σ e² in double-double, rounded. */
-  readonly residualSumOfSquares: number;
-  /** g, k. */
-  readonly gradient: Float64Array;
+export interface RefineProblem extends RowProblem {
+  readonly hasIntercept: boolean;
+  /** Σ w. */
+  readonly weightSum: number;
+  /** λ, k, or null. */
+  readonly penalty: Float64Array | null;
 }
 
-/** b₀ = ȳ − Σ m_j b_j, so that residuals have mean zero. */
-export function interceptOf(
-  responseMean: DoubleDouble,
-  means: readonly DoubleDouble[],
-  slopes: readonly DoubleDouble[],
-): DoubleDouble {
-  return slopes.reduce((rest, b, j) => subtract(rest, multiply(b, means[j]!)), responseMean);
-}
-
-/** Residuals, their sum of squares, and g. `means` are zero without an intercept. */
-export function passOverRows(
-  columns: readonly Float64Array[],
-  response: Float64Array,
-  slopes: readonly DoubleDouble[],
-  intercept: DoubleDouble,
-  means: readonly DoubleDouble[],
-): RowPass {
-  const n = response.length;
-  const k = columns.length;
-  const residuals = new Float64Array(n);
-  const high = new Float64Array(TILE_ROWS);
-  const low = new Float64Array(TILE_ROWS);
-  const sums = new Float64Array(2 * k);
-  const squares = new Float64Array(2);
-  const total = new Float64Array(2);
-  const ones = new Float64Array(TILE_ROWS).fill(1);
-  for (let start = 0; start < n; start += TILE_ROWS) {
-    const size = Math.min(TILE_ROWS, n - start);
-    for (let i = 0; i < size; i++) {
-      high[i] = response[start + i]!;
-      low[i] = 0;
-    }
-    subtractMultiple(ones, 0, size, intercept, high, low);
-    for (let j = 0; j < k; j++) subtractMultiple(columns[j]!, start, size, slopes[j]!, high, low);
-    for (let i = 0; i < size; i++) {
-      const hi = high[i]! + low[i]!;
-      low[i] = low[i]! - (hi - high[i]!);
-      high[i] = hi;
-      residuals[start + i] = hi;
-    }
-    for (let j = 0; j < k; j++) addProducts(columns[j]!, start, size, high, low, sums, 2 * j);
-    addProducts(ones, 0, size, high, low, total, 0);
-    addProducts(high, 0, size, high, low, squares, 0);
-  }
-  const sumOfResiduals = { hi: total[0]!, lo: total[1]! };
-  const gradient = Float64Array.from({ length: k }, (_, j) => {
-    const g = add({ hi: sums[2 * j]!, lo: 0 }, fromNumber(sums[2 * j + 1]!));
-    return subtract(g, multiply(means[j]!, sumOfResiduals)).hi;
-  });
-  return { residuals, residualSumOfSquares: squares[0]! + squares[1]!, gradient };
-}
-
-/** (high, low) −= x·b for one tile; x·b.hi exactly, by Dekker's product. */
-function subtractMultiple(
-  x: Float64Array,
-  start: number,
-  size: number,
-  b: DoubleDouble,
-  high: Float64Array,
-  low: Float64Array,
-): void {
-  const bh = b.hi;
-  const bl = b.lo;
-  const tb = SPLITTER * bh;
-  const b1 = tb - (tb - bh);
-  const b2 = bh - b1;
-  for (let i = 0; i < size; i++) {
-    const v = x[start + i]!;
-    const p = v * bh;
-    const t = SPLITTER * v;
-    const v1 = t - (t - v);
-    const v2 = v - v1;
-    const rest = v2 * b2 - (p - v1 * b1 - v2 * b1 - v1 * b2) + v * bl;
-    const old = high[i]!;
-    const s = old - p;
-    const part = s - old;
-    low[i] = low[i]! + (old - (s - part) - (p + part)) - rest;
-    high[i] = s;
-  }
-}
-
-/** sums[at], sums[at + 1] += Σ x·(high + low) over one tile. */
-function addProducts(
-  x: Float64Array,
-  start: number,
-  size: number,
-  high: Float64Array,
-  low: Float64Array,
-  sums: Float64Array,
-  at: number,
-): void {
-  let hi = sums[at]!;
-  let lo = sums[at + 1]!;
-  for (let i = 0; i < size; i++) {
-    const v = x[start + i]!;
-    const w = high[i]!;
-    const p = v * w;
-    const tv = SPLITTER * v;
-    const v1 = tv - (tv - v);
-    const v2 = v - v1;
-    const tw = SPLITTER * w;
-    const w1 = tw - (tw - w);
-    const w2 = w - w1;
-    const s = hi + p;
-    const part = s - hi;
-    lo += hi - (s - part) + (p - part) + (v2 * w2 - (p - v1 * w1 - v2 * w1 - v1 * w2)) + v * low[i]!;
-    hi = s;
-  }
-  sums[at] = hi;
-  sums[at + 1] = lo;
+/** Where refinement begins: how columns were moved, a root of the inverse, and slopes. */
+export interface RefineStart {
+  readonly centring: { readonly means: readonly DoubleDouble[]; readonly scales: Float64Array };
+  readonly responseMean: DoubleDouble;
+  readonly rootInverse: Float64Array;
+  readonly slopes: Float64Array;
 }
 
 export interface Refined {
   readonly slopes: DoubleDouble[];
   readonly intercept: DoubleDouble;
-  readonly pass: RowPass;
-  /** Size of each correction, largest over the slopes and relative to the slope. */
+  readonly residuals: Float64Array;
+  readonly residualSumOfSquares: number;
+  /** Size of each correction, largest over the slopes and relative to the slope; the last may be foreseen rather than seen. */
   readonly corrections: number[];
 }
 
 /** A correction below a quarter of a unit in the last place changes no printed digit. */
 const NEGLIGIBLE = 2 ** -54;
+/**
+ * The first correction is about as large as the rate by which the next ones shrink (both are κ²·2^-53 of the factor), so below
+ * this size one correction leaves less than NEGLIGIBLE and need not be seen to be so.
+ */
+const ONE_IS_ENOUGH = 2e-9;
 const MOST_PASSES = 15;
 
 /**
@@ -149,34 +47,97 @@ const MOST_PASSES = 15;
  * of the one before; without it, the best that was reached.
  */
 export function refineCoefficients(
-  columns: readonly Float64Array[],
-  response: Float64Array,
-  start: {
-    readonly centring: { readonly means: readonly DoubleDouble[]; readonly scales: Float64Array };
-    readonly responseMean: DoubleDouble;
-    readonly rootInverse: Float64Array;
-    readonly slopes: Float64Array;
-  },
-  hasIntercept: boolean,
+  problem: RefineProblem,
+  start: RefineStart,
   demanded: number | null,
 ): Refined | null {
   const { means, scales } = start.centring;
   const corrections: number[] = [];
   let slopes: DoubleDouble[] = Array.from(start.slopes, fromNumber);
+  let shift: DoubleDouble = fromNumber(0);
   for (;;) {
-    const intercept = hasIntercept ? interceptOf(start.responseMean, means, slopes) : { hi: 0, lo: 0 };
-    const pass = passOverRows(columns, response, slopes, intercept, means);
-    const step = solveByRoot(start.rootInverse, pass.gradient);
+    const intercept = interceptOf(problem, start.responseMean, means, slopes, shift);
+    const pass = passOverRows(problem, slopes, intercept, means);
+    const gradient = withPenalty(pass.gradient, problem.penalty, slopes);
+    const step = solveByRoot(start.rootInverse, gradient);
     const size = correctionSize(step, slopes, pass, start.rootInverse, scales);
     const previous = corrections.at(-1) ?? 1;
     corrections.push(size);
     if (!Number.isFinite(size)) throw new NumericsError("notFinite", "the values are too large or too small to fit");
-    if (size <= NEGLIGIBLE || corrections.length === MOST_PASSES) return { slopes, intercept, pass, corrections };
+    const lacks = problem.hasIntercept ? divide(pass.sumOfResiduals, fromNumber(problem.weightSum)) : fromNumber(0);
+    if (size <= NEGLIGIBLE || corrections.length === MOST_PASSES) {
+      return asItStands(slopes, add(intercept, lacks), pass, corrections);
+    }
+    if (corrections.length === 1 && size < ONE_IS_ENOUGH) {
+      return withLastStep(problem, { slopes, intercept, lacks, pass, step, gradient, corrections, means });
+    }
     const isSlow = !(size < (demanded ?? 0.5) * previous) && size > 1e-15;
     if (isSlow && demanded !== null) return null;
-    if (isSlow && corrections.length > 1) return { slopes, intercept, pass, corrections };
+    if (isSlow && corrections.length > 1) return asItStands(slopes, intercept, pass, corrections);
     slopes = slopes.map((b, j) => add(b, fromNumber(step[j]!)));
+    shift = add(shift, lacks);
   }
+}
+
+/** b₀ = ȳ − Σ m_j b_j, and what earlier passes found it to lack; 0 without an intercept. */
+function interceptOf(
+  { hasIntercept }: RefineProblem,
+  responseMean: DoubleDouble,
+  means: readonly DoubleDouble[],
+  slopes: readonly DoubleDouble[],
+  shift: DoubleDouble,
+): DoubleDouble {
+  if (!hasIntercept) return fromNumber(0);
+  return slopes.reduce((rest, b, j) => subtract(rest, multiply(b, means[j]!)), add(responseMean, shift));
+}
+
+function withPenalty(
+  gradient: Float64Array,
+  penalty: Float64Array | null,
+  slopes: readonly DoubleDouble[],
+): Float64Array {
+  if (penalty === null) return gradient;
+  return gradient.map((g, j) => subtract(fromNumber(g), multiply(fromNumber(penalty[j]!), slopes[j]!)).hi);
+}
+
+function asItStands(
+  slopes: DoubleDouble[],
+  intercept: DoubleDouble,
+  { residuals, residualSumOfSquares }: RowPass,
+  corrections: number[],
+): Refined {
+  return { slopes, intercept, residuals, residualSumOfSquares, corrections };
+}
+
+interface LastStep {
+  readonly slopes: readonly DoubleDouble[];
+  readonly intercept: DoubleDouble;
+  readonly lacks: DoubleDouble;
+  readonly pass: RowPass;
+  readonly step: Float64Array;
+  readonly gradient: Float64Array;
+  readonly corrections: readonly number[];
+  readonly means: readonly DoubleDouble[];
+}
+
+/** The correction made without another pass: residuals follow it, and Σwe² falls by δ′(2X′We − Cδ) with Cδ = g − Λδ. */
+function withLastStep(problem: RefineProblem, last: LastStep): Refined {
+  const { pass, step, gradient } = last;
+  const size = last.corrections[0]!;
+  const down = step.reduce((sum, d, j) => sum - d * last.means[j]!.hi, 0);
+  const interceptStep = problem.hasIntercept ? add(fromNumber(down), last.lacks) : fromNumber(0);
+  let fall = 0;
+  for (let j = 0; j < step.length; j++) {
+    const penalised = problem.penalty === null ? 0 : problem.penalty[j]! * step[j]!;
+    fall += step[j]! * (2 * pass.gradient[j]! - (gradient[j]! - penalised));
+  }
+  return {
+    slopes: last.slopes.map((b, j) => add(b, fromNumber(step[j]!))),
+    intercept: add(last.intercept, interceptStep),
+    residuals: moveResiduals(problem.columns, pass.residuals, step, interceptStep.hi),
+    residualSumOfSquares: Math.max(0, pass.residualSumOfSquares - fall),
+    corrections: [...last.corrections, size * size],
+  };
 }
 
 /**

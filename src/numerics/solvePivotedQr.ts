@@ -1,17 +1,23 @@
 /**
- * Least squares from the rows by Householder reflections with column pivoting (Businger & Golub 1965), on columns that
- * are centred (with an intercept) and scaled. Does not square the condition number: the careful path.
- * Symbols: Z n × k centred and scaled, ZP = QR, T = PR⁻¹ in raw units so that (X′X)⁻¹ = TT′ for centred X.
+ * Least squares from the rows, without squaring the condition number: the careful path. Rows are reduced to a triangle tile by
+ * tile (reduceRows), and the triangle is factored by Householder reflections with column pivoting (Businger & Golub 1965).
+ * Symbols: Z n × k centred (with an intercept), weighted and scaled; ZP = QR, T = PR⁻¹ in raw units: (X′WX + Λ)⁻¹ = TT′.
  */
-import { type Centring, centreColumns, measureCentring } from "./centreColumns.ts";
+import { accumulateMoments } from "./accumulateMoments.ts";
+import { type Centring, centringOf } from "./centreColumns.ts";
 import { invertUpper, scaledCondition, timesOwnTranspose } from "./choleskyFactor.ts";
-import { checkColumns, NumericsError } from "./numericsError.ts";
+import type { Column } from "./column.ts";
+import { NumericsError } from "./numericsError.ts";
+import { reduceRows } from "./reduceRows.ts";
 
 export interface PivotedQrOptions {
   readonly intercept: boolean;
   /** A pivot below this share of its column's length ends the factorisation; 1e-13 unless said. */
   readonly relativeTolerance?: number;
+  /** Of the columns and, last, the response. */
   readonly centring?: Centring;
+  readonly weights?: Float64Array | null;
+  readonly penalty?: Float64Array | null;
 }
 
 export interface PivotedQr {
@@ -30,19 +36,25 @@ export interface PivotedQr {
 
 /** Slopes, rank and inverse root. Refuses (shape, notFinite, tooFewRows) what cannot be factored; not a rank loss. */
 export function solvePivotedQr(
-  columns: readonly Float64Array[],
+  columns: readonly Column[],
   response: Float64Array,
   options: PivotedQrOptions,
 ): PivotedQr {
-  const n = checkColumns(columns, response);
   const k = columns.length;
-  if (n < k) throw new NumericsError("tooFewRows", `${n} rows cannot determine ${k} columns`);
-  const centring = options.centring ?? measureCentring(columns, options.intercept);
-  const z = centreColumns(columns, centring);
-  const yCentring = measureCentring([response], options.intercept);
-  const rhs = centreColumns([response], yCentring)[0]!;
+  if (response.length < k && !options.penalty) {
+    throw new NumericsError("tooFewRows", `${response.length} rows cannot determine ${k} columns`);
+  }
+  const weights = options.weights ?? null;
+  const centring =
+    options.centring ??
+    centringOf(accumulateMoments([...columns, response], { weights: weights ?? undefined }), options.intercept);
+  const q = k + 1;
+  const triangle = reduceRows(columns, response, centring, weights, options.penalty ?? null);
+  const column = (j: number) => Float64Array.from({ length: q }, (_, i) => (i <= j ? triangle[i * q + j]! : 0));
+  const z = Array.from({ length: k }, (_, j) => column(j));
+  const rhs = column(k);
   const factored = reflect(z, rhs, options.relativeTolerance ?? 1e-13);
-  return unscale(factored, rhs, centring, yCentring.scales[0]!);
+  return unscale(factored, rhs, centring, centring.scales[k]!);
 }
 
 interface Factored {

@@ -13,9 +13,11 @@
  * interface `<Topic>Operations` here; compare both bit for bit in `tests/numerics/kernels`. The build compiles it by itself.
  */
 import type { MomentOperations } from "./plain/moments.ts";
+import type { ReduceOperations } from "./plain/reduce.ts";
+import type { RefineOperations } from "./plain/refine.ts";
 
 /** All operations; addresses and sizes in bytes, counts in rows or columns. */
-export interface Operations extends MomentOperations {}
+export interface Operations extends MomentOperations, RefineOperations, ReduceOperations {}
 
 export interface Kernel {
   readonly name: "wasm" | "plain";

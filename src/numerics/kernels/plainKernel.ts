@@ -2,12 +2,14 @@
 import type { Kernel } from "./kernel.ts";
 import { momentOperations } from "./plain/moments.ts";
 import type { PlainMemory } from "./plain/plainMemory.ts";
+import { reduceOperations } from "./plain/reduce.ts";
+import { refineOperations } from "./plain/refine.ts";
 
 export function plainKernel(): Kernel {
   const memory: PlainMemory = { f64: new Float64Array(0), u16: new Uint16Array(0) };
   return {
     name: "plain",
-    operations: { ...momentOperations(memory) },
+    operations: { ...momentOperations(memory), ...refineOperations(memory), ...reduceOperations(memory) },
     reserve(bytes) {
       if (memory.f64.byteLength < bytes) {
         memory.f64 = new Float64Array(Math.ceil(bytes / 8));
