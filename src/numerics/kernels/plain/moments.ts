@@ -30,12 +30,28 @@ export function momentOperations(memory: PlainMemory): MomentOperations {
 
 /** Sum of `rows` doubles: eight running sums for whole eights of rows, added up in pairs, then the rest one by one. */
 function sumOf(f64: Float64Array, at: number, rows: number): number {
-  const sums = new Float64Array(8);
-  const whole = rows - (rows % 8);
-  for (let i = 0; i < whole; i++) sums[i % 8] = sums[i % 8]! + f64[at + i]!;
-  const lane = (l: number): number => sums[l]! + sums[2 + l]! + (sums[4 + l]! + sums[6 + l]!);
-  let sum = lane(0) + lane(1);
-  for (let i = whole; i < rows; i++) sum += f64[at + i]!;
+  let s0 = 0;
+  let s1 = 0;
+  let s2 = 0;
+  let s3 = 0;
+  let s4 = 0;
+  let s5 = 0;
+  let s6 = 0;
+  let s7 = 0;
+  const end = at + rows;
+  let i = at;
+  for (; i + 8 <= end; i += 8) {
+    s0 += f64[i]!;
+    s1 += f64[i + 1]!;
+    s2 += f64[i + 2]!;
+    s3 += f64[i + 3]!;
+    s4 += f64[i + 4]!;
+    s5 += f64[i + 5]!;
+    s6 += f64[i + 6]!;
+    s7 += f64[i + 7]!;
+  }
+  let sum = s0 + s2 + (s4 + s6) + (s1 + s3 + (s5 + s7));
+  for (; i < end; i++) sum += f64[i]!;
   return sum;
 }
 
@@ -73,26 +89,62 @@ function crossProducts(
   high: number,
   low: number,
 ): void {
+  const even = new Float64Array(CROSS_WIDTH * CROSS_WIDTH);
+  const odd = new Float64Array(CROSS_WIDTH * CROSS_WIDTH);
   for (let start = 0; start < rows; start += TILE_ROWS) {
     const size = Math.min(TILE_ROWS, rows - start);
-    for (let j = 0; j < columns; j++) {
-      const end = Math.floor(j / CROSS_WIDTH) * CROSS_WIDTH + CROSS_WIDTH;
-      for (let k = 0; k < end; k++) {
-        const x = lanesDot(f64, left + j * COLUMN_STRIDE + start, right + k * COLUMN_STRIDE + start, size);
-        addCompensated(f64, high + j * columns + k, low + j * columns + k, x);
+    for (let j = 0; j < columns; j += CROSS_WIDTH) {
+      for (let k = 0; k <= j; k += CROSS_WIDTH) {
+        const a = left + j * COLUMN_STRIDE + start;
+        const b = right + k * COLUMN_STRIDE + start;
+        sumLane(f64, a, b, size, even);
+        sumLane(f64, a + 1, b + 1, size, odd);
+        for (let at = 0; at < even.length; at++) {
+          const to = (j + Math.floor(at / CROSS_WIDTH)) * columns + k + (at % CROSS_WIDTH);
+          addCompensated(f64, high + to, low + to, even[at]! + odd[at]!);
+        }
       }
     }
   }
 }
 
-function lanesDot(f64: Float64Array, left: number, right: number, size: number): number {
-  let even = 0;
-  let odd = 0;
+/** The nine sums of products of three columns with three, over every second row. */
+function sumLane(f64: Float64Array, a: number, b: number, size: number, out: Float64Array): void {
+  let s00 = 0;
+  let s01 = 0;
+  let s02 = 0;
+  let s10 = 0;
+  let s11 = 0;
+  let s12 = 0;
+  let s20 = 0;
+  let s21 = 0;
+  let s22 = 0;
   for (let i = 0; i < size; i += 2) {
-    even += f64[left + i]! * f64[right + i]!;
-    odd += f64[left + i + 1]! * f64[right + i + 1]!;
+    const a0 = f64[a + i]!;
+    const a1 = f64[a + i + COLUMN_STRIDE]!;
+    const a2 = f64[a + i + 2 * COLUMN_STRIDE]!;
+    const b0 = f64[b + i]!;
+    const b1 = f64[b + i + COLUMN_STRIDE]!;
+    const b2 = f64[b + i + 2 * COLUMN_STRIDE]!;
+    s00 += a0 * b0;
+    s01 += a0 * b1;
+    s02 += a0 * b2;
+    s10 += a1 * b0;
+    s11 += a1 * b1;
+    s12 += a1 * b2;
+    s20 += a2 * b0;
+    s21 += a2 * b1;
+    s22 += a2 * b2;
   }
-  return even + odd;
+  out[0] = s00;
+  out[1] = s01;
+  out[2] = s02;
+  out[3] = s10;
+  out[4] = s11;
+  out[5] = s12;
+  out[6] = s20;
+  out[7] = s21;
+  out[8] = s22;
 }
 
 /** Adds x to the sum high + low (TwoSum: Knuth 1969). */
