@@ -6,7 +6,6 @@
  */
 import { formatPercent } from "../domain/format.ts";
 import type { ResponseForm } from "../domain/priceModel.ts";
-import { breadLeverages, breadOf } from "../numerics/clusterCovariance.ts";
 import { leverages } from "../numerics/leverages.ts";
 import { solveLeastSquares } from "../numerics/solveLeastSquares.ts";
 import { weightedMedian } from "../numerics/weightedMedian.ts";
@@ -80,8 +79,7 @@ function leftOut(design: Design, groups: readonly AttributeGroup[], rule: FitRul
   };
   const solution = inClassWords(design, groups, () => solveLeastSquares(values, response, options));
   const { residuals } = solution;
-  const h =
-    weights === null ? leverages(values, solution) : breadLeverages(values, breadOf(solution, weights), weights);
+  const h = leverages(values, solution, weights);
   return { residuals, leverages: h, predicted: response.map((y, i) => y - residuals[i]! / (1 - h[i]!)) };
 }
 

@@ -23,8 +23,8 @@ export function fitColumns(design: Design, groups: readonly AttributeGroup[], ru
   const columns = groups.flatMap((group) => [...group.columns]);
   const values = columns.map((index) => design.columns[index]!.values);
   const solution = solve(design, values, columns, groups, rule);
-  const h = leverages(values, solution);
-  const robust = h.some((one) => one > FULL_LEVERAGE) ? null : hcCovariance(values, solution, "HC3");
+  const h = leverages(values, solution, rule.weights);
+  const robust = h.some((one) => one > FULL_LEVERAGE) ? null : hcCovariance(values, solution, "HC3", rule.weights, h);
   return {
     design,
     groups,

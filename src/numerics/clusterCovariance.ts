@@ -59,17 +59,6 @@ export function breadOfCurvature(
   return { means, inverse, totalWeight };
 }
 
-/** Leverages of a weighted fit: h_i = w_i(1/Σw + d_i′C⁻¹d_i), n. */
-export function breadLeverages(columns: readonly Column[], bread: Bread, weights: Float64Array | null): Float64Array {
-  const k = columns.length;
-  const n = columns[0]?.length ?? weights?.length ?? bread.totalWeight;
-  const d = new Float64Array(k);
-  return Float64Array.from({ length: n }, (_, i) => {
-    for (let a = 0; a < k; a++) d[a] = valueAt(columns[a]!, i) - bread.means[a]!;
-    return (weights === null ? 1 : weights[i]!) * (1 / bread.totalWeight + formOf(bread.inverse, d));
-  });
-}
-
 /** d′Ad. */
 function formOf(matrix: Float64Array, d: Float64Array): number {
   const k = d.length;

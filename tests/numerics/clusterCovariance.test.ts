@@ -2,13 +2,13 @@
 import { inverse, Matrix } from "ml-matrix";
 import { describe, expect, test } from "vitest";
 import {
-  breadLeverages,
   breadOf,
   breadOfCurvature,
   evenCovariance,
   pulledCovariance,
   varianceAt,
 } from "../../src/numerics/clusterCovariance.ts";
+import { leverages } from "../../src/numerics/leverages.ts";
 import { solveLeastSquares } from "../../src/numerics/solveLeastSquares.ts";
 import { publishedSales } from "../fixtures/publishedSales.ts";
 import { drawFrom } from "../fixtures/randomClass.ts";
@@ -21,7 +21,7 @@ describe.each([
   const { names, columns, lnPrice, expected } = publishedSales(name);
   const solution = solveLeastSquares(columns, lnPrice, { intercept: true });
   const bread = breadOf(solution, null);
-  const h = breadLeverages(columns, bread, null);
+  const h = leverages(columns, solution);
 
   test.each(["HC0", "HC1", "HC2", "HC3"])("%s standard errors", (kind) => {
     const n = lnPrice.length;

@@ -1,5 +1,5 @@
 /** How each sale of a fit pulls on it: what both the uneven and the clustered covariance are summed from. */
-import { type Bread, breadLeverages, breadOf, breadOfCurvature } from "../../numerics/clusterCovariance.ts";
+import { type Bread, breadOf, breadOfCurvature } from "../../numerics/clusterCovariance.ts";
 import type { Column } from "../../numerics/column.ts";
 import { inClassWords } from "../estimators/modelColumns.ts";
 import type { Fit } from "../fit.ts";
@@ -12,7 +12,7 @@ export interface Pulls {
   readonly outer: Bread;
   /** w·e, n. */
   readonly scores: Float64Array;
-  /** h, n, of the weighted fit. */
+  /** h, n, of the fit at its weights and penalties. */
   readonly leverages: Float64Array;
 }
 
@@ -28,6 +28,6 @@ export function pullsOf(fit: Fit, curvature: Float64Array | null): Pulls {
     own,
     outer: curvature ? inClassWords(design, fit.groups, () => breadOfCurvature(columns, curvature, raw)) : own,
     scores: weights === null ? solution.residuals : solution.residuals.map((e, i) => weights[i]! * e),
-    leverages: weights === null ? fit.leverages : breadLeverages(columns, own, weights),
+    leverages: fit.leverages,
   };
 }
