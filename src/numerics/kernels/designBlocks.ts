@@ -61,7 +61,10 @@ export function putBlock(f64: Float64Array, bytes: number, values: Float64Array,
 
 /** Copies a block of any column, a level of a choice as zeros and ones. */
 export function putColumn(f64: Float64Array, bytes: number, column: Column, start: number, size: number): void {
-  if (!isIndicator(column)) return putBlock(f64, bytes, column, start, size);
+  if (!isIndicator(column)) {
+    putBlock(f64, bytes, column, start, size);
+    return;
+  }
   const { codes, level } = column;
   const at = bytes / 8;
   for (let i = 0; i < size; i++) f64[at + i] = codes[start + i] === level ? 1 : 0;
