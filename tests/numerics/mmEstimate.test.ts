@@ -1,7 +1,8 @@
 /** The MM estimate against values on which five independent searches agree to 12 digits (tests/reference/README.md). */
 import { describe, expect, test } from "vitest";
 import { BREAKDOWN_C, bisquareLoss, mScale } from "../../src/numerics/bisquare.ts";
-import { mmEstimate, sEstimate } from "../../src/numerics/mmEstimate.ts";
+import { mmEstimate } from "../../src/numerics/mmEstimate.ts";
+import { sEstimate } from "../../src/numerics/sEstimate.ts";
 import { frameOf, rawCoefficients, residualsAt } from "../../src/numerics/weightedSteps.ts";
 import { publishedSales, readReference, worstDifference } from "../fixtures/publishedSales.ts";
 import { drawFrom } from "../fixtures/randomClass.ts";
