@@ -6,7 +6,7 @@
  */
 import { powerOfTwoNear, rootMeanSquare } from "./accumulateMoments.ts";
 import { choleskyFactor, invertUpper, solveByRoot } from "./choleskyFactor.ts";
-import { type Column, isIndicator, numbersOf } from "./column.ts";
+import { type Column, isIndicator, numbersOf, valueAt } from "./column.ts";
 import { NumericsError } from "./numericsError.ts";
 
 export interface Frame {
@@ -70,7 +70,8 @@ export function meanOf(values: Float64Array, weights: Float64Array | null = null
 
 /** Visits the rows of Z in tiles: column j of a tile of `size` rows from `start` lies at tile[j·256 …]. */
 export function eachTile(frame: Frame, visit: (tile: Float64Array, start: number, size: number) => void): void {
-  const tile = new Float64Array((frame.k + 1) * TILE_ROWS).fill(1);
+  // Three columns to spare, so that four can always be read at once.
+  const tile = new Float64Array((frame.k + 4) * TILE_ROWS).fill(1);
   for (let start = 0; start < frame.n; start += TILE_ROWS) {
     const size = Math.min(TILE_ROWS, frame.n - start);
     for (let j = 0; j < frame.k; j++) packTile(tile, j, frame, start, size);
@@ -91,15 +92,10 @@ function packTile(tile: Float64Array, j: number, frame: Frame, start: number, si
   } else for (let i = 0; i < size; i++) tile[at + i] = (column[start + i]! - mean) * factor;
 }
 
-/** Row i of Z, k + 1. */
-export function frameRow(frame: Frame, i: number): Float64Array {
-  const row = new Float64Array(frame.k + 1).fill(1);
-  for (let j = 0; j < frame.k; j++) {
-    const column = frame.columns[j]!;
-    const value = isIndicator(column) ? (column.codes[i] === column.level ? 1 : 0) : column[i]!;
-    row[j + 1] = (value - frame.means[j]!) / frame.scales[j]!;
-  }
-  return row;
+/** Writes row i of Z into `row`, k + 1. */
+export function readFrameRow(frame: Frame, i: number, row: Float64Array): void {
+  row[0] = 1;
+  for (let j = 0; j < frame.k; j++) row[j + 1] = (valueAt(frame.columns[j]!, i) - frame.means[j]!) / frame.scales[j]!;
 }
 
 /** e = y − Zβ, n. */
@@ -149,11 +145,7 @@ export function weightedProducts(
         withV += weighted[i]! * v[start + i]!;
       }
       vector[j]! += withV;
-      for (let l = 0; l <= j; l++) {
-        let sum = 0;
-        for (let i = 0; i < size; i++) sum += weighted[i]! * tile[l * TILE_ROWS + i]!;
-        matrix[j * q + l]! += sum;
-      }
+      for (let l = 0; l <= j; l += 4) addFour(matrix, j, l, q, weighted, tile, size);
     }
   });
   for (let j = 0; j < q; j++) {
@@ -161,6 +153,38 @@ export function weightedProducts(
     matrix[j * q + j]! += frame.penalty[j]!;
   }
   return { matrix, vector };
+}
+
+/** Adds the products of one weighted column j with columns l to l + 3, up to j: four sums at a time do not wait for each other. */
+function addFour(
+  matrix: Float64Array,
+  j: number,
+  l: number,
+  q: number,
+  weighted: Float64Array,
+  tile: Float64Array,
+  size: number,
+): void {
+  const a = l * TILE_ROWS;
+  const b = a + TILE_ROWS;
+  const c = b + TILE_ROWS;
+  const d = c + TILE_ROWS;
+  let withA = 0;
+  let withB = 0;
+  let withC = 0;
+  let withD = 0;
+  for (let i = 0; i < size; i++) {
+    const w = weighted[i]!;
+    withA += w * tile[a + i]!;
+    withB += w * tile[b + i]!;
+    withC += w * tile[c + i]!;
+    withD += w * tile[d + i]!;
+  }
+  const at = j * q + l;
+  matrix[at]! += withA;
+  if (l + 1 <= j) matrix[at + 1]! += withB;
+  if (l + 2 <= j) matrix[at + 2]! += withC;
+  if (l + 3 <= j) matrix[at + 3]! += withD;
 }
 
 /** T with (matrix)⁻¹ = TT′. Refuses rankDeficient, with the column number where one is to blame. */
