@@ -1,5 +1,5 @@
 // Moments of q columns as 2 + 3q + q² doubles in a row: row count, weight sum, means, tails, scales, cross-products.
-import { emptyMoments, type Moments } from "../mergeMoments.ts";
+import type { Moments } from "../mergeMoments.ts";
 
 export function packedSize(q: number): number {
   return 2 + 3 * q + q * q;
@@ -15,11 +15,14 @@ export function writeMoments(moments: Moments, to: Float64Array): void {
   to.set(moments.crossProducts, 2 + 3 * q);
 }
 
+/** The moments that are packed there, on the same memory. */
 export function readMoments(from: Float64Array, q: number): Moments {
-  const moments = { ...emptyMoments(q), rowCount: from[0]!, weightSum: from[1]! };
-  moments.means.set(from.subarray(2, 2 + q));
-  moments.meanTails.set(from.subarray(2 + q, 2 + 2 * q));
-  moments.scales.set(from.subarray(2 + 2 * q, 2 + 3 * q));
-  moments.crossProducts.set(from.subarray(2 + 3 * q, packedSize(q)));
-  return moments;
+  return {
+    rowCount: from[0]!,
+    weightSum: from[1]!,
+    means: from.subarray(2, 2 + q),
+    meanTails: from.subarray(2 + q, 2 + 2 * q),
+    scales: from.subarray(2 + 2 * q, 2 + 3 * q),
+    crossProducts: from.subarray(2 + 3 * q, packedSize(q)),
+  };
 }
