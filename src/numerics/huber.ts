@@ -80,7 +80,7 @@ export function roundingOf(response: Float64Array): number {
   return 64 * Number.EPSILON * largest;
 }
 
-/** Weighted steps from `start` until nothing moves; `scaleOf` may hold the scale or take it anew from the residuals. */
+/** Weighted steps from `start` until nothing moves by `settled` scales; `scaleOf` may hold the scale or take it anew from the residuals. */
 export function iterate(
   frame: Frame,
   response: Float64Array,
@@ -88,6 +88,7 @@ export function iterate(
   start: Float64Array,
   psi: Psi,
   scaleOf: (residuals: Float64Array) => number,
+  settled = SETTLED,
 ): MEstimate {
   const middle = meanOf(response);
   const centred = response.map((y) => y - middle);
@@ -100,7 +101,7 @@ export function iterate(
     const residuals = residualsAt(frame, centred, coefficients);
     const scale = scaleOf(residuals);
     const robustness = residuals.map((e) => (scale > 0 && e !== 0 ? psi.weight(e / scale) : 1));
-    const isDone = scale === 0 || move <= SETTLED * scale || stalled > 20 || steps === MOST_STEPS;
+    const isDone = scale === 0 || move <= settled * scale || stalled > 20 || steps === MOST_STEPS;
     if (isDone) {
       const curvature = residuals.map((e, i) => (given?.[i] ?? 1) * (scale > 0 ? psi.slope(e / scale) : 1));
       const weights = times(robustness, given);

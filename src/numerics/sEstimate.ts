@@ -14,6 +14,8 @@ import { type Frame, residualsAt, weightedStep } from "./weightedSteps.ts";
 const STARTS = 500;
 const CONCENTRATION_STEPS = 2;
 const CARRIED_ON = 5;
+/** Moves of this many scales tell which candidate is best: the scale itself errs by their square. */
+const NEARLY_THERE = 1e-4;
 /** From more rows than this the search runs on a random part of this size, and its best is carried on over all rows. */
 export const SEARCH_ROWS = 2000;
 
@@ -33,12 +35,14 @@ export function sEstimate(
   const draw = seededRandom(seed);
   const part = searchPart(frame, response, weights, draw);
   if (part === null) return null;
-  const ends = candidates(part, draw).map((start) => concentrate(part.frame, part.response, part.weights, start));
+  const ends = candidates(part, draw).map((start) =>
+    concentrate(part.frame, part.response, part.weights, start, NEARLY_THERE),
+  );
   const best = ends.reduce<SEstimate | null>(
     (least, end) => (end !== null && (least === null || end.scale < least.scale) ? end : least),
     null,
   );
-  return best === null || part.frame === frame ? best : concentrate(frame, response, weights, best.coefficients);
+  return best && concentrate(frame, response, weights, best.coefficients);
 }
 
 interface SearchPart {
@@ -124,16 +128,25 @@ function concentrate(
   response: Float64Array,
   weights: Float64Array | null,
   start: Float64Array,
+  settled?: number,
 ): SEstimate | null {
   const rounding = roundingOf(response);
   let last = 0;
   try {
-    const end = iterate(frame, response, weights, start, bisquare(BREAKDOWN_C), (residuals) => {
-      const usual = usualScale(residuals, weights, response);
-      last = usual === 0 && last === 0 ? 0 : mScale(residuals, weights, frame.k + 1, last || usual);
-      last = last > rounding ? last : 0;
-      return last;
-    });
+    const end = iterate(
+      frame,
+      response,
+      weights,
+      start,
+      bisquare(BREAKDOWN_C),
+      (residuals) => {
+        const usual = usualScale(residuals, weights, response);
+        last = usual === 0 && last === 0 ? 0 : mScale(residuals, weights, frame.k + 1, last || usual);
+        last = last > rounding ? last : 0;
+        return last;
+      },
+      settled,
+    );
     return { coefficients: end.coefficients, scale: end.scale };
   } catch (cause) {
     if (cause instanceof NumericsError && cause.code === "rankDeficient") return null;
