@@ -7,6 +7,7 @@ import type { DependencyNotice } from "../domain/appraisal.ts";
 import { formatNumber, listWords, lowerStart } from "../domain/format.ts";
 import type { PriceModel } from "../domain/priceModel.ts";
 import { type Dependency, findDependencies } from "../numerics/findDependencies.ts";
+import { isPooled } from "./estimators/partialPooling.ts";
 import type { AttributeGroup, Design } from "./fit.ts";
 
 export interface ResolvedSet {
@@ -41,11 +42,13 @@ export function resolveDependencies(design: Design, model: PriceModel, notKnown:
 
 /**
  * Columns in model order, but attributes that the person left out come late and not-known ones last: what comes later is
- * what is found dependent, so the person's choice of what to leave out is what stands.
+ * what is found dependent, so the person's choice of what to leave out is what stands. Pooled choices are not searched: their
+ * levels add up to 1 on purpose, and their penalty tells them from whatever repeats them.
  */
 function columnOrder(design: Design, leftOut: readonly string[], notKnown: readonly string[]): number[] {
   const rank = (group: AttributeGroup) => (notKnown.includes(group.key) ? 2 : leftOut.includes(group.key) ? 1 : 0);
-  return [...design.groups].sort((a, b) => rank(a) - rank(b)).flatMap((group) => [...group.columns]);
+  const searched = design.groups.filter((group) => !isPooled(design, group));
+  return searched.sort((a, b) => rank(a) - rank(b)).flatMap((group) => [...group.columns]);
 }
 
 function noticeOf(

@@ -1,8 +1,10 @@
 /** Least squares, ridge and partial pooling as weights and penalties of a design. */
 import { describe, expect, test } from "vitest";
+import { EVERYTHING, type PriceModel } from "../../../src/domain/priceModel.ts";
 import { estimate } from "../../../src/hedonic/estimators/index.ts";
 import { standardUnits } from "../../../src/hedonic/estimators/ridge.ts";
 import { fitColumns } from "../../../src/hedonic/fitPriceModel.ts";
+import { resolveDependencies } from "../../../src/hedonic/resolveDependencies.ts";
 import { plainDesign, publishedDesign } from "../../fixtures/plainDesign.ts";
 import { drawFrom } from "../../fixtures/randomClass.ts";
 
@@ -107,6 +109,13 @@ describe("partial pooling", () => {
     const short = estimate(design, design.groups.slice(0, 1));
     expect(short.rule.penalty!.slice(1)).toEqual(rule.penalty!.slice(1));
     expect(short.extras.pooled).toEqual([]);
+  });
+
+  test("levels that add up to one are no dependency to resolve", () => {
+    const model: PriceModel = { response: "price", attributes: [], leftOut: [], market: "none", filter: EVERYTHING };
+    const { referenceGroups, notices } = resolveDependencies(design, model);
+    expect(referenceGroups.map(({ columns }) => columns)).toEqual(design.groups.map(({ columns }) => columns));
+    expect(notices).toEqual([]);
   });
 
   test("goes with Huber and with ridge", () => {
