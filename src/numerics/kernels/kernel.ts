@@ -12,12 +12,13 @@
  * `plain/<topic>.ts` with the same lanes and order of additions and spread it into `plainKernel.ts`; add its signature to an
  * interface `<Topic>Operations` here; compare both bit for bit in `tests/numerics/kernels`. The build compiles it by itself.
  */
+import type { DiagnoseOperations } from "./plain/diagnose.ts";
 import type { MomentOperations } from "./plain/moments.ts";
 import type { ReduceOperations } from "./plain/reduce.ts";
 import type { RefineOperations } from "./plain/refine.ts";
 
 /** All operations; addresses and sizes in bytes, counts in rows or columns. */
-export interface Operations extends MomentOperations, RefineOperations, ReduceOperations {}
+export interface Operations extends MomentOperations, RefineOperations, ReduceOperations, DiagnoseOperations {}
 
 export interface Kernel {
   readonly name: "wasm" | "plain";

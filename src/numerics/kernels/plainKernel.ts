@@ -1,5 +1,6 @@
 // A kernel in TypeScript alone: slower, the same bits.
 import type { Kernel } from "./kernel.ts";
+import { diagnoseOperations } from "./plain/diagnose.ts";
 import { momentOperations } from "./plain/moments.ts";
 import type { PlainMemory } from "./plain/plainMemory.ts";
 import { reduceOperations } from "./plain/reduce.ts";
@@ -9,7 +10,12 @@ export function plainKernel(): Kernel {
   const memory: PlainMemory = { f64: new Float64Array(0), u16: new Uint16Array(0) };
   return {
     name: "plain",
-    operations: { ...momentOperations(memory), ...refineOperations(memory), ...reduceOperations(memory) },
+    operations: {
+      ...momentOperations(memory),
+      ...refineOperations(memory),
+      ...reduceOperations(memory),
+      ...diagnoseOperations(memory),
+    },
     reserve(bytes) {
       if (memory.f64.byteLength < bytes) {
         memory.f64 = new Float64Array(Math.ceil(bytes / 8));

@@ -1,4 +1,5 @@
 // What the binary exports: one line per file of operations. `memory` is exported by itself.
+export * from "./diagnose";
 export * from "./moments";
 export * from "./reduce";
 export * from "./refine";
