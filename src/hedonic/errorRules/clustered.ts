@@ -25,11 +25,12 @@ export function clusteredErrors(fit: Fit, by: string, { curvature, sources }: Er
   const scores = pulls.scores.map((score) => factor * score);
   const covariance = pulledCovariance(pulls.columns, pulls.outer, scores, clusters);
   const few = `${formatNumber(count)} clusters are few: below about ${FEW_CLUSTERS} the ranges tend to be too narrow.`;
-  const many = `At most ${count - 1} effects can be judged together by ${formatNumber(count)} clusters.`;
+  const df = count - 1;
+  const many = `They judge at most ${formatNumber(df)} ${df === 1 ? "effect" : "effects"} together.`;
   return errorsFrom(
     covariance,
-    count - 1,
-    `Sales alike in ${label} may share their errors: ${formatNumber(count)} clusters, t with ${formatNumber(count - 1)} degrees of freedom.`,
-    count < FEW_CLUSTERS ? (count <= p - 1 ? `${few} ${many}` : few) : null,
+    df,
+    `Sales alike in ${label} may share their errors: ${formatNumber(count)} clusters, t with ${formatNumber(df)} ${df === 1 ? "degree" : "degrees"} of freedom.`,
+    count < FEW_CLUSTERS ? (df < p - 1 ? `${few} ${many}` : few) : null,
   );
 }

@@ -47,7 +47,12 @@ function whoCountsLess(robustness: Float64Array): string {
   const out = robustness.reduce((count, w) => count + (w === 0 ? 1 : 0), 0);
   const half = robustness.reduce((count, w) => count + (w < 0.5 ? 1 : 0), 0);
   const least = robustness.reduce((smallest, w) => Math.min(smallest, w), 1);
-  const first = `${formatNumber(less)} of ${formatNumber(n)} sales count less than in full, ${formatNumber(half)} of them by less than half`;
+  const all = formatNumber(n);
+  // The bisquare takes a little off every sale: then only the halves are news.
+  const first =
+    less < n
+      ? `${formatNumber(less)} of ${all} sales count less than in full, ${formatNumber(half)} of them for less than half`
+      : `${formatNumber(half)} of ${all} sales count for less than half`;
   return out > 0
     ? `${first}; ${formatNumber(out)} do not count at all.`
     : `${first}; the least counts ${formatPercent(least)}.`;
