@@ -61,7 +61,8 @@ export function mergeParts(parts: readonly Moments[]): Moments {
 
 /** The moments with one row more; O(q²). A row of weight 0 changes nothing. */
 export function addRow(moments: Moments, row: ArrayLike<number>, weight = 1): Moments {
-  return mergeTwo(moments, singleRow(moments, row, weight));
+  checkRow(moments, row, weight);
+  return weight === 0 ? moments : moveRow(moments, row, weight, 1);
 }
 
 /**
@@ -69,36 +70,49 @@ export function addRow(moments: Moments, row: ArrayLike<number>, weight = 1): Mo
  * one after another: accumulate anew after some ten thousand edits. Refuses (tooFewRows) to remove the last row.
  */
 export function removeRow(moments: Moments, row: ArrayLike<number>, weight = 1): Moments {
-  const { rowCount, scales } = moments;
-  const q = scales.length;
-  if (singleRow(moments, row, weight).rowCount === 0) return moments;
-  const weightSum = moments.weightSum - weight;
-  if (rowCount < 2 || !(weightSum > 0)) throw new NumericsError("tooFewRows", "the last row cannot be removed");
+  checkRow(moments, row, weight);
+  if (weight === 0) return moments;
+  if (moments.rowCount < 2 || !(moments.weightSum > weight))
+    throw new NumericsError("tooFewRows", "the last row cannot be removed");
+  return moveRow(moments, row, -weight, -1);
+}
+
+/** W′ = W + w, m′ = m + (x − m)w/W′, S′ = S + (wW/W′)zz′ with z = (x − m)/c; w below 0 for a row that leaves. */
+function moveRow(moments: Moments, row: ArrayLike<number>, weight: number, rows: number): Moments {
+  const q = moments.scales.length;
+  const weightSum = moments.weightSum + weight;
+  const share = weight / weightSum;
   const means = new Float64Array(q);
   const meanTails = new Float64Array(q);
+  const scales = new Float64Array(q);
   const z = new Float64Array(q);
   for (let j = 0; j < q; j++) {
     const old = { hi: moments.means[j]!, lo: moments.meanTails[j]! };
-    const distance = subtract(fromNumber(row[j]!), old);
-    const next = subtract(old, fromNumber((distance.hi + distance.lo) * (weight / weightSum)));
+    const exact = subtract(fromNumber(row[j]!), old);
+    const distance = exact.hi + exact.lo;
+    const next = add(old, fromNumber(distance * share));
     means[j] = next.hi;
     meanTails[j] = next.lo;
-    z[j] = (distance.hi + distance.lo) / scales[j]!;
+    scales[j] = moments.crossProducts[j * q + j]! > 0 ? moments.scales[j]! : powerOfTwoNear(Math.abs(distance));
+    z[j] = distance / scales[j]!;
   }
-  const factor = weight * (moments.weightSum / weightSum);
-  const crossProducts = moments.crossProducts.map((s, at) => s - factor * (z[Math.floor(at / q)]! * z[at % q]!));
-  return { rowCount: rowCount - 1, weightSum, means, meanTails, scales: scales.slice(), crossProducts };
+  const factor = moments.weightSum * share;
+  const crossProducts = moments.crossProducts.slice();
+  for (let j = 0, at = 0; j < q; j++) {
+    const zj = z[j]!;
+    for (let k = 0; k < q; k++, at++) crossProducts[at] = crossProducts[at]! + factor * (zj * z[k]!);
+  }
+  return { rowCount: moments.rowCount + rows, weightSum, means, meanTails, scales, crossProducts };
 }
 
-function singleRow(moments: Moments, row: ArrayLike<number>, weight: number): Moments {
-  const q = moments.scales.length;
-  const means = Float64Array.from(row);
-  if (means.length !== q) throw new NumericsError("shape", `a row has ${means.length} values where ${q} were expected`);
+function checkRow({ scales }: Moments, row: ArrayLike<number>, weight: number): void {
+  const q = scales.length;
+  if (row.length !== q) throw new NumericsError("shape", `a row has ${row.length} values where ${q} were expected`);
   if (!(weight >= 0 && weight < Number.POSITIVE_INFINITY))
     throw new NumericsError("notFinite", `a weight of ${weight} where a number from 0 up was expected`);
-  const bad = [...means.keys()].filter((j) => !Number.isFinite(means[j]!));
+  const bad: number[] = [];
+  for (let j = 0; j < q; j++) if (!Number.isFinite(row[j]!)) bad.push(j);
   if (bad.length > 0) throw new NumericsError("notFinite", "some values are not finite numbers", bad);
-  return { ...emptyMoments(q), rowCount: weight > 0 ? 1 : 0, weightSum: weight, means, scales: moments.scales };
 }
 
 /** S = S₁ + S₂ + W₁W₂/(W₁ + W₂)·δδ′ with δ the difference of the means, in the scales of the larger spread. */
@@ -137,13 +151,14 @@ function mergedCrossProducts(
   const ratioA = a.scales.map((scale, j) => scale / scales[j]!);
   const ratioB = b.scales.map((scale, j) => scale / scales[j]!);
   const crossProducts = new Float64Array(q * q);
-  for (let j = 0; j < q; j++) {
-    for (let k = 0; k <= j; k++) {
-      const at = j * q + k;
-      const fromA = a.crossProducts[at]! * ratioA[j]! * ratioA[k]!;
-      const fromB = b.crossProducts[at]! * ratioB[j]! * ratioB[k]!;
-      const value = fromA + fromB + factor * z[j]! * z[k]!;
-      setBoth(crossProducts, q, j, k, value);
+  for (let j = 0, at = 0; j < q; j++) {
+    const zj = z[j]!;
+    const inA = ratioA[j]!;
+    const inB = ratioB[j]!;
+    for (let k = 0; k < q; k++, at++) {
+      const fromA = a.crossProducts[at]! * (inA * ratioA[k]!);
+      const fromB = b.crossProducts[at]! * (inB * ratioB[k]!);
+      crossProducts[at] = fromA + fromB + factor * (zj * z[k]!);
     }
   }
   return crossProducts;
@@ -175,7 +190,7 @@ function rescaled(moments: Moments): Moments {
   });
   const ratios = moments.scales.map((scale, j) => scale / scales[j]!);
   const crossProducts = new Float64Array(q * q);
-  for (let j = 0; j < q; j++)
-    for (let k = 0; k < q; k++) crossProducts[j * q + k] = old[j * q + k]! * ratios[j]! * ratios[k]!;
+  for (let j = 0, at = 0; j < q; j++)
+    for (let k = 0; k < q; k++, at++) crossProducts[at] = old[at]! * (ratios[j]! * ratios[k]!);
   return { ...moments, scales, crossProducts };
 }
