@@ -4,6 +4,7 @@ import { describe, expect, test } from "vitest";
 import { errorsOf } from "../../../src/hedonic/errorRules/index.ts";
 import { estimate } from "../../../src/hedonic/estimators/index.ts";
 import { fitColumns } from "../../../src/hedonic/fitPriceModel.ts";
+import { valueAt } from "../../../src/numerics/column.ts";
 import { plainDesign, publishedDesign } from "../../fixtures/plainDesign.ts";
 import { readReference } from "../../fixtures/publishedSales.ts";
 import { drawFrom } from "../../fixtures/randomClass.ts";
@@ -157,4 +158,42 @@ test("a sale alone of its kind has no HC2 and HC3; no degrees of freedom are ref
   }
   expect(errorsOf({ kind: "HC1" }, fit).caution).toContain("HC3 is the safer choice");
   expect(errorsOf({ kind: "even" }, fit).caution).toContain("HC3");
+});
+
+describe("pooled levels", () => {
+  const draw = drawFrom(23);
+  const n = 90;
+  const make = Array.from({ length: n }, () => Math.floor(8 * draw() * draw()));
+  const size = Float64Array.from({ length: n }, () => 3 * draw());
+  const prices = Float64Array.from(size, (v, i) => 80 + 6 * v + 2 * Math.sin(2 * make[i]!) + 2 * draw());
+  const design = plainDesign(
+    [
+      { key: "size", values: size, kind: "line" },
+      { key: "make", values: make, kind: "pooled" },
+    ],
+    prices,
+  );
+  const { rule, extras } = estimate(design, design.groups);
+  const fit = fitColumns(design, design.groups, rule);
+  const found = errorsOf({ kind: "even" }, fit);
+
+  test("even: s² times the inverse of the penalised matrix, intercept included, written out", () => {
+    const x = new Matrix(make.map((_, i) => [1, ...design.columns.map(({ values }) => valueAt(values, i))]));
+    const penalised = x.transpose().mmul(x);
+    for (const [j, penalty] of rule.penalty!.entries())
+      penalised.set(j + 1, j + 1, penalised.get(j + 1, j + 1) + penalty);
+    const outer = inverse(penalised);
+    const hat = x.mmul(outer).mmul(x.transpose());
+    const squares = fit.solution.residuals.reduce((sum, e) => sum + e * e, 0);
+    const s2 = squares / (n - hat.trace());
+    for (const [j, se] of found.standardErrors.entries())
+      expect(se ** 2 / (s2 * outer.get(j + 1, j + 1))).toBeCloseTo(1, 8);
+    expect(found.interceptStandardError ** 2 / (s2 * outer.get(0, 0))).toBeCloseTo(1, 8);
+  });
+
+  test("at the restricted maximum the two ways to the residual variance agree: Σe²/(n − Σh) = λτ²", () => {
+    const squares = fit.solution.residuals.reduce((sum, e) => sum + e * e, 0);
+    const { penalty, spread } = extras.pooled[0]!;
+    expect((penalty * spread ** 2 * found.df) / squares).toBeCloseTo(1, 9);
+  });
 });
