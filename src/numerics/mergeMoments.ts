@@ -45,14 +45,14 @@ export function mergeMoments(parts: readonly Moments[]): Moments {
   return rescaled(mergeParts(parts));
 }
 
-/** As `mergeMoments`, with scales as they come. */
-export function mergeParts(parts: readonly Moments[]): Moments {
+/** As `mergeMoments`, with scales as they come. Parts that nobody else holds may give their memory to the result. */
+export function mergeParts(parts: readonly Moments[], areOwn = false): Moments {
   let level = parts;
   while (level.length > 1) {
     const pairs: Moments[] = [];
     for (let i = 0; i < level.length; i += 2) {
       const second = level[i + 1];
-      pairs.push(second === undefined ? level[i]! : mergeTwo(level[i]!, second));
+      pairs.push(second === undefined ? level[i]! : mergeTwo(level[i]!, second, areOwn));
     }
     level = pairs;
   }
@@ -116,7 +116,7 @@ function checkRow({ scales }: Moments, row: ArrayLike<number>, weight: number): 
 }
 
 /** S = S₁ + S₂ + W₁W₂/(W₁ + W₂)·δδ′ with δ the difference of the means, in the scales of the larger spread. */
-function mergeTwo(a: Moments, b: Moments): Moments {
+function mergeTwo(a: Moments, b: Moments, areOwn: boolean): Moments {
   const q = a.scales.length;
   if (b.scales.length !== q) throw new NumericsError("shape", `moments of ${q} and ${b.scales.length} columns`);
   if (b.rowCount === 0) return a;
@@ -136,21 +136,22 @@ function mergeTwo(a: Moments, b: Moments): Moments {
     scales[j] = mergedScale(a, b, j, distance.hi);
     z[j] = (distance.hi + distance.lo) / scales[j]!;
   }
-  const crossProducts = mergedCrossProducts(a, b, scales, z, a.weightSum * share);
+  const crossProducts = areOwn ? a.crossProducts : new Float64Array(q * q);
+  mergeCrossProducts(crossProducts, a, b, scales, z, a.weightSum * share);
   return { rowCount: a.rowCount + b.rowCount, weightSum, means, meanTails, scales, crossProducts };
 }
 
-function mergedCrossProducts(
+function mergeCrossProducts(
+  crossProducts: Float64Array,
   a: Moments,
   b: Moments,
   scales: Float64Array,
   z: Float64Array,
   factor: number,
-): Float64Array {
+): void {
   const q = scales.length;
   const ratioA = a.scales.map((scale, j) => scale / scales[j]!);
   const ratioB = b.scales.map((scale, j) => scale / scales[j]!);
-  const crossProducts = new Float64Array(q * q);
   for (let j = 0, at = 0; j < q; j++) {
     const zj = z[j]!;
     const inA = ratioA[j]!;
@@ -161,7 +162,6 @@ function mergedCrossProducts(
       crossProducts[at] = fromA + fromB + factor * (zj * z[k]!);
     }
   }
-  return crossProducts;
 }
 
 /** Sets S_jk and S_kj. */

@@ -38,7 +38,7 @@ export function partMoments(
     if (moments === null) return null;
     blocks.push(moments);
   }
-  return mergeParts(blocks);
+  return mergeParts(blocks, true);
 }
 
 function slice(rows: Rows, start: number, end: number): Rows {
