@@ -114,9 +114,9 @@ function rowsWith(sales: SaleColumns, holds: (at: number) => boolean): Int32Arra
   return Int32Array.from(rows);
 }
 
-function preparedOn({ sales, assetClass, model }: AppraisalInput, used: Int32Array): PreparedEvidence {
+function preparedOn({ sales, assetClass, model, subject }: AppraisalInput, used: Int32Array): PreparedEvidence {
   const account: EvidenceAccount = accountOf(sales, used);
-  return { account, used, design: buildDesign(sales, used, assetClass, model) };
+  return { account, used, design: buildDesign(sales, used, assetClass, model, subject?.effectiveOn ?? null) };
 }
 
 function sameRows(a: Int32Array, b: Int32Array): boolean {

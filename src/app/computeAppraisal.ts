@@ -57,7 +57,7 @@ export interface PreparedEvidence {
 export function prepareEvidence({ sales, assetClass, model, ...input }: AppraisalInput): PreparedEvidence {
   const until = input.subject?.effectiveOn ?? input.effectiveOn ?? null;
   const { account, used } = selectEvidence(sales, assetClass, model, until);
-  return { account, used, design: buildDesign(sales, used, assetClass, model) };
+  return { account, used, design: buildDesign(sales, used, assetClass, model, until) };
 }
 
 /** The evidence is bounded by the subject's effective date. Refuses what selectEvidence … fitColumns refuse (AppError). */
@@ -66,7 +66,7 @@ export function computeAppraisal(input: AppraisalInput, prepared = prepareEviden
   const { account, used, design } = prepared;
   const row = subject === null ? null : describeSubject(design, assetClass, subject);
   const resolved = resolveDependencies(design, model, row?.notKnown ?? []);
-  const stays = (group: AttributeGroup) => !model.leftOut.includes(group.key) && !row?.notKnown.includes(group.key);
+  const stays = staying(model, row);
   const kept = resolved.referenceGroups.filter(stays);
   const estimated = estimate(design, kept, model.estimator);
   const short = fitColumns(design, kept, estimated.rule);
@@ -88,10 +88,15 @@ export function priceOf(input: AppraisalInput, { design }: PreparedEvidence): nu
   if (subject === null) return null;
   const row = describeSubject(design, assetClass, subject);
   const { referenceGroups } = resolveDependencies(design, model, row.notKnown);
-  const stays = ({ key }: AttributeGroup) => !model.leftOut.includes(key) && !row.notKnown.includes(key);
-  const kept = referenceGroups.filter(stays);
+  const kept = referenceGroups.filter(staying(model, row));
   const { rule } = estimate(design, kept, model.estimator);
   return estimatePrice(fitColumns(design, kept, rule), row, [], null).amount;
+}
+
+/** Attributes in use: not left out and known; a product while both of its attributes are. */
+function staying({ leftOut }: PriceModel, row: SubjectRow | null): (group: AttributeGroup) => boolean {
+  const isIn = (key: string): boolean => !leftOut.includes(key) && !row?.notKnown.includes(key);
+  return ({ key, product }) => isIn(key) && (product === null || (isIn(product.a) && isIn(product.b)));
 }
 
 /** The whole reference set fitted, or null when it has more coefficients than the sales can carry and the set in use has not. */
@@ -135,7 +140,7 @@ function pricePart(input: AppraisalInput, short: Fit, long: Fit | null, row: Sub
   const { assetClass, sales, levels } = input;
   const price = estimatePrice(short, row, levels, marketHeldAt(short.design, subject));
   const unknown = (long?.groups ?? []).filter(
-    (group) => row.notKnown.includes(group.key) && !input.model.leftOut.includes(group.key),
+    (group) => group.product === null && row.notKnown.includes(group.key) && !input.model.leftOut.includes(group.key),
   );
   return {
     subject,

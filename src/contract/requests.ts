@@ -46,16 +46,54 @@ export const attributeInput = z.object({
 export const priceModelInput = z.object({
   response: z.enum(["price", "lnPrice"]),
   attributes: z.array(
-    z.object({ key: z.string(), form: z.enum(["line", "ln", "choice", "yesNo"]), reference: z.string().nullable() }),
+    z.object({
+      key: z.string(),
+      form: z.enum(["line", "ln", "spline", "choice", "yesNo"]),
+      reference: z.string().nullable(),
+      knots: z.number().int().min(3).max(7).exactOptional(),
+      reading: z.enum(["reference", "sumToZero"]).exactOptional(),
+      rare: z.enum(["keep", "merge", "pool"]).exactOptional(),
+    }),
   ),
   leftOut: z.array(z.string()),
-  market: z.enum(["none", "line"]),
+  market: z.enum(["none", "line", "quarters", "spline"]),
   filter: z.object({
     channels: z.array(channel).nullable(),
     soldFrom: day.nullable(),
     soldTo: day.nullable(),
     verifiedOnly: z.boolean(),
   }),
+  interactions: z
+    .array(z.object({ a: z.string(), b: z.string() }))
+    .max(20)
+    .exactOptional(),
+  blends: z
+    .array(
+      z.object({
+        key: z.string().regex(/^blend_/),
+        label: z.string().min(1).max(80),
+        members: z.array(
+          z.object({ key: z.string(), sign: z.union([z.literal(1), z.literal(-1)]), weight: z.number().min(0) }),
+        ),
+        weighting: z.enum(["equal", "firstComponent", "own"]),
+      }),
+    )
+    .max(10)
+    .exactOptional(),
+  halfLifeMonths: z.number().positive().max(1200).nullable().exactOptional(),
+  estimator: z
+    .union([
+      z.object({ kind: z.enum(["leastSquares", "huber", "mm"]) }),
+      z.object({ kind: z.literal("ridge"), penalty: z.number().min(0).nullable() }),
+    ])
+    .exactOptional(),
+  errors: z
+    .union([
+      z.object({ kind: z.enum(["even", "HC0", "HC1", "HC2", "HC3"]) }),
+      z.object({ kind: z.literal("cluster"), by: z.string() }),
+    ])
+    .exactOptional(),
+  range: z.enum(["exact", "jackknife+", "cv+", "variance"]).exactOptional(),
 });
 
 export const subjectInput = z.object({

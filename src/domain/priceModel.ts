@@ -7,7 +7,7 @@ import type { Day } from "./day.ts";
 import type { Channel } from "./sale.ts";
 
 export type ResponseForm = "price" | "lnPrice";
-export type AttributeForm = "line" | "ln" | "choice" | "yesNo";
+export type AttributeForm = "line" | "ln" | "spline" | "choice" | "yesNo";
 /** How a choice's coefficients read: against one level, or against the mean over its levels. */
 export type ChoiceReading = "reference" | "sumToZero";
 /** What becomes of levels with fewer sales than RARE_LEVEL: kept, merged into one, or partially pooled. */

@@ -1,27 +1,35 @@
 /**
- * From evidence to columns: one group of columns per attribute of the reference set, market movement last.
+ * From evidence to columns: one group of columns per attribute of the reference set, blends in place of their members, products
+ * of chosen pairs, market movement last.
  * Rows are ordered by sold-on day, then id, so that the order in which sales were entered never changes a bit.
- * Age at sale = (sold on − built)/365.2425 years; market movement in months since the first sale of the evidence.
+ * Age at sale = (sold on − built)/365.2425 years. Recency weights: ½^(months before the effective date/half-life).
  */
-
 import type { NewAssetClass } from "../domain/assetClass.ts";
 import { CHANNEL_KEY, MARKET_KEY } from "../domain/attribute.ts";
-import { DAYS_PER_MONTH, yearsBetween } from "../domain/day.ts";
+import { DAYS_PER_MONTH, type Day, dayNumber, yearsBetween } from "../domain/day.ts";
 import { AppError } from "../domain/errors.ts";
+import { formatNumber } from "../domain/format.ts";
 import type { ModelAttribute, PriceModel } from "../domain/priceModel.ts";
 import { CHANNELS, type SaleColumns } from "../domain/sale.ts";
 import { accumulateMoments } from "../numerics/accumulateMoments.ts";
-import { type Column, numbersOf } from "../numerics/column.ts";
+import { type Column, isIndicator } from "../numerics/column.ts";
+import { type BlendMember, blendColumn } from "./blends.ts";
 import type { AttributeGroup, Design, DesignColumn } from "./fit.ts";
 import type { FormSource } from "./forms/form.ts";
 import { FORMS } from "./forms/index.ts";
+import { marketColumns } from "./market.ts";
+import { productColumns } from "./products.ts";
 
-/** Refuses: no evidence; an attribute that the class does not have; a form that does not suit the attribute. */
+/**
+ * `effectiveOn`: the day the price speaks of, which recency counts from; the last sale without one.
+ * Refuses: no evidence; an attribute that the class does not have; a form that does not suit the attribute; what forms refuse.
+ */
 export function buildDesign(
   sales: SaleColumns,
   used: Int32Array,
   assetClass: NewAssetClass,
   model: PriceModel,
+  effectiveOn: Day | null = null,
 ): Design {
   if (used.length === 0) {
     throw new AppError({
@@ -38,9 +46,13 @@ export function buildDesign(
   const prices = Float64Array.from(rows, (at) => sales.price[at]!);
   const soldOn = Float64Array.from(rows, (at) => sales.soldOn[at]!);
   const response = model.response === "lnPrice" ? prices.map((price) => Math.log(price)) : prices;
-  const columns: DesignColumn[] = [];
-  const groups = model.attributes.map((wanted) => addGroup(columns, sourceOf(sales, rows, assetClass, wanted), wanted));
-  if (model.market === "line") groups.push(addMarket(columns, soldOn));
+  const built: Built = { columns: [], groups: [], notes: [] };
+  const sources = model.attributes.map((wanted) => sourceOf(sales, rows, assetClass, wanted));
+  addAttributes(built, sources, model);
+  addProducts(built, model);
+  addMarket(built, model, soldOn);
+  const weights = recencyWeights(model.halfLifeMonths ?? null, soldOn, effectiveOn, built.notes);
+  const all = [...built.columns.map((column) => column.values), response];
   return {
     n: rows.length,
     rows,
@@ -48,17 +60,24 @@ export function buildDesign(
     response,
     prices,
     soldOn,
-    columns,
-    groups,
-    moments: accumulateMoments([...columns.map((column) => column.values), response]),
-    weights: null,
+    columns: built.columns,
+    groups: built.groups,
+    moments: accumulateMoments(all, weights === null ? {} : { weights }),
+    weights,
+    notes: built.notes,
   };
+}
+
+interface Built {
+  readonly columns: DesignColumn[];
+  readonly groups: AttributeGroup[];
+  readonly notes: string[];
 }
 
 function sourceOf(sales: SaleColumns, rows: Int32Array, assetClass: NewAssetClass, wanted: ModelAttribute): FormSource {
   if (wanted.key === CHANNEL_KEY) {
     const stored = Float64Array.from(rows, (at) => CHANNELS.indexOf(sales.channels[at]!));
-    return { label: "Sold through", attribute: null, stored, levels: CHANNELS, reference: wanted.reference };
+    return { label: "Sold through", attribute: null, stored, levels: CHANNELS, wanted };
   }
   const attribute = assetClass.attributes.find((one) => one.key === wanted.key);
   const values = sales.values[wanted.key];
@@ -75,12 +94,16 @@ function sourceOf(sales: SaleColumns, rows: Int32Array, assetClass: NewAssetClas
     attribute.kind === "built" ? yearsBetween(values[at]!, sales.soldOn[at]!) : values[at]!,
   );
   refuseUnsuited(attribute.kind, attribute.label, wanted);
-  return { label: attribute.label, attribute, stored, levels: attribute.levels, reference: wanted.reference };
+  return { label: attribute.label, attribute, stored, levels: attribute.levels, wanted };
 }
 
 function refuseUnsuited(kind: string, label: string, { form }: ModelAttribute): void {
   const suits =
-    kind === "choice" ? form === "choice" : kind === "yesNo" ? form === "yesNo" : form === "line" || form === "ln";
+    kind === "choice"
+      ? form === "choice"
+      : kind === "yesNo"
+        ? form === "yesNo"
+        : form === "line" || form === "ln" || form === "spline";
   if (suits) return;
   throw new AppError({
     family: "fit",
@@ -92,51 +115,123 @@ function refuseUnsuited(kind: string, label: string, { form }: ModelAttribute): 
         ? "Use it as a choice."
         : kind === "yesNo"
           ? "Use it as yes or no."
-          : "Use a straight line or a logarithm.",
+          : "Use a straight line, a logarithm or a curve.",
   });
 }
 
-function addGroup(columns: DesignColumn[], source: FormSource, { key, form }: ModelAttribute): AttributeGroup {
+/** Each attribute in the model's order; a blend where its first member stands. */
+function addAttributes(built: Built, sources: readonly FormSource[], model: PriceModel): void {
+  const blends = model.blends ?? [];
+  const added = new Set<string>();
+  for (const source of sources) {
+    const blend = blends.find(({ members }) => members.some(({ key }) => key === source.wanted.key));
+    if (blend === undefined) {
+      addAttribute(built, source);
+      continue;
+    }
+    if (added.has(blend.key)) continue;
+    added.add(blend.key);
+    const members = sources
+      .filter(({ wanted }) => blend.members.some(({ key }) => key === wanted.key))
+      .filter(({ attribute }) => attribute?.kind === "number" || attribute?.kind === "built")
+      .map(({ wanted, label, stored }): BlendMember => ({ key: wanted.key, label, stored }));
+    const { values, at } = blendColumn(blend, members);
+    push(built, blend.key, [{ level: null, values }], {
+      ...PLAIN_GROUP,
+      key: blend.key,
+      label: blend.label,
+      form: "line",
+      unit: null,
+      decimals: 2,
+      step: 1,
+      stepWords: "1 standard deviation",
+      stored: values,
+      numbersAt: () => [],
+      blend: { members: members.map(({ key }) => key), at },
+    });
+  }
+}
+
+const PLAIN_GROUP = {
+  reference: null,
+  isMarket: false,
+  knots: [],
+  merged: null,
+  reading: "reference",
+  product: null,
+  blend: null,
+} as const;
+
+function addAttribute(built: Built, source: FormSource): void {
+  const { key, form, reading } = source.wanted;
   const made = FORMS[form].columns(source);
-  const indexes = made.columns.map(({ level, values }) => {
-    columns.push({ attribute: key, level, values, mean: meanOf(values) });
-    return columns.length - 1;
-  });
-  const { unit, reference, step, stepWords } = made;
-  const decimals = source.attribute?.decimals ?? 0;
-  return {
+  built.notes.push(...made.notes);
+  push(built, key, made.columns, {
+    ...PLAIN_GROUP,
     key,
     label: source.label,
     form,
-    unit,
-    decimals,
-    step,
-    stepWords,
-    columns: indexes,
-    reference,
-    isMarket: false,
-  };
+    unit: made.unit,
+    decimals: source.attribute?.decimals ?? 0,
+    step: made.step,
+    stepWords: made.stepWords,
+    reference: made.reference,
+    stored: form === "choice" || form === "yesNo" ? null : source.stored,
+    numbersAt: made.numbersAt,
+    knots: made.knots,
+    merged: made.merged,
+    reading: reading ?? "reference",
+  });
 }
 
-function addMarket(columns: DesignColumn[], soldOn: Float64Array): AttributeGroup {
-  const first = soldOn[0]!;
-  const values = soldOn.map((day) => (day - first) / DAYS_PER_MONTH);
-  columns.push({ attribute: MARKET_KEY, level: null, values, mean: meanOf(values) });
-  return {
-    key: MARKET_KEY,
-    label: "Market movement",
-    form: "line",
-    unit: "months",
-    decimals: 1,
-    step: 12,
-    stepWords: "12\u00a0months",
-    columns: [columns.length - 1],
-    reference: null,
-    isMarket: true,
-  };
+function push(
+  built: Built,
+  attribute: string,
+  columns: readonly Pick<DesignColumn, "level" | "values">[],
+  group: Omit<AttributeGroup, "columns">,
+): void {
+  const indexes = columns.map(({ level, values }) => {
+    built.columns.push({ attribute, level, values, mean: meanOf(values) });
+    return built.columns.length - 1;
+  });
+  built.groups.push({ ...group, columns: indexes });
+}
+
+/** Pairs of which both stand in the design; of the others nothing enters. */
+function addProducts(built: Built, { interactions = [] }: PriceModel): void {
+  for (const pair of interactions) {
+    const [a, b] = [pair.a, pair.b].map((key) => built.groups.find((group) => group.key === key));
+    if (a === undefined || b === undefined || a.product !== null || b.product !== null) {
+      built.notes.push(`The product of ${pair.a} and ${pair.b} is left out: both must be attributes of the set.`);
+      continue;
+    }
+    const { columns, group } = productColumns(a, b, built.columns);
+    push(built, group.key, columns, group);
+  }
+}
+
+function addMarket(built: Built, { market }: PriceModel, soldOn: Float64Array): void {
+  const made = marketColumns(market, soldOn);
+  if (made === null) return;
+  built.notes.push(...made.notes);
+  push(built, MARKET_KEY, made.columns, made.group);
+}
+
+function recencyWeights(
+  halfLifeMonths: number | null,
+  soldOn: Float64Array,
+  effectiveOn: Day | null,
+  notes: string[],
+): Float64Array | null {
+  if (halfLifeMonths === null) return null;
+  const until = (effectiveOn === null ? null : dayNumber(effectiveOn)) ?? soldOn.at(-1)!;
+  notes.push(`A sale counts half for every ${formatNumber(halfLifeMonths, 0)} months before the effective date.`);
+  return soldOn.map((day) => 0.5 ** ((until - day) / DAYS_PER_MONTH / halfLifeMonths));
 }
 
 function meanOf(column: Column): number {
-  const values = numbersOf(column);
-  return values.reduce((sum, value) => sum + value, 0) / values.length;
+  if (!isIndicator(column)) return column.reduce((sum, value) => sum + value, 0) / column.length;
+  let count = 0;
+  for (let i = 0; i < column.length; i++) if (column.codes[i] === column.level) count += 1;
+  return count / column.length;
 }

@@ -3,10 +3,11 @@
  * choice moves as one attribute. Made by buildDesign and fitColumns; read by valuation and explanation.
  */
 
-import type { AttributeForm, ResponseForm } from "../domain/priceModel.ts";
+import type { AttributeForm, ChoiceReading, ResponseForm } from "../domain/priceModel.ts";
 import type { Moments } from "../numerics/accumulateMoments.ts";
 import type { Column } from "../numerics/column.ts";
 import type { LeastSquaresSolution } from "../numerics/solveLeastSquares.ts";
+import type { KnownValue } from "./forms/form.ts";
 
 export interface DesignColumn {
   /** Attribute key, CHANNEL_KEY or MARKET_KEY. */
@@ -33,6 +34,22 @@ export interface AttributeGroup {
   /** Choice: reference level. */
   readonly reference: string | null;
   readonly isMarket: boolean;
+  /** Numbers: n raw values, for spreads, reach and typical values; null for choices, yes/no and products. */
+  readonly stored: Float64Array | null;
+  /** A value of the subject on the group's columns; market movement takes a day number, blends and products are made of members. */
+  readonly numbersAt: (value: KnownValue) => number[];
+  /** Curve: where the pieces meet; empty otherwise. */
+  readonly knots: readonly number[];
+  /** Choice: levels taken together, and what they are called then. */
+  readonly merged: { readonly name: string; readonly levels: readonly string[] } | null;
+  readonly reading: ChoiceReading;
+  /** A product of two attributes, which stands only while both are in the model. */
+  readonly product: { readonly a: string; readonly b: string } | null;
+  /** A blend of attributes, which needs all of them known. */
+  readonly blend: {
+    readonly members: readonly string[];
+    readonly at: (values: ReadonlyMap<string, number>) => number;
+  } | null;
 }
 
 /** Everything of the reference set, included or not; column order is the order of the model, market last. */
@@ -52,6 +69,8 @@ export interface Design {
   readonly moments: Moments;
   /** n weights (recency), or null when every sale counts alike. */
   readonly weights: Float64Array | null;
+  /** What was done that nobody asked for by name, each a sentence. */
+  readonly notes: readonly string[];
 }
 
 /**

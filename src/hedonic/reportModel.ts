@@ -108,7 +108,7 @@ function coefficientsOf(fit: Fit, averagePrice: number, errors: FitErrors | null
       attribute,
       label: group.label,
       level,
-      stepWords: group.stepWords ?? (group.form === "choice" ? `against ${group.reference}` : "yes against no"),
+      stepWords: stepWordsOf(group, level),
       estimate,
       ...range,
       moneyPerStep: money(estimate),
@@ -117,6 +117,14 @@ function coefficientsOf(fit: Fit, averagePrice: number, errors: FitErrors | null
     };
   });
   return [intercept, ...others];
+}
+
+/** "1,000 h", "against Brannock", "from 2,000 to 5,000 h", "against the mean of levels" */
+export function stepWordsOf(group: AttributeGroup, level: string | null): string {
+  if (group.stepWords !== null) return group.stepWords;
+  if (group.form === "spline") return `from ${level}`;
+  if (group.form === "yesNo") return "yes against no";
+  return group.reference === null ? "against the mean of levels" : `against ${group.reference}`;
 }
 
 function rangeOf(estimate: number, standardError: number | null, hc3: number | null, t: number | null) {
@@ -160,8 +168,8 @@ function evidenceOf(design: Design, group: AttributeGroup, fit: Fit): AttributeE
     const levels = [{ level: group.reference ?? "", count: rest }, ...counts];
     return { ...base, included, spread: null, levels, reference: group.reference };
   }
-  const stored = numbersOf(columns[0]!.values);
-  const raw = group.form === "ln" ? stored.map((value) => Math.exp(value)) : stored;
+  const own = numbersOf(columns[0]!.values);
+  const raw = group.form === "ln" ? own.map((value) => Math.exp(value)) : (group.stored ?? own);
   const sorted = Float64Array.from(raw).sort();
   const at = (p: number) => quantileOfSorted(sorted, p);
   const mean = raw.reduce((sum, value) => sum + value, 0) / raw.length;

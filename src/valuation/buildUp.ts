@@ -8,6 +8,7 @@ import { formatDay, formatNumber, formatPercent } from "../domain/format.ts";
 import type { Subject } from "../domain/subject.ts";
 import type { AttributeGroup, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { builtUpOrder, contributionOf } from "./estimatePrice.ts";
+import { rawValue } from "./rawValue.ts";
 
 export function buildUp(fit: Fit, row: SubjectRow, subject: Subject): BuiltUp {
   const isLn = fit.design.responseForm === "lnPrice";
@@ -36,9 +37,12 @@ export function buildUp(fit: Fit, row: SubjectRow, subject: Subject): BuiltUp {
 
 function averageWords(fit: Fit, group: AttributeGroup): string {
   const column = fit.design.columns[group.columns[0]!]!;
-  if (group.isMarket) return formatDay(dayOf(fit.design.soldOn[0]! + column.mean * DAYS_PER_MONTH));
-  if (group.form === "choice") return "mixed";
+  if (group.isMarket && group.form === "line") {
+    return formatDay(dayOf(fit.design.soldOn[0]! + column.mean * DAYS_PER_MONTH));
+  }
+  if (group.form === "choice" || group.isMarket || group.product !== null) return "mixed";
   if (group.form === "yesNo") return `${formatPercent(column.mean)} yes`;
+  if (group.form === "spline") return withUnit(meanOf(group.stored!), group);
   return withUnit(group.form === "ln" ? Math.exp(column.mean) : column.mean, group);
 }
 
@@ -46,12 +50,18 @@ function subjectWords(fit: Fit, group: AttributeGroup, row: SubjectRow, subject:
   const value = row.x[group.columns[0]!]!;
   if (group.isMarket) {
     const last = fit.design.soldOn[fit.design.n - 1]!;
-    const held = fit.design.soldOn[0]! + value * DAYS_PER_MONTH >= last - 0.5 && subject.effectiveOn > dayOf(last);
+    const held = subject.effectiveOn > dayOf(last);
     return held ? `${formatDay(dayOf(last))}, held` : formatDay(subject.effectiveOn);
   }
+  if (group.product !== null) return "as both are";
   if (group.form === "choice") return String(subject.values[group.key]);
   if (group.form === "yesNo") return value === 1 ? "yes" : "no";
+  if (group.form === "spline") return withUnit(rawValue(group, subject), group);
   return withUnit(group.form === "ln" ? Math.exp(value) : value, group);
+}
+
+function meanOf(values: Float64Array): number {
+  return values.reduce((sum, value) => sum + value, 0) / values.length;
 }
 
 function withUnit(value: number, group: AttributeGroup): string {

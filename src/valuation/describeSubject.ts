@@ -1,11 +1,10 @@
 /** The subject on the design's columns, through the same forms as the sales. NaN where a value is not known. */
 import type { NewAssetClass } from "../domain/assetClass.ts";
 import { type AttributeValue, CHANNEL_KEY } from "../domain/attribute.ts";
-import { DAYS_PER_MONTH, dayNumber, dayOf, yearsBetween } from "../domain/day.ts";
+import { dayNumber, dayOf, yearsBetween } from "../domain/day.ts";
 import { AppError } from "../domain/errors.ts";
 import type { Subject } from "../domain/subject.ts";
 import type { AttributeGroup, Design, SubjectRow } from "../hedonic/fit.ts";
-import { FORMS } from "../hedonic/forms/index.ts";
 
 /**
  * Market movement is held at the last sale of the evidence when the effective date lies after it.
@@ -15,7 +14,7 @@ export function describeSubject(design: Design, assetClass: NewAssetClass, subje
   const x = new Float64Array(design.columns.length).fill(Number.NaN);
   const notKnown: string[] = [];
   for (const group of design.groups) {
-    const numbers = group.isMarket ? [marketMonths(design, subject)] : numbersOf(design, assetClass, group, subject);
+    const numbers = numbersOf(design, assetClass, group, subject, x);
     if (numbers === null) notKnown.push(group.key);
     else
       group.columns.forEach((index, at) => {
@@ -32,31 +31,58 @@ export function marketHeldAt(design: Design, subject: Subject): string | null {
   return isInModel && (dayNumber(subject.effectiveOn) ?? last) > last ? dayOf(last) : null;
 }
 
-function marketMonths(design: Design, subject: Subject): number {
+/** Held at the last sale of the evidence. */
+function marketDay(design: Design, subject: Subject): number {
   const last = design.soldOn[design.n - 1]!;
-  return (Math.min(dayNumber(subject.effectiveOn) ?? last, last) - design.soldOn[0]!) / DAYS_PER_MONTH;
+  return Math.min(dayNumber(subject.effectiveOn) ?? last, last);
 }
 
+/** Null where a value is not known. `x` has the columns of the groups before: a product reads its members there. */
 function numbersOf(
   design: Design,
   assetClass: NewAssetClass,
   group: AttributeGroup,
   subject: Subject,
+  x: Float64Array,
 ): number[] | null {
+  if (group.isMarket) return group.numbersAt(marketDay(design, subject));
+  if (group.product !== null) return productNumbers(design, group.product, x);
+  if (group.blend !== null) return blendNumbers(assetClass, group, group.blend, subject);
   const value = subject.values[group.key] ?? null;
   if (value === null || value === "") return null;
-  const made = {
-    columns: group.columns.map((index) => design.columns[index]!),
-    reference: group.reference,
-    step: group.step,
-    stepWords: group.stepWords,
-    unit: group.unit,
-  };
   const read = readValue(assetClass, group, value, subject);
   if (group.form === "choice") refuseUnseen(design, group, String(read));
-  const numbers = FORMS[group.form].subject(read, made);
+  const numbers = group.numbersAt(read);
   if (numbers.every(Number.isFinite)) return numbers;
   throw refusal(group.label, `${group.label} of ${value} has no logarithm.`, "Enter a value above zero.");
+}
+
+/** In the order of productColumns: columns of a in turn, each times every column of b, both less their means. */
+function productNumbers(
+  { groups, columns }: Design,
+  product: NonNullable<AttributeGroup["product"]>,
+  x: Float64Array,
+): number[] | null {
+  const offsets = [product.a, product.b].map((key) =>
+    groups.find((one) => one.key === key)!.columns.map((index) => x[index]! - columns[index]!.mean),
+  );
+  const numbers = offsets[0]!.flatMap((first) => offsets[1]!.map((second) => first * second));
+  return numbers.some(Number.isNaN) ? null : numbers;
+}
+
+function blendNumbers(
+  assetClass: NewAssetClass,
+  group: AttributeGroup,
+  blend: NonNullable<AttributeGroup["blend"]>,
+  subject: Subject,
+): number[] | null {
+  const values = new Map<string, number>();
+  for (const key of blend.members) {
+    const value = subject.values[key] ?? null;
+    if (value === null || value === "") return null;
+    values.set(key, Number(readValue(assetClass, { ...group, key }, value, subject)));
+  }
+  return [blend.at(values)];
 }
 
 function readValue(
@@ -101,7 +127,12 @@ function readYesNo(label: string, value: Exclude<AttributeValue, null>): boolean
 }
 
 function refuseUnseen(design: Design, group: AttributeGroup, level: string): void {
-  const seen = [group.reference, ...group.columns.map((index) => design.columns[index]!.level)];
+  const own = group.columns.map((index) => design.columns[index]!.level);
+  // Levels that are drawn together have a mean, which stands for a level not seen.
+  if (group.reference === null) return;
+  const seen = [group.reference, ...own].flatMap<string | null>((one) =>
+    one === group.merged?.name ? group.merged.levels : [one],
+  );
   if (seen.includes(level)) return;
   throw refusal(
     group.label,

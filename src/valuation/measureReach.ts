@@ -11,6 +11,7 @@ import type { AttributeGroup, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { numbersOf } from "../numerics/column.ts";
 import { quantileOfSorted } from "../numerics/quantile.ts";
 import { subjectLeverage } from "./estimatePrice.ts";
+import { rawValue } from "./rawValue.ts";
 
 const EDGE_SHARE = 0.01;
 const GAP_SHARE = 0.1;
@@ -21,22 +22,21 @@ type AttributeReach = Reach["attributes"][number];
 
 export function measureReach(fit: Fit, row: SubjectRow, subject: Subject, itemWord: string): Reach {
   const attributes = fit.groups
-    .filter((group) => !group.isMarket)
-    .map((group) => (isNumeric(group) ? reachOfNumber(fit, group, row) : reachOfLevel(fit, group, subject)));
+    .filter((group) => !group.isMarket && group.product === null)
+    .map((group) =>
+      group.stored !== null ? reachOfNumber(group, group.stored, row, subject) : reachOfLevel(fit, group, subject),
+    );
   const joint = reachJointly(fit, row, itemWord);
   const worst = worstOf([...attributes.map((one) => one.verdict), joint.verdict]);
   return { verdict: worst, sentence: overall(attributes, joint, fit.design.n), attributes, joint };
 }
 
-function isNumeric(group: AttributeGroup): boolean {
-  return group.form === "line" || group.form === "ln";
-}
-
-function reachOfNumber(fit: Fit, group: AttributeGroup, row: SubjectRow): AttributeReach {
-  const index = group.columns[0]!;
+function reachOfNumber(group: AttributeGroup, stored: Float64Array, row: SubjectRow, subject: Subject): AttributeReach {
+  // Judged on the column's own scale, where a logarithm spreads values as the model sees them.
+  const scale = group.form === "ln" ? Math.log : (value: number) => value;
   const undo = (value: number) => (group.form === "ln" ? Math.exp(value) : value);
-  const sorted = Float64Array.from(numbersOf(fit.design.columns[index]!.values)).sort();
-  const value = row.x[index]!;
+  const sorted = stored.map(scale).sort();
+  const value = group.blend !== null ? row.x[group.columns[0]!]! : scale(rawValue(group, subject));
   const [low, high] = [sorted[0]!, sorted[sorted.length - 1]!];
   const verdict: ReachVerdict = value < low || value > high ? "beyond" : isAtEdge(sorted, value) ? "edge" : "inside";
   const text = (one: number) =>
@@ -49,6 +49,8 @@ function reachOfNumber(fit: Fit, group: AttributeGroup, row: SubjectRow): Attrib
       : verdict === "edge"
         ? `${name} ${text(value)} lies at the edge of the evidence, ${range}, where few sales stand.`
         : `${name} ${text(value)} lies inside the evidence, ${range}.`;
+  const beyondKnots = group.knots.length > 0 && (value < group.knots[0]! || value > group.knots.at(-1)!);
+  const straight = " Out there its curve goes on as a straight line.";
   return {
     key: group.key,
     label: group.label,
@@ -56,7 +58,7 @@ function reachOfNumber(fit: Fit, group: AttributeGroup, row: SubjectRow): Attrib
     value: undo(value),
     low: undo(low),
     high: undo(high),
-    sentence,
+    sentence: beyondKnots ? `${sentence}${straight}` : sentence,
   };
 }
 
@@ -72,7 +74,8 @@ function isAtEdge(sorted: Float64Array, value: number): boolean {
 
 function reachOfLevel(fit: Fit, group: AttributeGroup, subject: Subject): AttributeReach {
   const asked = subject.values[group.key];
-  const level = group.form === "yesNo" ? (asked === true || asked === "yes" ? "yes" : "no") : String(asked);
+  const stated = group.form === "yesNo" ? (asked === true || asked === "yes" ? "yes" : "no") : String(asked);
+  const level = group.merged?.levels.includes(stated) ? group.merged.name : stated;
   const counts = group.columns.map((index) => fit.design.columns[index]!);
   const column = counts.find((one) => one.level === level);
   const others = counts.reduce((sum, one) => sum + numbersOf(one.values).reduce((total, v) => total + v, 0), 0);

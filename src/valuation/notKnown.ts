@@ -38,7 +38,7 @@ function effectOf(
   now: PriceEstimate,
   assetClass: NewAssetClass,
 ): NotKnownEffect {
-  const withIt = fitColumns(fit.design, [...fit.groups, group]);
+  const withIt = fitColumns(fit.design, [...fit.groups, group], fit.rule);
   const priced = valuesOf(fit.design, group).map((typical) => {
     const x = Float64Array.from(row.x);
     group.columns.forEach((index, at) => {
@@ -63,7 +63,8 @@ function widthOf(estimate: PriceEstimate): number {
 function valuesOf(design: Design, group: AttributeGroup): Typical[] {
   const columns = group.columns.map((index) => design.columns[index]!);
   if (group.form === "choice") {
-    const levels = [group.reference!, ...columns.map((column) => column.level!)];
+    const own = columns.map((column) => column.level!);
+    const levels = group.reference === null ? own : [group.reference, ...own];
     return levels.map((level) => ({ value: level, x: columns.map((column) => (column.level === level ? 1 : 0)) }));
   }
   if (group.form === "yesNo")
@@ -71,11 +72,13 @@ function valuesOf(design: Design, group: AttributeGroup): Typical[] {
       { value: "no", x: [0] },
       { value: "yes", x: [1] },
     ];
-  const sorted = Float64Array.from(numbersOf(columns[0]!.values)).sort();
+  const isCurve = group.form === "spline";
+  const sorted = Float64Array.from(isCurve ? group.stored! : numbersOf(columns[0]!.values)).sort();
   return [0.25, 0.5, 0.75].map((p) => {
-    const x = quantileOfSorted(sorted, p);
-    const shown = formatNumber(group.form === "ln" ? Math.exp(x) : x, group.decimals);
-    return { value: group.unit === null ? shown : `${shown}\u00a0${group.unit}`, x: [x] };
+    const value = quantileOfSorted(sorted, p);
+    const shown = formatNumber(group.form === "ln" ? Math.exp(value) : value, group.decimals);
+    const x = isCurve ? group.numbersAt(value) : [value];
+    return { value: group.unit === null ? shown : `${shown}\u00a0${group.unit}`, x };
   });
 }
 

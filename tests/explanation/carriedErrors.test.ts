@@ -3,40 +3,15 @@ import { describe, expect, test } from "vitest";
 import { carriedErrors } from "../../src/explanation/carriedErrors.ts";
 import type { AttributeGroup, Design } from "../../src/hedonic/fit.ts";
 import { fitColumns } from "../../src/hedonic/fitPriceModel.ts";
-import { accumulateMoments } from "../../src/numerics/accumulateMoments.ts";
 import { solveLeastSquares } from "../../src/numerics/solveLeastSquares.ts";
+import { plainDesign } from "../fixtures/plainDesign.ts";
 import { drawFrom } from "../fixtures/randomClass.ts";
 
-function group(key: string, column: number): AttributeGroup {
-  return {
-    key,
-    label: key,
-    form: "line",
-    unit: "h",
-    decimals: 0,
-    step: 1,
-    stepWords: "1",
-    columns: [column],
-    reference: null,
-    isMarket: false,
-  };
-}
-
 function designOf(values: readonly Float64Array[], response: Float64Array): Design {
-  const n = response.length;
-  const columns = values.map((column, at) => ({ attribute: `a${at}`, level: null, values: column, mean: 0 }));
-  return {
-    n,
-    rows: Int32Array.from({ length: n }, (_, i) => i),
-    responseForm: "price",
+  return plainDesign(
+    values.map((column, at) => ({ key: `a${at}`, values: column, kind: "line" })),
     response,
-    prices: response,
-    soldOn: new Float64Array(n),
-    columns,
-    groups: values.map((_, at) => group(`a${at}`, at)),
-    moments: accumulateMoments([...values, response]),
-    weights: null,
-  } as Design;
+  );
 }
 
 interface Carried {

@@ -1,29 +1,67 @@
 /**
- * Choice: one 0/1 column for each level that occurs in the evidence, but for the reference level.
- * Reference = the stated one if it occurs, else the most frequent (ties: the earlier in the attribute's list).
+ * Choice: one column of a level against the others for each level that occurs in the evidence, but for the reference level.
+ * Reference = the stated one if it occurs, else the most frequent (ties: the earlier in the attribute's list). Levels with few
+ * sales are kept, merged into one, or drawn together (then every level has a column and none is the reference: see
+ * estimators/partialPooling.ts).
  */
+import { formatNumber, listWords } from "../../domain/format.ts";
 import { indicator } from "../../numerics/column.ts";
-import type { AttributeFormRule } from "./form.ts";
+import { type AttributeFormRule, type FormColumns, type FormSource, type KnownValue, PLAIN } from "./form.ts";
+
+/** A level with fewer sales than this is rare. Common practice, no source. */
+export const RARE_SALES = 5;
 
 export const choice: AttributeFormRule = {
   label: "choice",
-  columns({ stored, levels, reference }) {
-    const counts = new Array<number>(levels.length).fill(0);
-    for (const level of stored) counts[level]! += 1;
-    const present = levels.map((_, at) => at).filter((at) => counts[at]! > 0);
-    const stated = reference === null ? -1 : levels.indexOf(reference);
-    const base =
-      stated >= 0 && counts[stated]! > 0
-        ? stated
-        : present.reduce((best, at) => (counts[at]! > counts[best]! ? at : best), present[0] ?? -1);
+  columns(source) {
+    const { stored, levels, wanted } = source;
     const codes = Uint16Array.from(stored);
+    const counts = new Array<number>(levels.length).fill(0);
+    for (const level of codes) counts[level]! += 1;
+    const merged = wanted.rare === "merge" ? mergeRare(source, codes, counts) : null;
+    const names = merged === null ? levels : [...levels, merged.name];
+    const present = names.map((_, at) => at).filter((at) => (counts[at] ?? 0) > 0);
+    const base = wanted.rare === "pool" && present.length > 1 ? -1 : baseOf(source, counts, present);
+    const columns = present
+      .filter((at) => at !== base)
+      .map((at) => ({ level: names[at]!, values: indicator(codes, at) }));
+    const nameOf = (value: KnownValue) => (merged?.levels.includes(String(value)) ? merged.name : String(value));
     return {
-      columns: present.filter((at) => at !== base).map((at) => ({ level: levels[at]!, values: indicator(codes, at) })),
-      reference: levels[base] ?? null,
+      ...PLAIN,
+      columns,
+      reference: names[base] ?? null,
       step: 1,
       stepWords: null,
       unit: null,
-    };
+      merged: merged === null ? null : { name: merged.name, levels: merged.levels },
+      notes: merged?.notes ?? [],
+      numbersAt: (value) => columns.map((column) => (column.level === nameOf(value) ? 1 : 0)),
+    } satisfies FormColumns;
   },
-  subject: (value, made) => made.columns.map((column) => (column.level === value ? 1 : 0)),
 };
+
+function baseOf({ levels, wanted }: FormSource, counts: readonly number[], present: readonly number[]): number {
+  const stated = wanted.reference === null ? -1 : levels.indexOf(wanted.reference);
+  if (stated >= 0 && counts[stated]! > 0) return stated;
+  return present.reduce((best, at) => (counts[at]! > counts[best]! ? at : best), present[0] ?? -1);
+}
+
+interface Merged {
+  readonly name: string;
+  readonly levels: readonly string[];
+  readonly notes: readonly string[];
+}
+
+/** Gives the rare levels one code of their own, in place; null where fewer than two are rare. */
+function mergeRare({ label, levels }: FormSource, codes: Uint16Array, counts: number[]): Merged | null {
+  const rare = levels.map((_, at) => at).filter((at) => counts[at]! > 0 && counts[at]! < RARE_SALES);
+  if (rare.length < 2) return null;
+  const code = levels.length;
+  const isRare = new Set(rare);
+  for (let i = 0; i < codes.length; i++) if (isRare.has(codes[i]!)) codes[i] = code;
+  const named = rare.map((at) => `${levels[at]} (${formatNumber(counts[at]!)})`);
+  counts[code] = rare.reduce((sum, at) => sum + counts[at]!, 0);
+  for (const at of rare) counts[at] = 0;
+  const words = `${label}: ${listWords(named)} have fewer than ${RARE_SALES} sales each and are taken together as other, ${formatNumber(counts[code]!)} sales.`;
+  return { name: "other", levels: rare.map((at) => levels[at]!), notes: [words] };
+}

@@ -38,7 +38,8 @@ export function setReferenceMember(
 
 const NEXT_FORM: Readonly<Record<AttributeForm, AttributeForm>> = {
   line: "ln",
-  ln: "line",
+  ln: "spline",
+  spline: "line",
   choice: "choice",
   yesNo: "yesNo",
 };

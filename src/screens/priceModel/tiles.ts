@@ -40,6 +40,7 @@ export function formWords(attribute: Attribute, model: PriceModel): string {
   const form = model.attributes.find((one) => one.key === attribute.key)?.form ?? null;
   if (attribute.kind === "yesNo") return "yes or no";
   if (attribute.kind === "choice") return `choice of ${attribute.levels.length}`;
+  if (form === "spline") return "curve";
   return form === "ln" ? "ln, per 10\u00a0% more" : `straight line, ${stepWords(attribute)}`;
 }
 

@@ -150,7 +150,13 @@ function lead({ sheet, appraisal, priced, currencyCode, step, itemWord }: SheetC
   return `The average of ${formatNumber(n)} ${plural(n, "sale")} stood at ${money(builtUp.start)}. ${path}; ${adjusted}, and rounding gives ${formatMoney(sheet.conclusion.amount, currencyCode)}.`;
 }
 
-const FORM_WORDS = { line: "as straight lines", ln: "as ln", choice: "as choices", yesNo: "as yes or no" } as const;
+const FORM_WORDS = {
+  line: "as straight lines",
+  ln: "as ln",
+  spline: "as curves",
+  choice: "as choices",
+  yesNo: "as yes or no",
+} as const;
 
 function formsWords({ appraisal }: SheetContext): string {
   const inModel = new Set(appraisal.report.attributes);
@@ -166,9 +172,10 @@ function formsWords({ appraisal }: SheetContext): string {
       `${listWords(labels)} ${
         labels.length === 1
           ? words
-              .replace(/(line|choice)s$/, "$1")
+              .replace(/(line|choice|curve)s$/, "$1")
               .replace("as straight", "as a straight")
               .replace("as choice", "as a choice")
+              .replace("as curve", "as a curve")
           : words
       }`,
   );
