@@ -1,0 +1,124 @@
+/**
+ * Every attribute set at once, as plain JSON data: what each would price the subject at, how well it prices sales not yet
+ * seen, which sets are defensible, and how far price and coefficients move over those. Money in major units, unrounded.
+ * A set is a number: bit g stands for attributes[g]; lists over sets are in the order of these numbers.
+ */
+
+/** Which sets count: within a share of the least error out of sample, or within a distance of the least AICc. */
+export type DefensibleRule =
+  | { readonly kind: "error"; readonly share: number }
+  | { readonly kind: "aicc"; readonly distance: number };
+
+/** Common practice, no source: an error a tenth larger than the best one is no reason to rule a set out. */
+export const USUAL_RULE: DefensibleRule = { kind: "error", share: 0.1 };
+
+type PerSet = readonly (number | null)[];
+
+export interface SetFigures {
+  /** Null without a subject, and for sets whose columns depend on each other or cannot be carried by the sales. */
+  readonly price: PerSet;
+  /** Range for one sale, nine in ten; null as the price, and under a penalty. */
+  readonly low: PerSet;
+  readonly high: PerSet;
+  /** Typical error on a sale not yet seen, as a fraction of price; `errorKind` says how it was found. */
+  readonly error: PerSet;
+  readonly r2: PerSet;
+  /** Akaike 1974, corrected for few sales (Hurvich & Tsai 1989), and Schwarz 1978; null under a penalty. */
+  readonly aicc: PerSet;
+  readonly bic: PerSet;
+  /** √(n·RSS)/(n − p) on the response's scale: generalised cross-validation, an approximation to what `error` finds. */
+  readonly generalisedError: PerSet;
+}
+
+export interface Span {
+  readonly low: number;
+  readonly high: number;
+}
+
+/** One coefficient over the sets that have it, on the response's scale per unit of its column. */
+export interface CoefficientSpan {
+  readonly attribute: string;
+  readonly label: string;
+  readonly level: string | null;
+  readonly stepWords: string | null;
+  readonly all: Span;
+  /** Null when no defensible set has it. */
+  readonly defensible: Span | null;
+  readonly now: number | null;
+  /** The same per step at the average sale, in money. */
+  readonly money: { readonly all: Span; readonly defensible: Span | null; readonly now: number | null };
+  /** Sets, and defensible sets, in which it is above and below zero. */
+  readonly signs: { readonly above: number; readonly below: number };
+  readonly defensibleSigns: { readonly above: number; readonly below: number };
+}
+
+/** What putting one attribute in does to the price, over pairs of sets that differ by it alone. */
+export interface SetSwitch {
+  readonly key: string;
+  readonly label: string;
+  readonly pairs: number;
+  readonly mean: number | null;
+  /** Over pairs of which both are defensible; null without one. */
+  readonly meanDefensible: number | null;
+  /** In every defensible set, in none, or in some. */
+  readonly inDefensible: "always" | "never" | "sometimes";
+  /** Price of the current set with this one switched. */
+  readonly priceSwitched: number | null;
+}
+
+/** Prices averaged by Akaike weights; doubt about the set is in the range (Burnham & Anderson 2002, section 4.3). */
+export interface AveragedPrice {
+  readonly price: number;
+  readonly low: number;
+  readonly high: number;
+  /** How much wider the range is for the doubt about the set. */
+  readonly addedWidth: number;
+  /** Weights over 0.01, largest first. */
+  readonly weights: readonly { readonly set: number; readonly weight: number }[];
+}
+
+export interface AttributeSets {
+  readonly attributes: readonly { readonly key: string; readonly label: string }[];
+  /** In every set: the market movement, and what is beyond the fifteen that can be in or out. */
+  readonly alwaysIn: readonly { readonly key: string; readonly label: string }[];
+  /** In no set, because the subject's value is not known. */
+  readonly notKnown: readonly { readonly key: string; readonly label: string }[];
+  readonly sales: number;
+  readonly figures: SetFigures;
+  /** Each sale priced without itself, exactly; or each tenth of the sales priced by the other nine, exactly. */
+  readonly errorKind: "leave-one-out" | "ten-folds";
+  readonly rule: DefensibleRule;
+  /** Sets that count, the least error (or AICc) first. */
+  readonly defensible: readonly number[];
+  readonly current: number;
+  readonly price: Span | null;
+  readonly coefficients: readonly CoefficientSpan[];
+  readonly switches: readonly SetSwitch[];
+  /** Key of the attribute whose switching moves the current price most. */
+  readonly movesMost: string | null;
+  readonly averaged: AveragedPrice | null;
+  /** True sentences for the head of the picture. */
+  readonly sentences: readonly string[];
+}
+
+/** One attribute's shares; both kinds add up over attributes. */
+export interface AttributeShare {
+  readonly key: string;
+  readonly label: string;
+  /** Of R²: averaged over all orders, alone, and after all others. */
+  readonly r2: number;
+  readonly r2Alone: number;
+  readonly r2Last: number;
+  /** Of the subject's distance from the average, on the response's scale: averaged over orders, and b(x₀ − x̄). */
+  readonly distance: number | null;
+  readonly additive: number | null;
+}
+
+export interface AttributeShares {
+  readonly shares: readonly AttributeShare[];
+  /** What is in every set has its part first: R² and distance of the set of these alone. */
+  readonly alwaysIn: { readonly r2: number; readonly distance: number | null };
+  readonly r2: number;
+  readonly distance: number | null;
+  readonly sentences: readonly string[];
+}

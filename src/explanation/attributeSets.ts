@@ -1,0 +1,179 @@
+/**
+ * Every attribute set at once: the subject's price and range in each, error out of sample, criteria, the defensible sets and
+ * how far price and coefficients move over them, and the price averaged over sets. All sets on the same sales, at the weights
+ * and penalties of the fit in use. Ranges as in estimatePrice: ŷ₀ ± t·s·√(1 + h₀).
+ */
+import type { AttributeSets, DefensibleRule, SetFigures, Span } from "../domain/attributeSets.ts";
+import { USUAL_RULE } from "../domain/attributeSets.ts";
+import { formatMoney, listWords } from "../domain/format.ts";
+import { tUpperQuantile } from "../numerics/studentT.ts";
+import { generalisedErrors } from "../numerics/subsetErrors.ts";
+import { averagedPrice, type SetPrices } from "./averagedPrice.ts";
+import { coefficientSpans, setSwitches, spanOf } from "./setSpans.ts";
+import { backFrom, buildSetTable, errorsOf, isOffered, type SetTable, type SetTableInput } from "./setTable.ts";
+
+export interface AttributeSetsInput extends SetTableInput {
+  readonly currencyCode: string;
+  readonly rule?: DefensibleRule;
+}
+
+const LEVEL = 0.9;
+
+export function attributeSets(input: AttributeSetsInput): AttributeSets {
+  const { currencyCode, rule = USUAL_RULE } = input;
+  const sets = buildSetTable(input);
+  const { fit, groups, alwaysIn, notKnown, moments, current } = sets;
+  const back = backFrom(fit.design);
+  const offered = [...sets.table.r2.keys()].filter((set) => isOffered(sets, set));
+  const found = errorsOf(sets);
+  const prices = pricesOf(sets, offered);
+  const error = typicalErrors(sets, found.sums, offered);
+  const defensible = defensibleSets(rule, error, prices.aicc);
+  const money = prices.fitted.map(back);
+  const switches = setSwitches(sets, money, defensible);
+  const price = spanOf(defensible.map((set) => money[set]!));
+  const named = (some: SetTable["groups"]) => some.map(({ key, label }) => ({ key, label }));
+  const average = back(moments.means.at(-1)!);
+  const result = {
+    attributes: named(groups),
+    alwaysIn: named(alwaysIn),
+    notKnown: named(notKnown),
+    sales: fit.design.n,
+    figures: figuresOf(sets, prices, error),
+    errorKind: found.kind,
+    rule,
+    defensible,
+    current,
+    price,
+    coefficients: coefficientSpans(sets, offered, defensible, average),
+    switches,
+    movesMost: movesMost(switches, money[current]!),
+    averaged: fit.rule.penalty === null ? averagedPrice(prices, back) : null,
+  };
+  const untested = offered.filter((set) => Number.isNaN(error[set]!)).length;
+  return { ...result, sentences: sentencesOf(result, offered.length, untested, currencyCode) };
+}
+
+/** Fitted price, variance for one sale and AICc per set; NaN where the set is not offered, not determined or has no freedom. */
+function pricesOf(sets: SetTable, offered: readonly number[]): SetPrices {
+  const { table, fit, moments } = sets;
+  const count = table.r2.length;
+  const empty = (): Float64Array => new Float64Array(count).fill(Number.NaN);
+  const [fitted, variances, residualDf, aicc] = [empty(), empty(), empty(), empty()];
+  for (const set of offered) {
+    const df = moments.rowCount - table.ranks[set]!;
+    residualDf[set] = df;
+    if (df <= 0 || table.smallestPivots[set] === 0) continue;
+    fitted[set] = table.fitted?.[set] ?? Number.NaN;
+    if (fit.rule.penalty !== null) continue;
+    variances[set] = (table.residualSums[set]! / df) * (1 + (table.leverages?.[set] ?? Number.NaN));
+    aicc[set] = criteria(table.residualSums[set]!, moments.rowCount, table.ranks[set]!).aicc;
+  }
+  return { fitted, variances, residualDf, aicc };
+}
+
+/**
+ * AICc = −2 ln L + 2K·n/(n − K − 1) and BIC = −2 ln L + K ln n, with −2 ln L = n ln(2πRSS/n) + n and K = p + 1 (s counts
+ * too); AICc NaN when n ≤ K + 1, both −Infinity for a fit without error. With weights less a constant of the sales.
+ */
+export function criteria(residualSum: number, n: number, rank: number): { aicc: number; bic: number } {
+  const deviance = n * Math.log((2 * Math.PI * residualSum) / n) + n;
+  const k = rank + 1;
+  const aicc = n > k + 1 ? deviance + (2 * k * n) / (n - k - 1) : Number.NaN;
+  return { aicc, bic: deviance + k * Math.log(n) };
+}
+
+/** Root mean square error as a share of price, as in the report of a model: after ln e^rms − 1, plain over the average. */
+function typicalErrors({ fit, moments }: SetTable, sums: Float64Array, offered: readonly number[]): Float64Array {
+  const errors = new Float64Array(sums.length).fill(Number.NaN);
+  for (const set of offered) {
+    const rms = Math.sqrt(sums[set]! / moments.weightSum);
+    errors[set] = fit.design.responseForm === "lnPrice" ? Math.expm1(rms) : rms / moments.means.at(-1)!;
+  }
+  return errors;
+}
+
+/** Sets within the rule, best first; among equals the lower number. */
+function defensibleSets(rule: DefensibleRule, error: Float64Array, aicc: Float64Array): number[] {
+  const measure = rule.kind === "error" ? error : aicc;
+  const best = spanOf(measure)?.low;
+  if (best === undefined) return [];
+  const limit = rule.kind === "error" ? best * (1 + rule.share) : best + rule.distance;
+  return [...measure.keys()].filter((set) => measure[set]! <= limit).sort((a, b) => measure[a]! - measure[b]! || a - b);
+}
+
+function figuresOf(
+  sets: SetTable,
+  { fitted, variances, residualDf, aicc }: SetPrices,
+  error: Float64Array,
+): SetFigures {
+  const { table, fit, moments } = sets;
+  const back = backFrom(fit.design);
+  const half = fitted.map((_, set) => {
+    const df = residualDf[set]!;
+    return df > 0 ? tUpperQuantile((1 - LEVEL) / 2, df) * Math.sqrt(variances[set]!) : Number.NaN;
+  });
+  const n = moments.rowCount;
+  return {
+    price: listed(fitted.map(back)),
+    low: listed(fitted.map((value, set) => back(value - half[set]!))),
+    high: listed(fitted.map((value, set) => back(value + half[set]!))),
+    error: listed(error),
+    r2: listed(table.r2),
+    aicc: listed(aicc),
+    bic: listed(
+      aicc.map((value, set) =>
+        Number.isNaN(value) ? value : criteria(table.residualSums[set]!, n, table.ranks[set]!).bic,
+      ),
+    ),
+    generalisedError: listed(generalisedErrors(table, n).map(Math.sqrt)),
+  };
+}
+
+function listed(values: Float64Array): (number | null)[] {
+  return Array.from(values, (value) => (Number.isFinite(value) ? value : null));
+}
+
+function movesMost(switches: AttributeSets["switches"], now: number): string | null {
+  const move = ({ priceSwitched }: AttributeSets["switches"][number]): number =>
+    priceSwitched === null || Number.isNaN(now) ? -1 : Math.abs(priceSwitched - now);
+  const most = [...switches].sort((a, b) => move(b) - move(a))[0];
+  return most === undefined || move(most) < 0 ? null : most.key;
+}
+
+function sentencesOf(
+  result: Omit<AttributeSets, "sentences">,
+  offered: number,
+  untested: number,
+  currencyCode: string,
+): string[] {
+  const { defensible, price, averaged, rule, errorKind, coefficients, alwaysIn } = result;
+  const which =
+    rule.kind === "error"
+      ? `error within ${Math.round(rule.share * 100)} % of the best`
+      : `AICc within ${rule.distance} of the best`;
+  const how =
+    errorKind === "leave-one-out" ? "each sale priced without itself" : "each tenth of the sales priced by the rest";
+  const counted = `${defensible.length} of ${offered} attribute sets are defensible: ${which}, ${how}.`;
+  const turning = coefficients.filter(({ defensibleSigns: { above, below } }) => above > 0 && below > 0);
+  const names = turning.map(({ label, level }) => (level === null ? label : `${label} ${level}`));
+  const turns =
+    turning.length === 0
+      ? "No coefficient changes sign among the defensible ones."
+      : `Among the defensible ones the sign of ${listWords(names)} changes with the set.`;
+  const others = alwaysIn.map(({ label }) => label);
+  const cannot = `${untested} of them cannot be tested so: without some sale or tenth a coefficient is not determined.`;
+  return [
+    counted,
+    ...(untested === 0 ? [] : [cannot]),
+    ...(price === null ? [] : [spanSentence(price, averaged?.price ?? null, currencyCode)]),
+    ...(defensible.length > 1 ? [turns] : []),
+    ...(others.length === 0 ? [] : [`In every set: ${listWords(others)}.`]),
+  ];
+}
+
+function spanSentence({ low, high }: Span, averaged: number | null, currencyCode: string): string {
+  const money = (amount: number): string => formatMoney(amount, currencyCode);
+  const span = `Whichever defensible set is used, the price lies between ${money(low)} and ${money(high)}`;
+  return averaged === null ? `${span}.` : `${span}; averaged by Akaike weight over all sets it is ${money(averaged)}.`;
+}

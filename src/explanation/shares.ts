@@ -1,0 +1,80 @@
+/**
+ * Shares of attributes, averaged over all orders in which they can come in: of R² (Lindeman, Merenda & Gold 1980), and of the
+ * subject's distance from the average sale, the value of a set being the price of the model with exactly that set (Shapley
+ * 1953). Beside the latter the additive rule b(x₀ − x̄) of the fit in use. Each kind adds up.
+ */
+import type { AttributeShare, AttributeShares } from "../domain/attributeSets.ts";
+import { AppError } from "../domain/errors.ts";
+import { listWords } from "../domain/format.ts";
+import { type AveragedShares, averagedShares } from "../numerics/averagedShares.ts";
+import { buildSetTable, type SetTable, type SetTableInput } from "./setTable.ts";
+
+/** Shares of at most so many attributes are said in words. */
+const SAID = 3;
+
+/**
+ * Shares among the attributes of the fit in use that can be in or out; what is in every set (market movement) has its part
+ * first. Refuses (family "fit", dependent) attributes that depend on each other: their shares in a price are not determined.
+ */
+export function attributeShares(input: Omit<SetTableInput, "reference">): AttributeShares {
+  const sets = buildSetTable({ ...input, reference: input.fit.groups });
+  const { table, groups, moments } = sets;
+  if (table.smallestPivots.at(-1) === 0) throw dependent();
+  const r2 = averagedShares(table.r2, groups.length);
+  const mean = moments.means.at(-1)!;
+  const distances = sets.notKnown.length > 0 ? null : (table.fitted?.map((value) => value - mean) ?? null);
+  const distance = distances === null ? null : averagedShares(distances, groups.length);
+  const shares = groups.map((_, g) => shareOf(sets, input, g, r2, distance));
+  return {
+    shares,
+    alwaysIn: { r2: table.r2[0]!, distance: distances?.[0] ?? null },
+    r2: table.r2.at(-1)!,
+    distance: distances?.at(-1) ?? null,
+    sentences: sentencesOf(shares, table.r2.at(-1)!),
+  };
+}
+
+function shareOf(
+  { groups, fit, moments, table }: SetTable,
+  { row }: Pick<SetTableInput, "row">,
+  g: number,
+  r2: AveragedShares,
+  distance: AveragedShares | null,
+): AttributeShare {
+  const { key, label, columns } = groups[g]!;
+  const full = (table.r2.length - 1) * fit.design.columns.length;
+  const additive = columns.reduce((sum, j) => {
+    return sum + table.coefficients![full + j]! * ((row?.x[j] ?? Number.NaN) - moments.means[j]!);
+  }, 0);
+  return {
+    key,
+    label,
+    r2: r2.shares[g]!,
+    r2Alone: r2.first[g]!,
+    r2Last: r2.last[g]!,
+    distance: distance?.shares[g] ?? null,
+    additive: distance === null ? null : additive,
+  };
+}
+
+function dependent(): AppError {
+  return new AppError({
+    family: "fit",
+    code: "dependent",
+    what: "Some attributes depend on each other exactly, so how they share a price is not determined.",
+    where: "Price model",
+    whatToDo: "Leave one of them out.",
+  });
+}
+
+/** What the shares say, and what they do not. */
+function sentencesOf(shares: readonly AttributeShare[], r2: number): string[] {
+  if (!(r2 > 0) || shares.length === 0) return [];
+  const percent = (share: number): string => `${Math.round((100 * share) / r2)} %`;
+  const largest = [...shares].sort((a, b) => b.r2 - a.r2).slice(0, SAID);
+  const parts = largest.map(({ label, r2: share }) => `${label} ${percent(share)}`);
+  return [
+    `Of the spread in prices that the model accounts for, averaged over all orders, ${listWords(parts)}.`,
+    "These are shares of the spread in these sales, not of what causes a price.",
+  ];
+}
