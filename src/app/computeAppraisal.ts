@@ -15,6 +15,7 @@ import { nearSales } from "../explanation/nearSales.ts";
 import { pull, pullWeights } from "../explanation/pull.ts";
 import { accountForFit, errorsFor } from "../hedonic/accountForFit.ts";
 import { buildDesign } from "../hedonic/buildDesign.ts";
+import type { FitErrors } from "../hedonic/errorRules/errors.ts";
 import { estimate } from "../hedonic/estimators/index.ts";
 import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { fitColumns } from "../hedonic/fitPriceModel.ts";
@@ -76,7 +77,7 @@ export function computeAppraisal(input: AppraisalInput, prepared = prepareEviden
   const fitted = accountForFit(model, short, estimated, errors, input.sales);
   const report = reportModel({ fit: short, model, resolved, leftOut, reference: long ?? short, errors, fitted });
   const ledger = ledgerOf(long, short, report, assetClass.currencyCode);
-  const priced = subject === null || row === null ? null : pricePart(input, short, long, row, subject);
+  const priced = subject === null || row === null ? null : pricePart(input, short, long, row, subject, errors);
   const { name, itemWord, currencyCode, invented } = assetClass;
   const found = { assetClass: { name, itemWord, currencyCode, invented }, evidence: account, report, ledger, priced };
   return { appraisal: { ...found, caveats: writeCaveats(found) }, used, fit: short, row };
@@ -136,9 +137,16 @@ function leftOutOf(
   });
 }
 
-function pricePart(input: AppraisalInput, short: Fit, long: Fit | null, row: SubjectRow, subject: Subject): PricePart {
+function pricePart(
+  input: AppraisalInput,
+  short: Fit,
+  long: Fit | null,
+  row: SubjectRow,
+  subject: Subject,
+  errors: FitErrors | null,
+): PricePart {
   const { assetClass, sales, levels } = input;
-  const price = estimatePrice(short, row, levels, marketHeldAt(short.design, subject));
+  const price = estimatePrice(short, row, levels, marketHeldAt(short.design, subject), errors);
   const unknown = (long?.groups ?? []).filter(
     (group) => group.product === null && row.notKnown.includes(group.key) && !input.model.leftOut.includes(group.key),
   );

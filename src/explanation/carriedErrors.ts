@@ -14,8 +14,8 @@ export interface Association {
   readonly residuals: Float64Array;
 }
 
-/** Standard error of the carried part of each included column for one left-out group, on the response's scale; null without residual degrees of freedom. */
-export function carriedErrors(
+/** Covariance of the carried parts of the included columns for one left-out group, k × k, on the response's scale; null without residual degrees of freedom. */
+export function carriedCovariance(
   short: Fit,
   long: Fit,
   group: AttributeGroup,
@@ -26,17 +26,21 @@ export function carriedErrors(
   if (s === null || df <= 0) return null;
   const own = associations.filter((one) => group.columns.includes(one.column));
   const at = own.map((one) => long.columns.indexOf(one.column));
-  const k = long.columns.length;
+  const k = short.columns.length;
+  const size = long.columns.length;
   const spread = spreadOfCarried(short, long, own) / df;
-  return Float64Array.from(short.columns, (_, a) => {
-    let variance = spread * short.solution.inverse[a * short.columns.length + a]!;
-    own.forEach((first, i) => {
-      own.forEach((second, j) => {
-        variance += first.slopes[a]! * second.slopes[a]! * s * s * long.solution.inverse[at[i]! * k + at[j]!]!;
+  const covariance = short.solution.inverse.map((value) => spread * value);
+  for (let a = 0; a < k; a++) {
+    for (let b = 0; b < k; b++) {
+      own.forEach((first, i) => {
+        own.forEach((second, j) => {
+          const inverse = long.solution.inverse[at[i]! * size + at[j]!]!;
+          covariance[a * k + b]! += first.slopes[a]! * second.slopes[b]! * s * s * inverse;
+        });
       });
-    });
-    return Math.sqrt(Math.max(0, variance));
-  });
+    }
+  }
+  return covariance;
 }
 
 /** Σ w², w = Σ_B b_B·(residual of column B on the included ones), each sale at its weight. */

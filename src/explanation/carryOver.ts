@@ -7,9 +7,10 @@
 
 import type { Ledger, LedgerRow, ModelReport } from "../domain/appraisal.ts";
 import type { Fit } from "../hedonic/fit.ts";
+import { type Reading, readingsOf, readOff, stepWordsOf, varianceOf } from "../hedonic/readings.ts";
 import { numbersOf } from "../numerics/column.ts";
 import { solveLeastSquares } from "../numerics/solveLeastSquares.ts";
-import { type Association, carriedErrors } from "./carriedErrors.ts";
+import { type Association, carriedCovariance } from "./carriedErrors.ts";
 import { type ComesWith, ledgerHeadline, type Move, rowSentence } from "./ledgerWords.ts";
 
 export interface CarryOverInput {
@@ -29,22 +30,24 @@ export interface CarryOverInput {
 export function carryOver({ long, short, report, currencyCode }: CarryOverInput): Ledger {
   const leftOutGroups = long.groups.filter((group) => !short.groups.some((kept) => kept.key === group.key));
   const associations = leftOutGroups.flatMap((group) => associate(short, group.columns));
-  const carriedError = new Map(
-    leftOutGroups.map((group) => [group.key, carriedErrors(short, long, group, associations)]),
+  const covariances = new Map(
+    leftOutGroups.map((group) => [group.key, carriedCovariance(short, long, group, associations)]),
   );
   const slopeInLong = new Map(long.columns.map((column, at) => [column, long.solution.slopes[at]!]));
+  const ownSlopes = short.columns.map((column) => slopeInLong.get(column)!);
+  const carriedSlopes = leftOutGroups.map((group) => {
+    const own = associations.filter((one) => group.columns.includes(one.column));
+    return short.columns.map((_, at) => sumOf(own.map((one) => one.slopes[at]! * slopeInLong.get(one.column)!)));
+  });
+  const k = short.columns.length;
   let identityError = 0;
-  const described = short.columns.map((column, at) => {
-    const coefficient = short.solution.slopes[at]!;
-    const ownPart = slopeInLong.get(column)!;
-    const carriedParts = leftOutGroups.map((group) => ({
+  const described = readingsOf(short).map((reading) => {
+    const coefficient = readOff(reading, short.solution.slopes);
+    const ownPart = readOff(reading, ownSlopes);
+    const carriedParts = leftOutGroups.map((group, g) => ({
       from: group.key,
       fromLabel: group.label,
-      amount: sumOf(
-        associations
-          .filter((one) => group.columns.includes(one.column))
-          .map((one) => one.slopes[at]! * slopeInLong.get(one.column)!),
-      ),
+      amount: readOff(reading, carriedSlopes[g]!),
     }));
     const total = ownPart + sumOf(carriedParts.map((part) => part.amount));
     const size = Math.max(
@@ -53,20 +56,23 @@ export function carryOver({ long, short, report, currencyCode }: CarryOverInput)
       ...carriedParts.map((part) => Math.abs(part.amount)),
     );
     if (size > 0) identityError = Math.max(identityError, Math.abs(coefficient - total) / size);
-    const ownError =
-      long.solution.residualStandardError === null ? null : long.solution.standardErrors[long.columns.indexOf(column)]!;
-    const partErrors = leftOutGroups.map(({ key }) => ({ from: key, amount: carriedError.get(key)?.[at] ?? null }));
+    const partErrors = leftOutGroups.map(({ key }) => {
+      const covariance = covariances.get(key) ?? null;
+      return {
+        from: key,
+        amount: covariance === null ? null : Math.sqrt(Math.max(0, varianceOf(reading, covariance, k))),
+      };
+    });
     return describeRow({
       short,
       report,
-      column,
+      reading,
       coefficient,
       ownPart,
-      ownError,
+      ownError: ownErrorOf(reading, short, long),
       carriedParts,
       carriedErrors: partErrors,
       associations,
-      at,
       currencyCode,
     });
   });
@@ -80,6 +86,15 @@ export function carryOver({ long, short, report, currencyCode }: CarryOverInput)
     headline: ledgerHeadline(described, leftOut, currencyCode),
     identityError,
   };
+}
+
+/** Standard error of the own part: of the same reading in the long fit, at even spread. */
+function ownErrorOf(reading: Reading, short: Fit, long: Fit): number | null {
+  const s = long.solution.residualStandardError;
+  if (s === null) return null;
+  const terms = reading.terms.map(({ at, weight }) => ({ at: long.columns.indexOf(short.columns[at]!), weight }));
+  const variance = varianceOf({ ...reading, terms }, long.solution.inverse, long.columns.length);
+  return s * Math.sqrt(Math.max(0, variance));
 }
 
 /** Δ column by column: each left-out column regressed on the included ones, as carefully as a reported fit. */
@@ -99,8 +114,7 @@ function associate({ design, columns: included, rule }: Fit, leftOut: readonly n
 interface RowParts {
   readonly short: Fit;
   readonly report: ModelReport;
-  readonly column: number;
-  readonly at: number;
+  readonly reading: Reading;
   readonly coefficient: number;
   readonly ownPart: number;
   readonly ownError: number | null;
@@ -111,11 +125,10 @@ interface RowParts {
 }
 
 function describeRow(parts: RowParts): { row: LedgerRow; moves: ComesWith } {
-  const { short, report, column, coefficient, ownPart, carriedParts, currencyCode } = parts;
-  const { attribute, level } = short.design.columns[column]!;
-  const group = short.groups.find((one) => one.key === attribute)!;
+  const { report, reading, coefficient, ownPart, carriedParts, currencyCode } = parts;
+  const { attribute, level, step } = reading;
   const stated = report.coefficients.find((one) => one.attribute === attribute && one.level === level)!;
-  const perUnit = moneyPerUnit(report, coefficient, group.step);
+  const perUnit = moneyPerUnit(report, coefficient, step);
   const low = stated.moneyLow95;
   const high = stated.moneyHigh95;
   const row = {
@@ -135,7 +148,7 @@ function describeRow(parts: RowParts): { row: LedgerRow; moves: ComesWith } {
     errors: errorsOf(parts, perUnit),
     signTurned: carriedParts.length > 0 && Math.sign(coefficient) === -Math.sign(ownPart) && ownPart !== 0,
   };
-  const moves = comesWith(parts, group.step);
+  const moves = comesWith(parts, step);
   return { row: { ...row, sentence: rowSentence({ ...row, sentence: "" }, moves, currencyCode) }, moves };
 }
 
@@ -159,7 +172,7 @@ function comesWith(parts: RowParts, step: number): ComesWith {
     const { attribute, level } = design.columns[association.column]!;
     const group = design.groups.find((one) => one.key === attribute)!;
     if (level !== null || group.form === "ln" || group.unit === null) continue;
-    const amount = association.slopes[parts.at]! * step;
+    const amount = readOff(parts.reading, association.slopes) * step;
     moves.set(attribute, { amount, unit: group.unit });
   }
   return moves;
@@ -185,14 +198,13 @@ function ownOf(key: string, long: Fit, report: ModelReport): Ledger["leftOutOwn"
   return group.columns.map((column) => {
     const estimate = long.solution.slopes[long.columns.indexOf(column)]!;
     const { level } = long.design.columns[column]!;
-    const against = group.form === "choice" ? `against ${group.reference}` : level === null ? "" : level;
     return {
       key,
       label: group.label,
       level,
       estimate,
       money: estimate * moneyPerUnit(report, estimate, group.step),
-      stepWords: group.stepWords ?? against,
+      stepWords: stepWordsOf(group, level),
     };
   });
 }

@@ -226,7 +226,9 @@ function recencyWeights(
   if (halfLifeMonths === null) return null;
   const until = (effectiveOn === null ? null : dayNumber(effectiveOn)) ?? soldOn.at(-1)!;
   notes.push(`A sale counts half for every ${formatNumber(halfLifeMonths, 0)} months before the effective date.`);
-  return soldOn.map((day) => 0.5 ** ((until - day) / DAYS_PER_MONTH / halfLifeMonths));
+  const weights = soldOn.map((day) => 0.5 ** ((until - day) / DAYS_PER_MONTH / halfLifeMonths));
+  const mean = weights.reduce((sum, one) => sum + one, 0) / weights.length;
+  return weights.map((one) => one / mean);
 }
 
 function meanOf(column: Column): number {

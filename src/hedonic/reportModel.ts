@@ -12,6 +12,7 @@ import { quantileOfSorted } from "../numerics/quantile.ts";
 import { tUpperQuantile } from "../numerics/studentT.ts";
 import type { FitErrors } from "./errorRules/errors.ts";
 import type { AttributeGroup, Design, Fit } from "./fit.ts";
+import { type Reading, readingsOf, readOff, varianceOf } from "./readings.ts";
 import type { ResolvedSet } from "./resolveDependencies.ts";
 
 export interface ReportInput {
@@ -82,7 +83,7 @@ export function smearingOf(residuals: Float64Array): number {
 }
 
 function coefficientsOf(fit: Fit, averagePrice: number, errors: FitErrors | null): Coefficient[] {
-  const { solution, design, columns, groups } = fit;
+  const { solution, design } = fit;
   const df = errors?.df ?? solution.residualDf;
   const t = df > 0 ? tUpperQuantile(0.025, df) : null;
   const { standardErrors, interceptStandardError } = errors ?? solution;
@@ -97,18 +98,19 @@ function coefficientsOf(fit: Fit, averagePrice: number, errors: FitErrors | null
     moneyLow95: null,
     moneyHigh95: null,
   };
-  const others = columns.map((index, at): Coefficient => {
-    const { attribute, level } = design.columns[index]!;
-    const group = groups.find((one) => one.key === attribute)!;
-    const estimate = solution.slopes[at]!;
-    const standardError = t === null ? null : standardErrors[at]!;
-    const range = rangeOf(estimate, standardError, fit.hc3StandardErrors?.[at] ?? null, t);
-    const money = (b: number | null) => (b === null ? null : moneyOf(design, b, group.step, averagePrice));
+  const k = fit.columns.length;
+  const others = readingsOf(fit).map((reading): Coefficient => {
+    const { attribute, label, level, stepWords, step, terms } = reading;
+    const estimate = readOff(reading, solution.slopes);
+    const isOne = terms.length === 1;
+    const standardError = t === null ? null : isOne ? standardErrors[terms[0]!.at]! : spreadOf(reading, fit, errors, k);
+    const range = rangeOf(estimate, standardError, isOne ? (fit.hc3StandardErrors?.[terms[0]!.at] ?? null) : null, t);
+    const money = (b: number | null) => (b === null ? null : moneyOf(design, b, step, averagePrice));
     return {
       attribute,
-      label: group.label,
+      label,
       level,
-      stepWords: stepWordsOf(group, level),
+      stepWords,
       estimate,
       ...range,
       moneyPerStep: money(estimate),
@@ -119,12 +121,12 @@ function coefficientsOf(fit: Fit, averagePrice: number, errors: FitErrors | null
   return [intercept, ...others];
 }
 
-/** "1,000 h", "against Brannock", "from 2,000 to 5,000 h", "against the mean of levels" */
-export function stepWordsOf(group: AttributeGroup, level: string | null): string {
-  if (group.stepWords !== null) return group.stepWords;
-  if (group.form === "spline") return `from ${level}`;
-  if (group.form === "yesNo") return "yes against no";
-  return group.reference === null ? "against the mean of levels" : `against ${group.reference}`;
+/** Standard error of a combination of coefficients: from the rule's covariance, or s²C⁻¹. */
+function spreadOf(reading: Reading, { solution }: Fit, errors: FitErrors | null, k: number): number {
+  const s = solution.residualStandardError ?? 0;
+  const variance =
+    errors === null ? s * s * varianceOf(reading, solution.inverse, k) : varianceOf(reading, errors.covariance, k);
+  return Math.sqrt(Math.max(0, variance));
 }
 
 function rangeOf(estimate: number, standardError: number | null, hc3: number | null, t: number | null) {

@@ -5,6 +5,7 @@
  */
 import type { PriceEstimate, Range } from "../domain/appraisal.ts";
 import type { Day } from "../domain/day.ts";
+import type { FitErrors } from "../hedonic/errorRules/errors.ts";
 import type { AttributeGroup, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { smearingOf } from "../hedonic/reportModel.ts";
 import { quadraticForm } from "../numerics/leverages.ts";
@@ -27,33 +28,42 @@ export function builtUpOrder(fit: Fit): readonly AttributeGroup[] {
 /** h₀ of the subject. */
 export function subjectLeverage(fit: Fit, row: SubjectRow): number {
   const d = Float64Array.from(fit.columns, (index, at) => row.x[index]! - fit.solution.means[at]!);
-  return 1 / fit.design.n + quadraticForm(fit.solution.rootInverse, d);
+  return 1 / fit.solution.weightSum + quadraticForm(fit.solution.rootInverse, d);
 }
 
 /** Without residual degrees of freedom there are no ranges: the lists are empty and the standard error null. */
-export function estimatePrice(fit: Fit, row: SubjectRow, levels: readonly number[], heldAt: Day | null): PriceEstimate {
+/** With `errors` the range for the average follows their rule; without, an even spread. */
+export function estimatePrice(
+  fit: Fit,
+  row: SubjectRow,
+  levels: readonly number[],
+  heldAt: Day | null,
+  errors: FitErrors | null = null,
+): PriceEstimate {
   const { solution, design } = fit;
   const fitted = builtUpOrder(fit).reduce((sum, group) => sum + contributionOf(fit, row, group), solution.responseMean);
   const leverage = subjectLeverage(fit, row);
   const isLn = design.responseForm === "lnPrice";
   const back = isLn ? Math.exp : (value: number) => value;
   const s = solution.residualStandardError;
-  const ranges = (variance: number): Range[] =>
-    s === null
-      ? []
-      : levels.map((level) => {
-          const half = tUpperQuantile((1 - level) / 2, solution.residualDf) * s * Math.sqrt(variance);
-          return { level, low: back(fitted - half), high: back(fitted + half) };
-        });
+  const ranges = (standardError: number, df: number): Range[] =>
+    levels.map((level) => {
+      const half = tUpperQuantile((1 - level) / 2, df) * standardError;
+      return { level, low: back(fitted - half), high: back(fitted + half) };
+    });
+  const averageError =
+    errors === null
+      ? (s ?? 0) * Math.sqrt(leverage)
+      : Math.sqrt(errors.varianceOfAverage(Float64Array.from(fit.columns, (index) => row.x[index]!)));
   return {
     centre: isLn ? "median" : "mean",
     amount: back(fitted),
     meanAmount: isLn ? Math.exp(fitted) * smearingOf(solution.residuals) : fitted,
     fitted,
-    standardErrorOfAverage: s === null ? null : s * Math.sqrt(leverage),
+    standardErrorOfAverage: s === null ? null : averageError,
     leverage,
-    rangeForOneSale: ranges(1 + leverage),
-    rangeForAverage: ranges(leverage),
+    rangeForOneSale: s === null ? [] : ranges(s * Math.sqrt(1 + leverage), solution.residualDf),
+    rangeForAverage: s === null ? [] : ranges(averageError, errors?.df ?? solution.residualDf),
     // Σ w_i² = h₀ for least squares, so the price rests on 1/h₀ equal sales.
     effectiveSales: 1 / leverage,
     marketHeldAt: heldAt,

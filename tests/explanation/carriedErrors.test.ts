@@ -1,6 +1,6 @@
 /** Standard errors of carried parts, against what drawing the sales again and again gives (Gelbach 2016, §3.3). */
 import { describe, expect, test } from "vitest";
-import { carriedErrors } from "../../src/explanation/carriedErrors.ts";
+import { carriedCovariance } from "../../src/explanation/carriedErrors.ts";
 import type { AttributeGroup, Design } from "../../src/hedonic/fit.ts";
 import { fitColumns } from "../../src/hedonic/fitPriceModel.ts";
 import { solveLeastSquares } from "../../src/numerics/solveLeastSquares.ts";
@@ -25,8 +25,8 @@ function carriedOf(design: Design): Carried {
   const long = fitColumns(design, [a, b]);
   const left = design.columns[1]!.values as Float64Array;
   const { slopes, residuals } = solveLeastSquares([design.columns[0]!.values], left, { intercept: true });
-  const errors = carriedErrors(short, long, b, [{ column: 1, slopes, residuals }])!;
-  return { amount: slopes[0]! * long.solution.slopes[1]!, error: errors[0]! };
+  const covariance = carriedCovariance(short, long, b, [{ column: 1, slopes, residuals }])!;
+  return { amount: slopes[0]! * long.solution.slopes[1]!, error: Math.sqrt(covariance[0]!) };
 }
 
 /** y = 1 + 2a + 3b + noise, b = 0.8a + its own. */
@@ -40,7 +40,7 @@ function drawn(next: () => number, n: number): Design {
   );
 }
 
-describe("carriedErrors", () => {
+describe("carriedCovariance", () => {
   test("gives the spread that carried parts have over many drawings of the sales", () => {
     const next = drawFrom(4711);
     const parts = Array.from({ length: 1500 }, () => carriedOf(drawn(next, 80)));
@@ -72,6 +72,6 @@ describe("carriedErrors", () => {
     const short = fitColumns(full, [a]);
     const long = fitColumns(full, [a, b]);
     const bare = { ...long, solution: { ...long.solution, residualStandardError: null } };
-    expect(carriedErrors(short, bare, b, [])).toBeNull();
+    expect(carriedCovariance(short, bare, b, [])).toBeNull();
   });
 });
