@@ -52,7 +52,7 @@ export function accountForFit(
           },
     pooled: pooled.map(({ key, label, levels }) => ({ key, label, levels })),
     countedLess: robustness === null ? [] : countedLess(fit, robustness, sales),
-    notes: [],
+    notes: fit.design.notes,
   };
 }
 
