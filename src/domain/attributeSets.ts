@@ -87,6 +87,11 @@ export interface AttributeSets {
   readonly figures: SetFigures;
   /** Each sale priced without itself, exactly; or each tenth of the sales priced by the other nine, exactly. */
   readonly errorKind: "leave-one-out" | "ten-folds";
+  /**
+   * After ten folds: the exact error with each sale priced without itself, of the current set and the best defensible ones, as
+   * many as take little time. Empty where `figures.error` is that already.
+   */
+  readonly leaveOneOut: readonly { readonly set: number; readonly error: number }[];
   readonly rule: DefensibleRule;
   /** Sets that count, the least error (or AICc) first. */
   readonly defensible: readonly number[];

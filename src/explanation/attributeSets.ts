@@ -10,7 +10,16 @@ import { tUpperQuantile } from "../numerics/studentT.ts";
 import { generalisedErrors } from "../numerics/subsetErrors.ts";
 import { averagedPrice, type SetPrices } from "./averagedPrice.ts";
 import { coefficientSpans, setSwitches, spanOf } from "./setSpans.ts";
-import { backFrom, buildSetTable, errorsOf, isOffered, type SetTable, type SetTableInput } from "./setTable.ts";
+import {
+  backFrom,
+  buildSetTable,
+  errorsOf,
+  isOffered,
+  leaveOneOutOf,
+  type SetErrors,
+  type SetTable,
+  type SetTableInput,
+} from "./setTable.ts";
 
 export interface AttributeSetsInput extends SetTableInput {
   readonly currencyCode: string;
@@ -41,6 +50,7 @@ export function attributeSets(input: AttributeSetsInput): AttributeSets {
     sales: fit.design.n,
     figures: figuresOf(sets, prices, error),
     errorKind: found.kind,
+    leaveOneOut: exactErrors(sets, found.kind, defensible),
     rule,
     defensible,
     current,
@@ -83,14 +93,25 @@ export function criteria(residualSum: number, n: number, rank: number): { aicc: 
   return { aicc, bic: deviance + k * Math.log(n) };
 }
 
-/** Root mean square error as a share of price, as in the report of a model: after ln e^rms − 1, plain over the average. */
-function typicalErrors({ fit, moments }: SetTable, sums: Float64Array, offered: readonly number[]): Float64Array {
+function typicalErrors(sets: SetTable, sums: Float64Array, offered: readonly number[]): Float64Array {
   const errors = new Float64Array(sums.length).fill(Number.NaN);
-  for (const set of offered) {
-    const rms = Math.sqrt(sums[set]! / moments.weightSum);
-    errors[set] = fit.design.responseForm === "lnPrice" ? Math.expm1(rms) : rms / moments.means.at(-1)!;
-  }
+  for (const set of offered) errors[set] = typicalError(sets, sums[set]!);
   return errors;
+}
+
+/** Root mean square error as a share of price, as in the report of a model: after ln e^rms − 1, plain over the average. */
+function typicalError({ fit, moments }: SetTable, sum: number): number {
+  const rms = Math.sqrt(sum / moments.weightSum);
+  return fit.design.responseForm === "lnPrice" ? Math.expm1(rms) : rms / moments.means.at(-1)!;
+}
+
+/** After ten folds the exact errors of the current set and the best defensible ones. */
+function exactErrors(sets: SetTable, kind: SetErrors["kind"], defensible: readonly number[]) {
+  if (kind === "leave-one-out") return [];
+  const wanted = [sets.current, ...defensible.filter((set) => set !== sets.current)];
+  return leaveOneOutOf(sets, wanted).flatMap(({ set, sum }) =>
+    Number.isNaN(sum) ? [] : [{ set, error: typicalError(sets, sum) }],
+  );
 }
 
 /** Sets within the rule, best first; among equals the lower number. */

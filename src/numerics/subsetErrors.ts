@@ -102,7 +102,7 @@ function aboutMeansOf(others: Moments, fold: Moments, order: readonly number[]):
 }
 
 /** Rows × sets up to which errors of all sets, one sale left out, are worth their time: some half a second. */
-export const LEAVE_ONE_OUT_WORK = 5e7;
+export const LEAVE_ONE_OUT_WORK = 1e8;
 
 /**
  * Per set Σ w (e/(1 − h))² over all rows, each priced by the fit without it. `moments` of [...columns, response] with the same

@@ -213,11 +213,29 @@ describe("what cannot be said is not said", () => {
   });
 });
 
+test("many sales in many sets are tried by tenths, and the best sets exactly besides", () => {
+  const draw = drawFrom(16);
+  const values = Array.from({ length: 12 }, () => Float64Array.from({ length: 25000 }, () => draw()));
+  const prices = values[0]!.map((one, i) => 100 + 20 * one + 9 * values[1]![i]! + 8 * draw());
+  const design = plainDesign(
+    values.map((one, j) => ({ key: `a${j}`, values: one, kind: "line" as const })),
+    prices,
+  );
+  const fit = fitColumns(design, design.groups.slice(0, 3));
+  const found = attributeSets({ reference: design.groups, fit, row: null, currencyCode: "EUR" });
+  expect(found.errorKind).toBe("ten-folds");
+  expect(found.leaveOneOut).toHaveLength(20);
+  expect(found.leaveOneOut[0]!.set).toBe(found.current);
+  const { leverages, solution } = fit;
+  const press = solution.residuals.reduce((sum, e, i) => sum + (e / (1 - leverages[i]!)) ** 2, 0);
+  expect(found.leaveOneOut[0]!.error / (Math.sqrt(press / 25000) / solution.responseMean)).toBeCloseTo(1, 10);
+  expect(Math.abs(found.figures.error[found.current]! / found.leaveOneOut[0]!.error - 1)).toBeLessThan(1e-3);
+});
+
 test("criteria agree with the published ones of the houses", () => {
   const { expected } = referenceSales("houseprices");
-  const { AIC, BIC, residualSS, sigma } = expected.ols;
-  const sum = residualSS ?? sigma ** 2 * 534;
-  const { aicc, bic } = criteria(sum, 546, 12);
+  const { AIC, BIC, sse } = expected.ols;
+  const { aicc, bic } = criteria(sse, 546, 12);
   expect(aicc).toBeCloseTo(AIC + (2 * 13 * 14) / (546 - 14), 8);
   expect(bic).toBeCloseTo(BIC, 8);
 });
