@@ -4,7 +4,7 @@
  */
 import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { accumulateMoments, type Moments, partsBy } from "../numerics/accumulateMoments.ts";
-import { allSubsets, MOST_GROUPS, type SubsetTable } from "../numerics/allSubsets.ts";
+import { allSubsets, type SubsetTable } from "../numerics/allSubsets.ts";
 import type { Column } from "../numerics/column.ts";
 import { foldErrors, LEAVE_ONE_OUT_WORK, leaveOneOutErrors } from "../numerics/subsetErrors.ts";
 
@@ -29,8 +29,11 @@ export interface SetTableInput {
 }
 
 const FOLDS = 10;
+/** Attributes that can be in or out: 32,768 sets. */
+const MOST_FREE = 15;
 
-export function buildSetTable({ reference, fit, row }: SetTableInput): SetTable {
+/** `coefficients`: whether those of every set are kept in the table. */
+export function buildSetTable({ reference, fit, row }: SetTableInput, coefficients = true): SetTable {
   const { design, rule } = fit;
   const values: Column[] = design.columns.map((column) => column.values);
   const moments = accumulateMoments([...values, design.response], { weights: rule.weights ?? undefined });
@@ -48,7 +51,7 @@ export function buildSetTable({ reference, fit, row }: SetTableInput): SetTable 
     alwaysIn: alwaysIn.flatMap(({ columns }) => [...columns]),
     subject: row?.x,
     penalty: rule.penalty,
-    coefficients: true,
+    coefficients,
   });
   const isInUse = ({ key }: AttributeGroup): boolean => fit.groups.some((group) => group.key === key);
   return {
@@ -69,14 +72,14 @@ function mostInDoubt(
   moments: Moments,
   penalty: Float64Array | null,
 ): readonly AttributeGroup[] {
-  if (groups.length <= MOST_GROUPS) return groups;
+  if (groups.length <= MOST_FREE) return groups;
   const lossOf = (group: AttributeGroup): number => {
     const rest = [...market, ...groups].filter((other) => other !== group);
     const alwaysIn = rest.flatMap(({ columns }) => [...columns]);
     return allSubsets(moments, [], { alwaysIn, penalty }).residualSums[0]!;
   };
   const losses = new Map(groups.map((group) => [group, lossOf(group)]));
-  const least = [...groups].sort((a, b) => losses.get(a)! - losses.get(b)!).slice(0, MOST_GROUPS);
+  const least = [...groups].sort((a, b) => losses.get(a)! - losses.get(b)!).slice(0, MOST_FREE);
   return groups.filter((group) => least.includes(group));
 }
 

@@ -17,7 +17,7 @@ const SAID = 3;
  * first. Refuses (family "fit", dependent) attributes that depend on each other: their shares in a price are not determined.
  */
 export function attributeShares(input: Omit<SetTableInput, "reference">): AttributeShares {
-  const sets = buildSetTable({ ...input, reference: input.fit.groups });
+  const sets = buildSetTable({ ...input, reference: input.fit.groups }, false);
   const { table, groups, moments } = sets;
   if (table.smallestPivots.at(-1) === 0) throw dependent();
   const r2 = averagedShares(table.r2, groups.length);
@@ -35,16 +35,17 @@ export function attributeShares(input: Omit<SetTableInput, "reference">): Attrib
 }
 
 function shareOf(
-  { groups, fit, moments, table }: SetTable,
+  { groups, fit: { solution, columns } }: SetTable,
   { row }: Pick<SetTableInput, "row">,
   g: number,
   r2: AveragedShares,
   distance: AveragedShares | null,
 ): AttributeShare {
-  const { key, label, columns } = groups[g]!;
-  const full = (table.r2.length - 1) * fit.design.columns.length;
-  const additive = columns.reduce((sum, j) => {
-    return sum + table.coefficients![full + j]! * ((row?.x[j] ?? Number.NaN) - moments.means[j]!);
+  const group = groups[g]!;
+  const { key, label } = group;
+  const additive = group.columns.reduce((sum, column) => {
+    const at = columns.indexOf(column);
+    return sum + solution.slopes[at]! * ((row?.x[column] ?? Number.NaN) - solution.means[at]!);
   }, 0);
   return {
     key,

@@ -16,8 +16,8 @@ import {
   walkSubsets,
 } from "./subsetWalk.ts";
 
-/** More sets than 2^15 are not made at once. */
-export const MOST_GROUPS = 15;
+/** A million sets, eight megabytes a list. */
+const MOST_GROUPS = 20;
 
 export interface SubsetOptions {
   /** Columns of every set. */
@@ -60,7 +60,7 @@ interface Frame {
 
 /**
  * The table of all 2^k sets of `groups` (column numbers of the moments of [...columns, response]). Refuses (shape) more than
- * fifteen groups, a column in two groups, the response among them, and lengths that disagree.
+ * twenty groups, a column in two groups, the response among them, and lengths that disagree.
  */
 export function allSubsets(
   moments: Moments,
