@@ -7,7 +7,14 @@
  */
 import { type Column, valueAt } from "./column.ts";
 import { currentKernel } from "./kernels/currentKernel.ts";
-import { blocksOf, COLUMN_BYTES, putBlock, putColumn } from "./kernels/designBlocks.ts";
+import {
+  blocksOf,
+  COLUMN_BYTES,
+  type DesignChoice,
+  type DesignPlan,
+  planDesign,
+  putBlock,
+} from "./kernels/designBlocks.ts";
 import type { Kernel } from "./kernels/kernel.ts";
 import { COLUMN_STRIDE } from "./kernels/layout.ts";
 import { NumericsError } from "./numericsError.ts";
@@ -56,13 +63,14 @@ export function rowDiagnostics(
   const n = response.length;
   const s = checkFit(columns, response, solution, weights);
   const kernel = currentKernel();
+  const plan = planDesign(columns, n);
   const layout = layOut(kernel, columns.length, solution.rootInverse);
   const results = Array.from({ length: OUTPUTS }, () => new Float64Array(n));
   const freedom = solution.residualDf > 1 ? solution.residualDf - 1 : Number.NaN;
   const roots = weights?.map(Math.sqrt) ?? null;
   if (roots === null) kernel.f64.fill(1, layout.roots / 8, layout.roots / 8 + COLUMN_STRIDE);
   for (const { start, size } of blocksOf(n)) {
-    putLengths(kernel, layout, columns, solution, start, size);
+    putLengths(kernel, layout, plan, columns, solution, start, size);
     const { f64, operations } = kernel;
     putBlock(f64, layout.residuals, solution.residuals, start, size);
     putBlock(f64, layout.response, response, start, size);
@@ -135,19 +143,42 @@ function layOut(kernel: Kernel, k: number, rootInverse: Float64Array): Layout {
 function putLengths(
   { f64, operations }: Kernel,
   layout: Layout,
+  { numbers, choices }: DesignPlan,
   columns: readonly Column[],
   { means, intercept, weightSum }: LeastSquaresSolution,
   start: number,
   size: number,
 ): void {
-  columns.forEach((column, j) => {
+  for (const j of numbers) {
     const at = layout.columns + j * COLUMN_BYTES;
-    putColumn(f64, at, column, start, size);
+    putBlock(f64, at, columns[j] as Float64Array, start, size);
     operations.centreColumn(at, size, means[j]!, 0, 1);
-  });
+  }
+  for (const choice of choices) putLevels(f64, layout, choice, means, start, size);
   const { lengths, filled, rootInverse, isUpper } = layout;
   f64.fill(intercept === null ? 0 : 1 / weightSum, lengths / 8, lengths / 8 + size);
   operations.addSquaredLengths(layout.columns, filled, size, rootInverse, isUpper ? 1 : 0, lengths);
+}
+
+/** Each level's column less its mean: −m everywhere, then 1 − m once per row, in the column of the row's level if it has one. */
+function putLevels(
+  f64: Float64Array,
+  layout: Layout,
+  { codes, levels, size: codeCount }: DesignChoice,
+  means: Float64Array,
+  start: number,
+  size: number,
+): void {
+  const columnOf = new Int32Array(codeCount).fill(-1);
+  for (const { column, code } of levels) {
+    columnOf[code] = column;
+    const at = layout.columns / 8 + column * COLUMN_STRIDE;
+    f64.fill(-means[column]!, at, at + size);
+  }
+  for (let i = 0; i < size; i++) {
+    const column = columnOf[codes[start + i]!]!;
+    if (column >= 0) f64[layout.columns / 8 + column * COLUMN_STRIDE + i] = 1 - means[column]!;
+  }
 }
 
 /**
