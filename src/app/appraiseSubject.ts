@@ -3,7 +3,7 @@ import type { RequestInput, RequestOutput } from "../contract/requests.ts";
 import type { AssetClass } from "../domain/assetClass.ts";
 import { CHANNEL_KEY } from "../domain/attribute.ts";
 import { EVERYTHING, type PriceModel, usualForm } from "../domain/priceModel.ts";
-import type { SaleColumns } from "../domain/sale.ts";
+import { type SaleColumns, textsOf } from "../domain/sale.ts";
 import { computeAppraisal } from "./computeAppraisal.ts";
 import type { Ports } from "./ports.ts";
 import type { EvidenceMemory } from "./rememberEvidence.ts";
@@ -31,8 +31,9 @@ export function usualModel(assetClass: AssetClass, sales: SaleColumns): PriceMod
   const attributes = assetClass.attributes
     .filter((attribute) => !attribute.archived && isKnownEnough(attribute.key))
     .map((attribute) => ({ key: attribute.key, form: usualForm(attribute), reference: null }));
-  const sold = [...new Set(sales.channels)].filter((channel) => channel !== "asking");
-  const channels = sold.length > 0 && sales.channels.includes("asking") ? sold : null;
+  const seen = [...new Set(textsOf(sales.channels))];
+  const sold = seen.filter((channel) => channel !== "asking");
+  const channels = sold.length > 0 && seen.includes("asking") ? sold : null;
   const first = sales.soldOn.reduce((low, day) => Math.min(low, day), Number.POSITIVE_INFINITY);
   const last = sales.soldOn.reduce((high, day) => Math.max(high, day), Number.NEGATIVE_INFINITY);
   return {

@@ -257,8 +257,8 @@ function listSales({ computed }: Side, rows: Int32Array, number: 1 | 2, sales: S
     return {
       side: number,
       sale: sales.ids[at]!,
-      reference: sales.references[at] ?? null,
-      title: sales.titles[at]!,
+      reference: sales.references.at(at) ?? null,
+      title: sales.titles.at(at)!,
       soldOn: dayOf(sales.soldOn[at]!),
       price: sales.price[at]!,
       moves: without === null ? null : priced!.price.amount - without,

@@ -61,6 +61,17 @@ export interface Sale extends NewSale {
   readonly setAside: SetAside | null;
 }
 
+/** One text per sale. An array is one; so is what a store looks up only when it is asked. */
+export interface TextColumn<Text extends string | null = string> {
+  readonly length: number;
+  at(index: number): Text | undefined;
+}
+
+/** All texts of a column. */
+export function textsOf<Text extends string | null>(column: TextColumn<Text>): Text[] {
+  return Array.from({ length: column.length }, (_, i) => column.at(i)!);
+}
+
 /**
  * Sales as columns, the way the computing rooms want them: never a million row objects.
  * Every array has `count` entries. NaN = not known. Choices hold the index of the level, yes/no 0 or 1, built the day number.
@@ -68,17 +79,17 @@ export interface Sale extends NewSale {
 export interface SaleColumns {
   readonly count: number;
   readonly ids: Float64Array;
-  readonly references: readonly (string | null)[];
-  readonly titles: readonly string[];
+  readonly references: TextColumn<string | null>;
+  readonly titles: TextColumn;
   readonly soldOn: Float64Array;
   /** Major units (euro), exact division of minor units. */
   readonly price: Float64Array;
-  readonly currencyCodes: readonly string[];
-  readonly channels: readonly Channel[];
-  readonly sources: readonly string[];
+  readonly currencyCodes: TextColumn;
+  readonly channels: TextColumn<Channel>;
+  readonly sources: TextColumn;
   readonly verified: Uint8Array;
-  readonly priceBases: readonly string[];
-  readonly setAsideReasons: readonly (string | null)[];
+  readonly priceBases: TextColumn;
+  readonly setAsideReasons: TextColumn<string | null>;
   readonly values: Readonly<Record<string, Float64Array>>;
 }
 

@@ -70,7 +70,7 @@ export function accountOf(
   let last = Number.NEGATIVE_INFINITY;
   let verifiedCount = 0;
   for (const at of used) {
-    counts.set(sales.channels[at]!, (counts.get(sales.channels[at]!) ?? 0) + 1);
+    counts.set(sales.channels.at(at)!, (counts.get(sales.channels.at(at)!) ?? 0) + 1);
     first = Math.min(first, sales.soldOn[at]!);
     last = Math.max(last, sales.soldOn[at]!);
     verifiedCount += sales.verified[at] === 1 ? 1 : 0;

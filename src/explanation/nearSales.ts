@@ -80,11 +80,11 @@ function describe(
   const isLn = fit.design.responseForm === "lnPrice";
   return {
     sale: sales.ids[at]!,
-    reference: sales.references[at] ?? null,
-    title: sales.titles[at]!,
+    reference: sales.references.at(at) ?? null,
+    title: sales.titles.at(at)!,
     soldOn: dayOf(sales.soldOn[at]!),
     price,
-    channel: sales.channels[at]!,
+    channel: sales.channels.at(at)!,
     verified: sales.verified[at] === 1,
     weight: weights[i]!,
     gross: isLn ? Math.expm1(gross) : gross,

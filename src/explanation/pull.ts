@@ -81,11 +81,11 @@ function describe({ fit, row, sales, ...input }: PullInput, weights: Float64Arra
   }
   return {
     sale: sales.ids[at]!,
-    reference: sales.references[at] ?? null,
-    title: sales.titles[at]!,
+    reference: sales.references.at(at) ?? null,
+    title: sales.titles.at(at)!,
     soldOn: dayOf(sales.soldOn[at]!),
     price: sales.price[at]!,
-    channel: sales.channels[at]!,
+    channel: sales.channels.at(at)!,
     verified: sales.verified[at] === 1,
     weight: weights[i]!,
     priceWithout: priceWithout(fit, weights, i, input.fitted),

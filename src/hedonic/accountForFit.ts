@@ -19,7 +19,7 @@ export function errorsFor(
   { errors = { kind: "even" } }: PriceModel,
   fit: Fit,
   { extras }: Estimate,
-  sources: readonly string[],
+  sources: SaleColumns["sources"],
 ): FitErrors | null {
   const isPlain = errors.kind === "even" && fit.rule.weights === null && fit.rule.penalty === null;
   if (isPlain || fit.solution.residualDf <= 0) return null;

@@ -76,7 +76,7 @@ interface Built {
 
 function sourceOf(sales: SaleColumns, rows: Int32Array, assetClass: NewAssetClass, wanted: ModelAttribute): FormSource {
   if (wanted.key === CHANNEL_KEY) {
-    const stored = Float64Array.from(rows, (at) => CHANNELS.indexOf(sales.channels[at]!));
+    const stored = Float64Array.from(rows, (at) => CHANNELS.indexOf(sales.channels.at(at)!));
     return { label: "Sold through", attribute: null, stored, levels: CHANNELS, wanted };
   }
   const attribute = assetClass.attributes.find((one) => one.key === wanted.key);

@@ -4,16 +4,25 @@
  */
 import type { Database } from "better-sqlite3";
 import { minorUnitDigits } from "../domain/format.ts";
-import { CHANNELS, type Channel, priceBasisWords, type SaleColumns } from "../domain/sale.ts";
+import { CHANNELS, priceBasisWords, type SaleColumns } from "../domain/sale.ts";
 import { type StoredAttribute, valuesTable } from "./attributeTables.ts";
+import {
+  type BaseColumns,
+  type KeptColumns,
+  readSnapshot,
+  SNAPSHOT_SALES,
+  sharedDoubles,
+  writeSnapshot,
+} from "./columnSnapshot.ts";
 import { type PackedColumn, packColumns, unpackInto } from "./packedColumns.ts";
 import { priceBasisOf } from "./saleRows.ts";
+import { codedTexts, saleTexts } from "./textColumns.ts";
 
 /** Sale numbers per block: large enough to make a call cheap, small enough to keep the rows of one block in cache. */
 const BLOCK = 8192;
 
-/** Price in minor units, packed small columns (see PACKED), currency, title, reference. */
-type BaseRow = [number, number, string, string, string | null];
+/** Price in minor units, packed small columns (see PACKED), currency. */
+type BaseRow = [number, number, string];
 
 /**
  * Crossing from SQLite costs the same for every column, so the small ones cross as one whole number below 2^53:
@@ -22,32 +31,6 @@ type BaseRow = [number, number, string, string, string | null];
 const DAY_SHIFT = 1_000_000;
 const SOURCE_LIMIT = 2 ** 26;
 const PACKED = `(((sold_on + ${DAY_SHIFT}) * 6 + price_basis) * 4 + channel) * ${SOURCE_LIMIT} + source_id`;
-
-interface Filling {
-  readonly ids: Float64Array;
-  readonly references: (string | null)[];
-  readonly titles: string[];
-  readonly soldOn: Float64Array;
-  readonly price: Float64Array;
-  readonly currencyCodes: string[];
-  readonly channels: Channel[];
-  readonly sources: string[];
-  readonly priceBases: string[];
-}
-
-function emptyColumns(count: number): Filling {
-  return {
-    ids: new Float64Array(count),
-    references: new Array(count),
-    titles: new Array(count),
-    soldOn: new Float64Array(count),
-    price: new Float64Array(count),
-    currencyCodes: new Array(count),
-    channels: new Array(count),
-    sources: new Array(count),
-    priceBases: new Array(count),
-  };
-}
 
 /** Minor units in one major unit, looked up once per currency. */
 function minorPerMajor(): (currencyCode: string) => number {
@@ -64,22 +47,102 @@ function minorPerMajor(): (currencyCode: string) => number {
 
 const BASIS_WORDS = [0, 1, 2, 3, 4, 5].map((code) => priceBasisWords(priceBasisOf(code)));
 
-/** Every sale of the class, set aside or not, in the order of the sale number. No sales give columns of length 0. */
-export function readSaleColumns(db: Database, classId: number, attributes: readonly StoredAttribute[]): SaleColumns {
+/** By the code of BaseColumns.kinds: channel + 4 × price basis. */
+const CHANNEL_OF_KIND = Array.from({ length: 24 }, (_, kind) => CHANNELS[kind % 4]!);
+const BASIS_OF_KIND = Array.from({ length: 24 }, (_, kind) => BASIS_WORDS[Math.floor(kind / 4)]!);
+
+/**
+ * Every sale of the class, set aside or not, in the order of the sale number. No sales give columns of length 0.
+ * From the copy in columns where one stands for `rowsVersion`, else from the rows; many rows leave a copy behind.
+ */
+export function readSaleColumns(
+  db: Database,
+  classId: number,
+  rowsVersion: number,
+  attributes: readonly StoredAttribute[],
+): SaleColumns {
+  const look = () => readSnapshot(db, classId, rowsVersion, attributes);
+  const kept = db.inTransaction ? look() : db.transaction(look)();
+  const found = kept ?? readRows(db, classId, attributes);
+  if (kept === null && found.base.ids.length >= SNAPSHOT_SALES) keep(db, classId, rowsVersion, attributes, found);
+  return toSaleColumns(db, classId, attributes, found);
+}
+
+/** A copy is a convenience: a store that cannot be written just now is read all the same. */
+function keep(
+  db: Database,
+  classId: number,
+  rowsVersion: number,
+  attributes: readonly StoredAttribute[],
+  columns: KeptColumns,
+): void {
+  if (db.readonly) return;
+  try {
+    db.transaction(() => {
+      // Between reading and writing another window may have brought sales in.
+      const now = db
+        .prepare<[number], number>("SELECT rows_version FROM asset_classes WHERE id = ?")
+        .pluck()
+        .get(classId);
+      if (now === rowsVersion) writeSnapshot(db, classId, rowsVersion, attributes, columns);
+    }).immediate();
+  } catch (cause) {
+    if (!isBusy(cause)) throw cause;
+  }
+}
+
+function isBusy(cause: unknown): boolean {
+  const code = (cause as { code?: unknown }).code;
+  return typeof code === "string" && (code.startsWith("SQLITE_BUSY") || code === "SQLITE_FULL");
+}
+
+function toSaleColumns(
+  db: Database,
+  classId: number,
+  attributes: readonly StoredAttribute[],
+  { base, currencyCodes, values }: KeptColumns,
+): SaleColumns {
+  const { ids, soldOn, price, kinds } = base;
+  const names: string[] = [];
+  for (const [id, name] of db.prepare<[], [number, string]>("SELECT id, name FROM sources").raw().iterate()) {
+    names[id] = name;
+  }
+  return {
+    count: ids.length,
+    ids,
+    ...saleTexts(db, ids),
+    soldOn,
+    price,
+    currencyCodes: codedTexts(base.currencies, currencyCodes),
+    channels: codedTexts(kinds, CHANNEL_OF_KIND),
+    sources: codedTexts(base.sources, names),
+    priceBases: codedTexts(kinds, BASIS_OF_KIND),
+    ...readMarks(db, classId, ids),
+    values: Object.fromEntries(attributes.map(({ attribute }, k) => [attribute.key, values[k]!])),
+  };
+}
+
+function readRows(db: Database, classId: number, attributes: readonly StoredAttribute[]): KeptColumns {
   const table = valuesTable(classId);
   const extent = db
     .prepare<[], { count: number; low: number | null; high: number | null }>(
       `SELECT count(*) AS count, min(sale_id) AS low, max(sale_id) AS high FROM ${table}`,
     )
     .get()!;
-  const columns = emptyColumns(extent.count);
-  const arrays = attributes.map(() => new Float64Array(extent.count));
-  const sourceNames = new Map(db.prepare<[], [number, string]>("SELECT id, name FROM sources").raw().all());
+  const base: BaseColumns = {
+    ids: sharedDoubles(extent.count),
+    soldOn: sharedDoubles(extent.count),
+    price: sharedDoubles(extent.count),
+    currencies: new Uint16Array(extent.count),
+    kinds: new Uint8Array(extent.count),
+    sources: new Uint32Array(extent.count),
+  };
+  const currencies = new Map<string, number>();
+  const values = attributes.map(() => sharedDoubles(extent.count));
   // "+class_id" keeps SQLite on the row number instead of a class index, which would have to be sorted.
   const selectBase = db
     .prepare<[number, number, number], BaseRow>(
-      `SELECT price_minor, ${PACKED}, currency_code, title, reference
-       FROM sales WHERE id >= ? AND id < ? AND +class_id = ? ORDER BY id`,
+      `SELECT price_minor, ${PACKED}, currency_code FROM sales WHERE id >= ? AND id < ? AND +class_id = ? ORDER BY id`,
     )
     .raw();
   const packed = packColumns(attributes);
@@ -91,34 +154,35 @@ export function readSaleColumns(db: Database, classId: number, attributes: reado
   const unitsOf = minorPerMajor();
   let at = 0;
   for (let low = extent.low ?? 1; low <= (extent.high ?? 0); low += BLOCK) {
-    const base = selectBase.all(low, low + BLOCK, classId);
-    fillBase(columns, base, at, unitsOf, sourceNames);
-    fillValues(columns.ids, arrays, packed, selectValues.all(low, low + BLOCK), at);
-    at += base.length;
+    const rows = selectBase.all(low, low + BLOCK, classId);
+    fillBase(base, rows, at, unitsOf, currencies);
+    fillValues(base.ids, values, packed, selectValues.all(low, low + BLOCK), at);
+    at += rows.length;
   }
-  const values = Object.fromEntries(attributes.map(({ attribute }, k) => [attribute.key, arrays[k]!]));
-  return { count: extent.count, ...columns, ...readMarks(db, classId, columns.ids), values };
+  return { base, currencyCodes: [...currencies.keys()], values };
 }
 
 function fillBase(
-  columns: Filling,
+  columns: BaseColumns,
   rows: readonly BaseRow[],
   at: number,
   unitsOf: (currencyCode: string) => number,
-  sourceNames: ReadonlyMap<number, string>,
+  currencies: Map<string, number>,
 ): void {
   for (let r = 0, i = at; r < rows.length; r++, i++) {
     const row = rows[r]!;
     const small = Math.floor(row[1] / SOURCE_LIMIT);
     const basisAndDay = Math.floor(small / 4);
     columns.price[i] = row[0] / unitsOf(row[2]);
-    columns.sources[i] = sourceNames.get(row[1] - small * SOURCE_LIMIT)!;
-    columns.channels[i] = CHANNELS[small % 4]!;
-    columns.priceBases[i] = BASIS_WORDS[basisAndDay % 6]!;
+    columns.sources[i] = row[1] - small * SOURCE_LIMIT;
+    columns.kinds[i] = (small % 4) + 4 * (basisAndDay % 6);
     columns.soldOn[i] = Math.floor(basisAndDay / 6) - DAY_SHIFT;
-    columns.currencyCodes[i] = row[2];
-    columns.titles[i] = row[3];
-    columns.references[i] = row[4];
+    let currency = currencies.get(row[2]);
+    if (currency === undefined) {
+      currency = currencies.size;
+      currencies.set(row[2], currency);
+    }
+    columns.currencies[i] = currency;
   }
 }
 

@@ -151,7 +151,7 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
       if (kept?.dataVersion === dataVersion) return kept.columns;
       const columns =
         kept === null
-          ? readSaleColumns(db, classId, attributes.listStored(classId))
+          ? readSaleColumns(db, classId, rowsVersion, attributes.listStored(classId))
           : { ...kept.columns, ...readMarks(db, classId, kept.columns.ids) };
       // Inside a transaction the versions may still be rolled back and used again for other sales.
       if (!db.inTransaction) columnsCache = { classId, dataVersion, rowsVersion, columns };

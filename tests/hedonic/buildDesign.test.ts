@@ -170,7 +170,7 @@ describe("products", () => {
       make: CLASS.attributes[3]!.levels[SALES.values.make![at]!]!,
       remote: SALES.values.remote![at] === 1,
       built: new Date(SALES.values.built![at]! * 86_400_000).toISOString().slice(0, 10),
-      channel: SALES.channels[at]!,
+      channel: SALES.channels.at(at)!,
     };
     const last = new Date(Math.max(...SALES.soldOn) * 86_400_000).toISOString().slice(0, 10);
     const subject = { ...SUBJECT, values, effectiveOn: last };

@@ -1,6 +1,7 @@
 import BetterSqlite3 from "better-sqlite3";
 import { describe, expect, it } from "vitest";
 import type { ColumnMatch, DuplicateRow, HeldBackRow, ReadingOptions } from "../../src/domain/importRecord.ts";
+import { textsOf } from "../../src/domain/sale.ts";
 import type { NewBatch } from "../../src/store/batches.ts";
 import type { Store } from "../../src/store/openStore.ts";
 import { fill, freshStore, sale } from "./filledStore.ts";
@@ -112,7 +113,7 @@ describe("an import batch", () => {
     const [before] = store.sales.findSales(classId, [2]);
     const removed = store.transaction(() => store.sales.removeBatch(classId, made.id, "2026-01-02T00:00:00Z"));
     expect(removed).toBe(2);
-    expect(store.sales.readColumns(classId).titles).toEqual(["one"]);
+    expect(textsOf(store.sales.readColumns(classId).titles)).toEqual(["one"]);
     expect(store.assetClasses.summary(classId).saleCount).toBe(1);
     expect(store.sales.findSales(classId, [2, 1]).map(({ title }) => title)).toEqual(["one", "two"]);
     expect(store.sales.findSales(classId, [2])).toEqual([before]);

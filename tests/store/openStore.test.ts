@@ -5,6 +5,7 @@ import { fileURLToPath } from "node:url";
 import BetterSqlite3 from "better-sqlite3";
 import { describe, expect, it } from "vitest";
 import { AppError } from "../../src/domain/errors.ts";
+import { textsOf } from "../../src/domain/sale.ts";
 import { APPLICATION_ID, MIGRATIONS } from "../../src/store/migrate.ts";
 import { openStore } from "../../src/store/openStore.ts";
 import { fill, freshStore, sale, temporaryFolder } from "./filledStore.ts";
@@ -199,7 +200,7 @@ describe("a transaction", () => {
     });
     expect(second.sales.readColumns(classId).count).toBe(2);
     expect(second.transaction(() => second.sales.setAside(classId, [1], "B", "2026-01-01", "burnt"))).toBe(1);
-    expect(first.sales.readColumns(classId).setAsideReasons).toEqual(["burnt", null]);
+    expect(textsOf(first.sales.readColumns(classId).setAsideReasons)).toEqual(["burnt", null]);
   });
 
   it("loses nothing committed when the process is killed while it writes", async () => {

@@ -3,6 +3,7 @@ import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { dayNumber } from "../../src/domain/day.ts";
 import type { NewSale, Sale } from "../../src/domain/sale.ts";
+import { textsOf } from "../../src/domain/sale.ts";
 import type { Store } from "../../src/store/openStore.ts";
 import { countSql, pageSql, type RegisterFilter, type RegisterQuery } from "../../src/store/register.ts";
 import { attribute, fill, freshStore, HOISTS, sale } from "./filledStore.ts";
@@ -323,15 +324,15 @@ describe("sales as columns", () => {
     expect([...columns.ids]).toEqual([1, 2, 3, 4, 5, 6]);
     expect([...columns.price]).toEqual([5, 4, 3, 2, 1, 77]);
     expect([...columns.soldOn]).toEqual([19723, 20089, 19358, 20240, 18993, -1]);
-    expect(columns.titles).toEqual(["alpha", "Beta", "gamma 50%", "Delta", "epsilon", "Brannock H2"]);
-    expect(columns.references).toEqual([null, "L-7", null, null, null, null]);
-    expect(columns.channels).toEqual(["auction", "dealer", "auction", "auction", "auction", "auction"]);
-    expect(columns.sources[2]).toBe("autumn list");
-    expect(columns.currencyCodes).toEqual(["EUR", "EUR", "EUR", "EUR", "EUR", "JPY"]);
-    expect(columns.priceBases[0]).toBe("premium in, tax out");
-    expect(columns.priceBases[5]).toBe("no premium, tax in");
+    expect(textsOf(columns.titles)).toEqual(["alpha", "Beta", "gamma 50%", "Delta", "epsilon", "Brannock H2"]);
+    expect(textsOf(columns.references)).toEqual([null, "L-7", null, null, null, null]);
+    expect(textsOf(columns.channels)).toEqual(["auction", "dealer", "auction", "auction", "auction", "auction"]);
+    expect(columns.sources.at(2)).toBe("autumn list");
+    expect(textsOf(columns.currencyCodes)).toEqual(["EUR", "EUR", "EUR", "EUR", "EUR", "JPY"]);
+    expect(columns.priceBases.at(0)).toBe("premium in, tax out");
+    expect(columns.priceBases.at(5)).toBe("no premium, tax in");
     expect([...columns.verified]).toEqual([0, 0, 1, 0, 0, 0]);
-    expect(columns.setAsideReasons).toEqual([null, "burnt", null, "burnt", null, null]);
+    expect(textsOf(columns.setAsideReasons)).toEqual([null, "burnt", null, "burnt", null, null]);
     expect([...columns.values.hours!]).toEqual([900, Number.NaN, 100, 900, 5000.5, Number.NaN]);
     expect([...columns.values.make!]).toEqual([1, 0, Number.NaN, 1, 0, Number.NaN]);
     expect([...columns.values.cabin!]).toEqual([1, 0, Number.NaN, Number.NaN, Number.NaN, Number.NaN]);
@@ -391,7 +392,7 @@ describe("sales as columns", () => {
     expect(store.sales.readColumns(classId).count).toBe(1);
     expect(store.sales.readColumns(classId)).toBe(store.sales.readColumns(classId));
     store.sales.setAside(classId, [1], "A", "2026-01-01", "burnt");
-    expect(store.sales.readColumns(classId).setAsideReasons).toEqual(["burnt"]);
+    expect(textsOf(store.sales.readColumns(classId).setAsideReasons)).toEqual(["burnt"]);
   });
 
   it("keep two classes in one store apart", () => {
@@ -409,7 +410,14 @@ describe("sales as columns", () => {
       { row: null, sale: sale({ title: "boat", values: { length_m: 9.5 } }), cells: null },
     ]);
     store.sales.insertSales(classId, null, [{ row: null, sale: sale({ title: "zeta" }), cells: null }]);
-    expect(store.sales.readColumns(classId).titles).toEqual(["alpha", "Beta", "gamma 50%", "Delta", "epsilon", "zeta"]);
+    expect(textsOf(store.sales.readColumns(classId).titles)).toEqual([
+      "alpha",
+      "Beta",
+      "gamma 50%",
+      "Delta",
+      "epsilon",
+      "zeta",
+    ]);
     expect([...store.sales.readColumns(other.id).values.length_m!]).toEqual([9.5]);
     expect(idsOf(store, query(other.id, { sort: { by: "price", descending: false } }))).toEqual([6]);
     expect(store.sales.findSales(other.id, [1])).toEqual([]);

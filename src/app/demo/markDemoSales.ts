@@ -1,5 +1,6 @@
 /** What the demo's invented people did once their file was in: sales set aside with a reason, sales verified, an item begun. */
 
+import { textsOf } from "../../domain/sale.ts";
 import type { Ports } from "../ports.ts";
 import { counted } from "../recordAct.ts";
 import type { DemoClass } from "./demoClasses.ts";
@@ -42,7 +43,7 @@ export function markDemoSales(
   const { sales, journal, drafts } = ports.store;
   const columns = sales.readColumns(classId);
   const idOf = new Map<string, number>();
-  columns.references.forEach((reference, k) => {
+  textsOf(columns.references).forEach((reference, k) => {
     if (reference !== null) idOf.set(reference, columns.ids[k]!);
   });
   const atUtc = ports.nowUtc();

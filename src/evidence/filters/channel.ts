@@ -4,7 +4,7 @@ import { type EvidenceFilterRule, salesWords } from "./filter.ts";
 export const channel: EvidenceFilterRule = {
   reason: "channel",
   out: ({ sales, model }, at) => {
-    const own = sales.channels[at]!;
+    const own = sales.channels.at(at)!;
     return model.filter.channels === null || model.filter.channels.includes(own) ? null : own;
   },
   sentence: (count, detail) =>

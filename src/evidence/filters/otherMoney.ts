@@ -5,7 +5,7 @@ import { type EvidenceFilterRule, salesWords } from "./filter.ts";
 export const otherCurrency: EvidenceFilterRule = {
   reason: "other-currency",
   out: ({ sales, assetClass }, at) =>
-    sales.currencyCodes[at] === assetClass.currencyCode ? null : (sales.currencyCodes[at] ?? "unknown"),
+    sales.currencyCodes.at(at) === assetClass.currencyCode ? null : (sales.currencyCodes.at(at) ?? "unknown"),
   sentence: (count, detail, { assetClass }) =>
     `${salesWords(count)} in ${detail}, and the class is priced in ${assetClass.currencyCode}.`,
 };
@@ -13,7 +13,7 @@ export const otherCurrency: EvidenceFilterRule = {
 export const otherPriceBasis: EvidenceFilterRule = {
   reason: "other-price-basis",
   out: ({ sales, assetClass }, at) => {
-    const own = sales.priceBases[at] ?? "";
+    const own = sales.priceBases.at(at) ?? "";
     return isComparable(own, priceBasisWords(assetClass.priceBasis)) ? null : own;
   },
   sentence: (count, detail, { assetClass }) =>

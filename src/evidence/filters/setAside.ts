@@ -3,6 +3,6 @@ import { type EvidenceFilterRule, salesWords } from "./filter.ts";
 
 export const setAside: EvidenceFilterRule = {
   reason: "set-aside",
-  out: ({ sales }, at) => sales.setAsideReasons[at] ?? null,
+  out: ({ sales }, at) => sales.setAsideReasons.at(at) ?? null,
   sentence: (count, detail) => `${salesWords(count)} set aside by a person: ${detail}.`,
 };

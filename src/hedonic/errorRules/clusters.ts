@@ -1,5 +1,7 @@
 /** Which cluster each sale of a fit belongs to. */
+
 import { lowerStart } from "../../domain/format.ts";
+import type { TextColumn } from "../../domain/sale.ts";
 import { isIndicator } from "../../numerics/column.ts";
 import type { Fit } from "../fit.ts";
 import { noSuchCluster } from "./refusals.ts";
@@ -16,7 +18,7 @@ export interface Clusters {
 }
 
 /** Refuses an attribute that is neither a choice nor yes/no of the reference set, and "source" without sources. */
-export function clustersOf({ design, rule }: Fit, by: string, sources: readonly string[] | null): Clusters {
+export function clustersOf({ design, rule }: Fit, by: string, sources: TextColumn | null): Clusters {
   const group = design.groups.find(({ key }) => key === by);
   const label = by === BY_SOURCE ? "source" : lowerStart(group?.label ?? by);
   const keyOf = by === BY_SOURCE ? sourceOf(design.rows, sources) : levelOf({ design }, by);
@@ -33,8 +35,8 @@ export function clustersOf({ design, rule }: Fit, by: string, sources: readonly 
   return { label, codes, count: numbers.size };
 }
 
-function sourceOf(rows: Int32Array, sources: readonly string[] | null): ((i: number) => string) | null {
-  return sources === null ? null : (i) => sources[rows[i]!]!;
+function sourceOf(rows: Int32Array, sources: TextColumn | null): ((i: number) => string) | null {
+  return sources === null ? null : (i) => sources.at(rows[i]!)!;
 }
 
 /** The stored level (a choice's columns share its codes), or 0/1 of yes/no. */

@@ -2,6 +2,7 @@
  * What every error rule gives back: the covariance of a fit under what the rule supposes, from which coefficient ranges and the
  * range for an average follow. Symbols: n sales, k columns in the order of fit.columns, p = k + 1.
  */
+import type { TextColumn } from "../../domain/sale.ts";
 import { type FitCovariance, varianceAt } from "../../numerics/clusterCovariance.ts";
 import type { Fit } from "../fit.ts";
 
@@ -26,7 +27,7 @@ export interface ErrorContext {
   /** Of a robust estimate (estimators, extras.curvature), n; null for all others. */
   readonly curvature: Float64Array | null;
   /** Where each sale of SaleColumns is from, in its own order; null when nobody clusters by source. */
-  readonly sources: readonly string[] | null;
+  readonly sources: TextColumn | null;
 }
 
 export function errorsFrom(
