@@ -128,6 +128,28 @@ export function writeSnapshot(
   ).run(classId, rowsVersion, base.ids.length);
 }
 
+/** Below this many rows the triggers are simply left to fire. */
+const MANY_ROWS = 200;
+
+/**
+ * Many rows at once, inside the caller's transaction: the copy is ended first, and the triggers that would end it again at every
+ * row (and make each row a step that can be undone by itself) are taken off while the work runs, and put back.
+ */
+export function withSnapshotEnded<T>(db: Database, classId: number, rowCount: number, work: () => T): T {
+  if (rowCount < MANY_ROWS) return work();
+  db.prepare("DELETE FROM snapshot_stamps WHERE class_id = ?").run(classId);
+  const triggers = db
+    .prepare<[string], { name: string; sql: string }>(
+      `SELECT name, sql FROM sqlite_schema
+       WHERE type = 'trigger' AND name LIKE 'snapshot_ends_%' ESCAPE '' AND tbl_name IN ('sales', ?)`,
+    )
+    .all(valuesTable(classId));
+  for (const { name } of triggers) db.exec(`DROP TRIGGER ${name}`);
+  const result = work();
+  for (const { sql } of triggers) db.exec(sql);
+  return result;
+}
+
 /** Triggers on the class's own table of values; made with the first copy, as before it there is nothing to end. */
 function endWithValues(db: Database, classId: number): void {
   const table = valuesTable(classId);

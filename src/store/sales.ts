@@ -9,6 +9,7 @@ import type { AssetClasses } from "./assetClasses.ts";
 import type { Attributes } from "./attributes.ts";
 import { levelCodesOf, type StoredAttribute, valuesTable } from "./attributeTables.ts";
 import { withIndexesRebuilt } from "./bulkInsert.ts";
+import { withSnapshotEnded } from "./columnSnapshot.ts";
 import { type RegisterQuery, registerOf } from "./register.ts";
 import { readMarks, readSaleColumns } from "./saleColumns.ts";
 import {
@@ -136,7 +137,9 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
     insertSales(classId: number, batchId: number | null, incoming: readonly IncomingSale[]): number[] {
       if (incoming.length === 0) return [];
       const tables = ["sales", valuesTable(classId)];
-      const ids = withIndexesRebuilt(db, tables, incoming.length, () => insertAll(classId, batchId, incoming));
+      const ids = withSnapshotEnded(db, classId, incoming.length, () =>
+        withIndexesRebuilt(db, tables, incoming.length, () => insertAll(classId, batchId, incoming)),
+      );
       classes.raiseRowsVersion(classId);
       return ids;
     },
@@ -197,13 +200,15 @@ export function salesOf(db: Database, classes: AssetClasses, attributes: Attribu
       const stored = attributes.listStored(classId);
       const ids = selectBatchIds.all(batchId);
       const deleteValues = db.prepare(`DELETE FROM ${valuesTable(classId)} WHERE sale_id = ?`);
-      for (let from = 0; from < ids.length; from += 1000) {
-        for (const sale of find(classId, ids.slice(from, from + 1000), stored)) {
-          insertRemoved.run(sale.id, classId, batchId, atUtc, JSON.stringify(sale));
-          deleteValues.run(sale.id);
-          deleteSale.run(sale.id);
+      withSnapshotEnded(db, classId, ids.length, () => {
+        for (let from = 0; from < ids.length; from += 1000) {
+          for (const sale of find(classId, ids.slice(from, from + 1000), stored)) {
+            insertRemoved.run(sale.id, classId, batchId, atUtc, JSON.stringify(sale));
+            deleteValues.run(sale.id);
+            deleteSale.run(sale.id);
+          }
         }
-      }
+      });
       classes.raiseRowsVersion(classId);
       return ids.length;
     },

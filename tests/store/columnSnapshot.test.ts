@@ -84,6 +84,18 @@ describe("the copy in columns", () => {
           store.sales.insertSales(classId, null, [{ row: null, sale: sale(), cells: null }]),
         ),
     ],
+    [
+      "bringing many sales in at once, which puts the guards back",
+      ({ store, classId, db }) => {
+        const many = Array.from({ length: 300 }, () => ({ row: null, sale: sale(), cells: null }));
+        store.transaction(() => store.sales.insertSales(classId, null, many));
+        const guards = db
+          .prepare("SELECT count(*) FROM sqlite_schema WHERE name LIKE 'snapshot_ends_with%'")
+          .pluck()
+          .get();
+        expect(guards).toBe(6);
+      },
+    ],
     ["raw SQL on a price", ({ db }) => void db.exec("UPDATE sales SET price_minor = 5 WHERE id = 3")],
     ["raw SQL on a day", ({ db }) => void db.exec("UPDATE sales SET sold_on = 5 WHERE id = 3")],
     [
