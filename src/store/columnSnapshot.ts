@@ -141,7 +141,7 @@ export function withSnapshotEnded<T>(db: Database, classId: number, rowCount: nu
   const triggers = db
     .prepare<[string], { name: string; sql: string }>(
       `SELECT name, sql FROM sqlite_schema
-       WHERE type = 'trigger' AND name LIKE 'snapshot_ends_%' ESCAPE '' AND tbl_name IN ('sales', ?)`,
+       WHERE type = 'trigger' AND name GLOB 'snapshot_ends_with_*' AND tbl_name IN ('sales', ?)`,
     )
     .all(valuesTable(classId));
   for (const { name } of triggers) db.exec(`DROP TRIGGER ${name}`);
