@@ -16,13 +16,15 @@ import { pull, pullWeights } from "../explanation/pull.ts";
 import { accountForFit, errorsFor } from "../hedonic/accountForFit.ts";
 import { buildDesign } from "../hedonic/buildDesign.ts";
 import type { FitErrors } from "../hedonic/errorRules/errors.ts";
+import type { Estimate } from "../hedonic/estimators/estimator.ts";
 import { estimate } from "../hedonic/estimators/index.ts";
-import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
+import type { AttributeGroup, Design, Fit, FitRule, SubjectRow } from "../hedonic/fit.ts";
 import { fitColumns } from "../hedonic/fitPriceModel.ts";
 import { reportModel } from "../hedonic/reportModel.ts";
 import { type ResolvedSet, resolveDependencies } from "../hedonic/resolveDependencies.ts";
 import { writeCaveats } from "../sheet/writeCaveats.ts";
 import { buildUp } from "../valuation/buildUp.ts";
+import { chooseRange } from "../valuation/chooseRange.ts";
 import { describeSubject, marketHeldAt } from "../valuation/describeSubject.ts";
 import { estimatePrice } from "../valuation/estimatePrice.ts";
 import { measureReach } from "../valuation/measureReach.ts";
@@ -46,6 +48,8 @@ export interface ComputedAppraisal {
   /** The fit in use and the subject on its columns, for what is worked out beside the result. */
   readonly fit: Fit;
   readonly row: SubjectRow | null;
+  /** Groups of the reference set after exact dependencies, in the model or not. */
+  readonly reference: readonly AttributeGroup[];
 }
 
 /** What is the same for every attribute set, subject and way of estimating: which sales count, and their columns. */
@@ -77,10 +81,17 @@ export function computeAppraisal(input: AppraisalInput, prepared = prepareEviden
   const fitted = accountForFit(model, short, estimated, errors, input.sales);
   const report = reportModel({ fit: short, model, resolved, leftOut, reference: long ?? short, errors, fitted });
   const ledger = ledgerOf(long, short, report, assetClass.currencyCode);
-  const priced = subject === null || row === null ? null : pricePart(input, short, long, row, subject, errors);
+  const priced =
+    subject === null || row === null ? null : pricePart(input, short, long, row, subject, errors, estimated);
   const { name, itemWord, currencyCode, invented } = assetClass;
   const found = { assetClass: { name, itemWord, currencyCode, invented }, evidence: account, report, ledger, priced };
-  return { appraisal: { ...found, caveats: writeCaveats(found) }, used, fit: short, row };
+  return {
+    appraisal: { ...found, caveats: writeCaveats(found) },
+    used,
+    fit: short,
+    row,
+    reference: resolved.referenceGroups,
+  };
 }
 
 /** The subject's price alone, from the attributes of the model that it has values for; null without a subject. */
@@ -98,6 +109,14 @@ export function priceOf(input: AppraisalInput, { design }: PreparedEvidence): nu
 function staying({ leftOut }: PriceModel, row: SubjectRow | null): (group: AttributeGroup) => boolean {
   const isIn = (key: string): boolean => !leftOut.includes(key) && !row?.notKnown.includes(key);
   return ({ key, product }) => isIn(key) && (product === null || (isIn(product.a) && isIn(product.b)));
+}
+
+/** The model's estimator on the sales that are kept. */
+function refitRuleOf({ design, groups }: Fit, model: PriceModel): (kept: Float64Array) => FitRule {
+  return (kept) => {
+    const weights = design.weights === null ? kept : kept.map((one, i) => one * design.weights![i]!);
+    return estimate({ ...design, weights }, groups, model.estimator).rule;
+  };
 }
 
 /** The whole reference set fitted, or null when it has more coefficients than the sales can carry and the set in use has not. */
@@ -144,9 +163,24 @@ function pricePart(
   row: SubjectRow,
   subject: Subject,
   errors: FitErrors | null,
+  estimated: Estimate,
 ): PricePart {
   const { assetClass, sales, levels } = input;
-  const price = estimatePrice(short, row, levels, marketHeldAt(short.design, subject), errors);
+  const weights = pullWeights(short, row);
+  const range = chooseRange({
+    fit: short,
+    row,
+    levels,
+    model: input.model,
+    isExact: estimated.exactRange,
+    refitRule: refitRuleOf(short, input.model),
+  });
+  const price = {
+    ...estimatePrice(short, row, levels, marketHeldAt(short.design, subject), errors),
+    rangeForOneSale: range.ranges,
+    range: range.account,
+    ...(estimated.exactRange ? {} : { effectiveSales: 1 / weights.reduce((sum, w) => sum + w * w, 0) }),
+  };
   const unknown = (long?.groups ?? []).filter(
     (group) => group.product === null && row.notKnown.includes(group.key) && !input.model.leftOut.includes(group.key),
   );
@@ -166,7 +200,7 @@ function pricePart(
       fit: short,
       row,
       sales,
-      weights: pullWeights(short, row),
+      weights,
       amount: price.amount,
       currencyCode: assetClass.currencyCode,
     }),

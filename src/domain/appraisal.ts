@@ -6,7 +6,7 @@
  */
 import type { AttributeKind } from "./attribute.ts";
 import type { Day } from "./day.ts";
-import type { AttributeForm, PriceModel, ResponseForm } from "./priceModel.ts";
+import type { AttributeForm, PriceModel, RangeKind, ResponseForm } from "./priceModel.ts";
 import type { Subject } from "./subject.ts";
 
 export interface Range {
@@ -166,10 +166,23 @@ export interface PriceEstimate {
   readonly leverage: number;
   readonly rangeForOneSale: readonly Range[];
   readonly rangeForAverage: readonly Range[];
+  /** Which kind the ranges for one sale are of, what it takes for granted and promises. */
+  readonly range?: RangeAccount;
   /** 1/Σw²: how many equal sales the price rests on. */
   readonly effectiveSales: number;
   /** Where the market movement is held because the effective date lies after the last sale. */
   readonly marketHeldAt: Day | null;
+}
+
+export interface RangeAccount {
+  readonly kind: RangeKind;
+  readonly sentence: string;
+  readonly guarantee: string | null;
+  /** The kind that the model asked for could not be given; why. */
+  readonly insteadOf: string | null;
+  /** Another kind to judge it by, and what to make of a difference in width; null where there is none, or too many sales to wait for it. */
+  readonly beside: { readonly kind: RangeKind; readonly ranges: readonly Range[] } | null;
+  readonly disagreement: string | null;
 }
 
 export interface NotKnownEffect {
