@@ -77,6 +77,18 @@ export interface AveragedPrice {
   readonly weights: readonly { readonly set: number; readonly weight: number }[];
 }
 
+/**
+ * Prices averaged by stacking: weights, none negative, that make the squared error of the mixture least with each sale priced
+ * without itself (Yao, Vehtari, Simpson & Gelman 2018, section 2; of means: Breiman 1996).
+ */
+export interface StackedPrice extends AveragedPrice {
+  /** How many of the best defensible sets were weighed. */
+  readonly over: number;
+  /** Typical error of the mixture, and of the best set alone, each sale priced without itself. */
+  readonly error: number;
+  readonly errorOfBest: number;
+}
+
 export interface AttributeSets {
   readonly attributes: readonly { readonly key: string; readonly label: string }[];
   /** In every set: the market movement, and what is beyond the fifteen that can be in or out. */
@@ -102,6 +114,7 @@ export interface AttributeSets {
   /** Key of the attribute whose switching moves the current price most. */
   readonly movesMost: string | null;
   readonly averaged: AveragedPrice | null;
+  readonly stacked: StackedPrice | null;
   /** True sentences for the head of the picture. */
   readonly sentences: readonly string[];
 }
@@ -126,4 +139,31 @@ export interface AttributeShares {
   readonly r2: number;
   readonly distance: number | null;
   readonly sentences: readonly string[];
+}
+
+/** One set with all that is said of it by name. */
+export interface ListedSet {
+  readonly set: number;
+  readonly price: number | null;
+  readonly low: number | null;
+  readonly high: number | null;
+  readonly error: number | null;
+  /** Akaike weight, and stacking weight; null where there is none. */
+  readonly weight: number | null;
+  readonly stackingWeight: number | null;
+}
+
+/** Every attribute set as a screen or command needs it: figures of all sets cut to the digits a picture can show. */
+export interface EverySet extends Omit<AttributeSets, "figures" | "leaveOneOut"> {
+  /** Per set: eleven digits of the price, five of the error; null as in `SetFigures`. */
+  readonly marks: { readonly price: PerSet; readonly error: PerSet };
+  /** The current set, and those that weigh most or err least. */
+  readonly listed: readonly ListedSet[];
+  /** Null where shares are not determined; `sharesRefused` says why. */
+  readonly shares: AttributeShares | null;
+  readonly sharesRefused: string | null;
+  /** What holds for this picture only: weights and penalties kept from the fit in use. */
+  readonly cautions: readonly string[];
+  readonly currencyCode: string;
+  readonly response: "price" | "lnPrice";
 }

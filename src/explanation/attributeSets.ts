@@ -19,7 +19,9 @@ import {
   type SetErrors,
   type SetTable,
   type SetTableInput,
+  typicalError,
 } from "./setTable.ts";
+import { type KeptErrors, stackedPrice } from "./stackedPrice.ts";
 
 export interface AttributeSetsInput extends SetTableInput {
   readonly currencyCode: string;
@@ -28,37 +30,62 @@ export interface AttributeSetsInput extends SetTableInput {
 
 const LEVEL = 0.9;
 
+/** What does not depend on which sets count as defensible. */
+export interface LookedAtSets {
+  readonly sets: SetTable;
+  readonly offered: readonly number[];
+  readonly errorKind: SetErrors["kind"];
+  readonly prices: SetPrices;
+  readonly error: Float64Array;
+  readonly currencyCode: string;
+  readonly kept: KeptErrors;
+}
+
 export function attributeSets(input: AttributeSetsInput): AttributeSets {
-  const { currencyCode, rule = USUAL_RULE } = input;
+  return judgeSets(lookAtSets(input), input.rule);
+}
+
+export function lookAtSets(input: AttributeSetsInput): LookedAtSets {
   const sets = buildSetTable(input);
-  const { fit, groups, alwaysIn, notKnown, moments, current } = sets;
-  const back = backFrom(fit.design);
   const offered = [...sets.table.r2.keys()].filter((set) => isOffered(sets, set));
   const found = errorsOf(sets);
-  const prices = pricesOf(sets, offered);
-  const error = typicalErrors(sets, found.sums, offered);
+  return {
+    sets,
+    offered,
+    errorKind: found.kind,
+    prices: pricesOf(sets, offered),
+    error: typicalErrors(sets, found.sums, offered),
+    currencyCode: input.currencyCode,
+    kept: new Map(),
+  };
+}
+
+/** Which sets count by the rule, and what follows from that. */
+export function judgeSets(looked: LookedAtSets, rule: DefensibleRule = USUAL_RULE): AttributeSets {
+  const { sets, offered, errorKind, prices, error, currencyCode } = looked;
+  const { fit, groups, alwaysIn, notKnown, moments, current } = sets;
+  const back = backFrom(fit.design);
   const defensible = defensibleSets(rule, error, prices.aicc);
   const money = prices.fitted.map(back);
   const switches = setSwitches(sets, money, defensible);
-  const price = spanOf(defensible.map((set) => money[set]!));
   const named = (some: SetTable["groups"]) => some.map(({ key, label }) => ({ key, label }));
-  const average = back(moments.means.at(-1)!);
   const result = {
     attributes: named(groups),
     alwaysIn: named(alwaysIn),
     notKnown: named(notKnown),
     sales: fit.design.n,
     figures: figuresOf(sets, prices, error),
-    errorKind: found.kind,
-    leaveOneOut: exactErrors(sets, found.kind, defensible),
+    errorKind,
+    leaveOneOut: exactErrors(sets, errorKind, defensible),
     rule,
     defensible,
     current,
-    price,
-    coefficients: coefficientSpans(sets, offered, defensible, average),
+    price: spanOf(defensible.map((set) => money[set]!)),
+    coefficients: coefficientSpans(sets, offered, defensible, back(moments.means.at(-1)!)),
     switches,
     movesMost: movesMost(switches, money[current]!),
     averaged: fit.rule.penalty === null ? averagedPrice(prices, back) : null,
+    stacked: fit.rule.penalty === null ? stackedPrice(sets, prices, defensible, looked.kept) : null,
   };
   const untested = offered.filter((set) => Number.isNaN(error[set]!)).length;
   return { ...result, sentences: sentencesOf(result, offered.length, untested, currencyCode) };
@@ -95,14 +122,8 @@ export function criteria(residualSum: number, n: number, rank: number): { aicc: 
 
 function typicalErrors(sets: SetTable, sums: Float64Array, offered: readonly number[]): Float64Array {
   const errors = new Float64Array(sums.length).fill(Number.NaN);
-  for (const set of offered) errors[set] = typicalError(sets, sums[set]!);
+  for (const set of offered) errors[set] = typicalError(sets.fit, sets.moments, sums[set]!);
   return errors;
-}
-
-/** Root mean square error as a share of price, as in the report of a model: after ln e^rms − 1, plain over the average. */
-function typicalError({ fit, moments }: SetTable, sum: number): number {
-  const rms = Math.sqrt(sum / moments.weightSum);
-  return fit.design.responseForm === "lnPrice" ? Math.expm1(rms) : rms / moments.means.at(-1)!;
 }
 
 /** After ten folds the exact errors of the current set and the best defensible ones. */
@@ -110,7 +131,7 @@ function exactErrors(sets: SetTable, kind: SetErrors["kind"], defensible: readon
   if (kind === "leave-one-out") return [];
   const wanted = [sets.current, ...defensible.filter((set) => set !== sets.current)];
   return leaveOneOutOf(sets, wanted).flatMap(({ set, sum }) =>
-    Number.isNaN(sum) ? [] : [{ set, error: typicalError(sets, sum) }],
+    Number.isNaN(sum) ? [] : [{ set, error: typicalError(sets.fit, sets.moments, sum) }],
   );
 }
 

@@ -20,13 +20,19 @@ const LEVEL = 0.9;
 /** Sets below this weight are not listed. */
 const LISTED = 0.01;
 
-/** Null when no set has a price and an AICc. t is read at the average of the sets' degrees of freedom. */
-export function averagedPrice(
-  { fitted, variances, residualDf, aicc }: SetPrices,
-  back: (value: number) => number,
-): AveragedPrice | null {
+/** Null when no set has a price and an AICc. */
+export function averagedPrice(prices: SetPrices, back: (value: number) => number): AveragedPrice | null {
+  const { fitted, variances, aicc } = prices;
   const weights = akaikeWeights(aicc, (set) => Number.isFinite(fitted[set]!) && Number.isFinite(variances[set]!));
-  if (weights === null) return null;
+  return weights === null ? null : mixedPrice(prices, weights, back);
+}
+
+/** The average by these weights, per set, summing to 1. t is read at the average of the sets' degrees of freedom. */
+export function mixedPrice(
+  { fitted, variances, residualDf }: SetPrices,
+  weights: Float64Array,
+  back: (value: number) => number,
+): AveragedPrice {
   const mean = weightedSum(weights, (set) => fitted[set]!);
   const within = weightedSum(weights, (set) => variances[set]!);
   const between = weightedSum(weights, (set) => (fitted[set]! - mean) ** 2);

@@ -141,6 +141,12 @@ export function leaveOneOutOf(sets: SetTable, wanted: readonly number[]): { set:
   });
 }
 
+/** Root mean square error as a share of price, as in the report of a model: after ln e^rms − 1, plain over the average. */
+export function typicalError({ design }: Fit, moments: Moments, sum: number): number {
+  const rms = Math.sqrt(sum / moments.weightSum);
+  return design.responseForm === "lnPrice" ? Math.expm1(rms) : rms / moments.means.at(-1)!;
+}
+
 /** From the response's scale to money. */
 export function backFrom(design: Design): (value: number) => number {
   return design.responseForm === "lnPrice" ? Math.exp : (value) => value;

@@ -130,6 +130,30 @@ export function leaveOneOutErrors(
   return errors;
 }
 
+/**
+ * √w e/(1 − h) of every row for the one set of these columns: its error when priced by the fit without it, on the response's
+ * scale. Null for a set in which some sale is the only one of its kind, or columns depend on each other. O(rows · columns²).
+ */
+export function leaveOneOutRows(
+  moments: Moments,
+  columns: readonly Column[],
+  response: Float64Array,
+  { alwaysIn, penalty, weights }: SubsetErrorOptions & { readonly weights?: Float64Array | null | undefined },
+): Float64Array | null {
+  const plan = planSubsets([], alwaysIn);
+  const order = [...plan.order, columns.length];
+  const depths = depthsOf(plan);
+  const matrix = carryMatrix(penalised(moments, order, penalty ?? null), order.length, depths);
+  const rows = carryRows(standardised(moments, [...columns, response], order, weights ?? null), matrix, depths);
+  const scale = moments.scales[columns.length]!;
+  let errors: Float64Array | null = null;
+  walkSubsets(plan, [matrix, rows], (_, depth) => {
+    if (matrix.smallest[depth] === 0 || Number.isNaN(rows.squaredErrors(depth))) return;
+    errors = rows.errors(depth).map((error) => error * scale);
+  });
+  return errors;
+}
+
 interface Rows {
   /** Columns in matrix order, each n: √w (x − m)/c. */
   readonly values: readonly Float64Array[];
@@ -172,7 +196,11 @@ function carryRows({ values, leverages }: Rows, by: Eliminated, depths: number) 
     },
   };
   const squaredErrors = (depth: number): number => pressOf(states[depth]!.values[size - 1]!, states[depth]!.leverages);
-  return { ...carried, squaredErrors };
+  const errors = (depth: number): Float64Array => {
+    const { values: left, leverages: h } = states[depth]!;
+    return left[size - 1]!.map((e, i) => e / (1 - h[i]!));
+  };
+  return { ...carried, squaredErrors, errors };
 }
 
 function addSquares(to: Float64Array, from: Float64Array, z: Float64Array, factor: number): void {

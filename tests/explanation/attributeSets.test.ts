@@ -145,6 +145,36 @@ describe.each([true, false])("every set of four attributes beside the market; ln
     expect(averaged.weights.every(({ weight }) => weight > 0.01)).toBe(true);
   });
 
+  test("averages by stacking: no mixture of the defensible sets errs less on sales priced without themselves", () => {
+    const stacked = found.stacked!;
+    const lists = found.defensible.map((set) => {
+      const { solution, leverages } = fits[set]!;
+      return solution.residuals.map((e, i) => e / (1 - leverages[i]!));
+    });
+    const typical = (weights: readonly number[]): number => {
+      const sum = lists[0]!.reduce((total, _, i) => {
+        return total + weights.reduce((error, weight, k) => error + weight * lists[k]![i]!, 0) ** 2;
+      }, 0);
+      const rms = Math.sqrt(sum / 80);
+      return ln ? Math.expm1(rms) : rms / fit.solution.responseMean;
+    };
+    const weightOf = new Map(stacked.weights.map(({ set, weight }) => [set, weight]));
+    const weights = found.defensible.map((set) => weightOf.get(set) ?? 0);
+    expect(stacked.over).toBe(found.defensible.length);
+    expect(stacked.error / typical(weights)).toBeCloseTo(1, 4);
+    expect(stacked.errorOfBest / found.figures.error[found.defensible[0]!]!).toBeCloseTo(1, 10);
+    expect(stacked.error).toBeLessThanOrEqual(stacked.errorOfBest);
+    const draw = drawFrom(3);
+    for (let trial = 0; trial < 200; trial++) {
+      const raw = weights.map(() => -Math.log(1 - draw()));
+      const total = raw.reduce((sum, one) => sum + one, 0);
+      expect(stacked.error).toBeLessThan(typical(raw.map((one) => one / total)) * (1 + 1e-12));
+    }
+    const mean = weights.reduce((sum, weight, k) => sum + weight * priced[found.defensible[k]!]!.fitted, 0);
+    expect(stacked.price / (ln ? Math.exp(mean) : mean)).toBeCloseTo(1, 4);
+    expect(stacked.addedWidth).toBeGreaterThanOrEqual(0);
+  });
+
   test("is plain JSON data", () => {
     expect(JSON.parse(JSON.stringify(found))).toEqual(found);
   });
@@ -190,6 +220,7 @@ describe("what cannot be said is not said", () => {
     const found = attributeSets({ reference: groups, fit, row, currencyCode: "EUR" });
     expect(found.figures.price[15]! / estimatePrice(fit, row, [], null).amount).toBeCloseTo(1, 11);
     expect([found.figures.low[15], found.figures.aicc[15], found.averaged]).toEqual([null, null, null]);
+    expect(found.stacked).toBeNull();
     expect(found.figures.error[15]).toBeGreaterThan(0);
   });
 
