@@ -44,7 +44,13 @@ function moreOrLess(amount: number, step: number, currencyCode: string): string 
 
 /** "Each extra 1,000 h", "Each extra year of age", "Make Orveld, against Tessaly,", "Coupler, yes against no,", "A sale 12 months later". */
 export function subjectOf(row: Pick<LedgerRow, "attribute" | "label" | "level" | "stepWords">): string {
-  if (row.attribute === MARKET_KEY) return `A sale ${row.stepWords} later`;
+  if (row.attribute === MARKET_KEY) {
+    if (row.level === null) return `A sale ${row.stepWords} later`;
+    return row.stepWords.startsWith("from ")
+      ? `Market movement ${row.stepWords}`
+      : `A sale in ${row.level}, ${row.stepWords},`;
+  }
+  if (row.stepWords.startsWith("from ")) return `${row.label} ${row.stepWords}`;
   if (row.level === null) return `Each extra ${stepOfLabel(row)}`;
   return row.stepWords.startsWith("against")
     ? `${row.label} ${row.level}, ${row.stepWords},`

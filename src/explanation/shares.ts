@@ -5,7 +5,8 @@
  */
 import type { AttributeShare, AttributeShares } from "../domain/attributeSets.ts";
 import { AppError } from "../domain/errors.ts";
-import { listWords } from "../domain/format.ts";
+import { formatSigned, listWords, lowerStart } from "../domain/format.ts";
+import type { ResponseForm } from "../domain/priceModel.ts";
 import { type AveragedShares, averagedShares } from "../numerics/averagedShares.ts";
 import { buildSetTable, type SetTable, type SetTableInput } from "./setTable.ts";
 
@@ -78,4 +79,19 @@ function sentencesOf(shares: readonly AttributeShare[], r2: number): string[] {
     `Of the spread in prices that the model accounts for, averaged over all orders, ${listWords(parts)}.`,
     "These are shares of the spread in these sales, not of what causes a price.",
   ];
+}
+
+/**
+ * Where averaging over orders and the plain rule b(x₀ − x̄) part most, and why; null without a subject or where they agree to
+ * half a percent of price (after ln) or a thousandth of the whole distance.
+ */
+export function distanceSentence({ shares, distance }: AttributeShares, response: ResponseForm): string | null {
+  if (distance === null) return null;
+  const apart = ({ distance: averaged, additive }: AttributeShare): number => Math.abs(averaged! - additive!);
+  const most = [...shares].sort((a, b) => apart(b) - apart(a))[0];
+  const enough = response === "lnPrice" ? 0.005 : Math.abs(distance) / 1000;
+  if (most === undefined || !(apart(most) > enough)) return null;
+  const amount = (part: number): string =>
+    response === "lnPrice" ? `${formatSigned(100 * Math.expm1(part), 1)} %` : formatSigned(part);
+  return `The two rules part most on ${lowerStart(most.label)}: ${amount(most.distance!)} averaged over orders, ${amount(most.additive!)} by its own coefficient alone; averaging shares out what moves together, the plain rule gives all of it to the attribute whose coefficient carries it.`;
 }

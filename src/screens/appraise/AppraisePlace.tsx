@@ -13,6 +13,7 @@ import { NearRows } from "./NearRows.tsx";
 import { NotKnowingView } from "./NotKnowingView.tsx";
 import { NotPriced } from "./NotPriced.tsx";
 import { PullRows } from "./PullRows.tsx";
+import { RangeNote } from "./RangeNote.tsx";
 import { SubjectPane } from "./SubjectPane.tsx";
 
 export function AppraisePlace() {
@@ -62,6 +63,7 @@ function Priced({ bench, appraisal, priced }: PricedProps) {
           basisWords={basisWordsOf(bench)}
         />
       </div>
+      <RangeNote price={priced.price} level={bench.level} step={priceStep(priced.price)} currencyCode={currencyCode} />
       <div className={css.two}>
         <section aria-labelledby="built-up">
           <SectionHeading id="built-up" aside={`money along the path, top to bottom; ${currencyCode}`}>

@@ -25,7 +25,7 @@ export function AttributeRail({ tiles, bench }: { tiles: readonly TileFacts[]; b
   if (model === null) return null;
   const also = [
     ...(isIn(model, CHANNEL_KEY) ? ["sold through"] : []),
-    ...(model.market === "line" ? ["market movement"] : []),
+    ...(model.market === "none" ? [] : ["market movement"]),
   ];
   const justNow = tiles.find((tile) => tile.attribute.key === leftOutJustNow);
   const inSet = tiles.filter((tile) => tile.state !== "outside").length;

@@ -1,5 +1,5 @@
 /** Form of the response, market movement, the channel, and the fit in words. */
-import type { ModelReport } from "../../domain/appraisal.ts";
+import type { FitAccount, ModelReport } from "../../domain/appraisal.ts";
 import { CHANNEL_KEY } from "../../domain/attribute.ts";
 import { formatNumber, formatPercent } from "../../domain/format.ts";
 import type { PriceModel } from "../../domain/priceModel.ts";
@@ -84,8 +84,26 @@ function FitFacts({ report, milliseconds }: { report: ModelReport; milliseconds:
       )}
       <dt>Computed</dt>
       <dd>
-        least squares, equal weights, {PATH_WORDS[path]}; about {formatNumber(digitsToTrust)} digits to trust
+        {PATH_WORDS[path]}; about {formatNumber(digitsToTrust)} digits to trust
         <span className="soft">{time}</span>
+      </dd>
+      {report.fitted === undefined ? null : <FitWords fitted={report.fitted} />}
+    </>
+  );
+}
+
+/** What the fit did to these sales and supposes of them, in sentences. */
+function FitWords({ fitted }: { fitted: FitAccount }) {
+  return (
+    <>
+      <dt>In words</dt>
+      <dd className="small">
+        {fitted.sentence} {fitted.errorsSentence}
+        {fitted.errorsCaution === null ? null : <span className="soft"> {fitted.errorsCaution}</span>}{" "}
+        <span className="soft">{fitted.whichRange}</span>
+        {fitted.notes.map((note) => (
+          <span key={note}> {note}</span>
+        ))}
       </dd>
     </>
   );

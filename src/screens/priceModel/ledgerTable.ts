@@ -62,8 +62,8 @@ export function ledgerColumns(ledger: Ledger): LedgerColumn[] {
   return [...columns, { keys: rest, heading: `for ${rest.length} others`, label: names }];
 }
 
-export function nameOf(row: Pick<LedgerRow, "label" | "level" | "attribute">): string {
-  if (row.level === null || row.level === "yes") return row.label;
+export function nameOf(row: Pick<LedgerRow, "label" | "level" | "attribute" | "stepWords">): string {
+  if (row.level === null || row.level === "yes" || row.stepWords.startsWith("from ")) return row.label;
   return row.attribute === "channel" ? `Sold through ${row.level}` : row.level;
 }
 
