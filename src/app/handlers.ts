@@ -17,6 +17,7 @@ import {
 } from "./assetClasses.ts";
 import { compareModels } from "./compareModels.ts";
 import { openableDemos } from "./demo/demoClasses.ts";
+import { everySet, rememberSets } from "./everySet.ts";
 import { importSales, startClassFromFile } from "./importSales.ts";
 import { issueSheet, previewSheet, verifySheet } from "./issueSheet.ts";
 import { leaveOutHeldBack, listHeldBack, mendHeldBack } from "./mendHeldBack.ts";
@@ -41,6 +42,7 @@ import { listBatches, undoBatch } from "./undoBatch.ts";
 
 export function createHandlers(ports: Ports): Handlers {
   const memory = rememberEvidence();
+  const sets = rememberSets();
   return {
     listClasses: () => listClasses(ports),
     createClass: (input) => createClass(ports, input),
@@ -73,6 +75,7 @@ export function createHandlers(ports: Ports): Handlers {
     currentModel: (input) => currentModel(ports, input),
     appraise: (input) => appraise(ports, memory, input),
     compare: (input) => compareModels(ports, input),
+    everySet: (input) => everySet(ports, memory, sets, input),
     saveEdition: (input) => saveEdition(ports, input),
     previewSheet: (input) => previewSheet(ports, input),
     issueSheet: (input) => issueSheet(ports, input),

@@ -5,6 +5,7 @@
 import { z } from "zod";
 import type { Appraisal } from "../domain/appraisal.ts";
 import type { AssetClass, AssetClassSummary } from "../domain/assetClass.ts";
+import type { EverySet } from "../domain/attributeSets.ts";
 import type { Comparison } from "../domain/comparison.ts";
 import type {
   ColumnMatch,
@@ -207,6 +208,12 @@ const salesQuery = z.object({
 /** One side of a comparison: a saved edition, or a model. */
 const sideChoice = z.union([z.object({ editionId: id }), z.object({ model: priceModelInput })]);
 
+/** Which attribute sets count as defensible. */
+const defensibleRule = z.union([
+  z.object({ kind: z.literal("error"), share: z.number().min(0).max(10) }),
+  z.object({ kind: z.literal("aicc"), distance: z.number().min(0).max(1e6) }),
+]);
+
 const none = z.object({});
 const byClass = z.object({ classId: id });
 const saleIds = z.array(id).min(1).max(100_000);
@@ -251,6 +258,7 @@ export const requestInputs = {
     subject: subjectInput.nullable(),
     level: z.number().gt(0).lt(1),
   }),
+  everySet: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable(), rule: defensibleRule }),
   saveEdition: z.object({ classId: id, model: priceModelInput }),
   listEditions: byClass,
   saveDraft: z.object({ classId: id, subject: subjectInput, engagement: engagementInput.nullable() }),
@@ -329,6 +337,7 @@ export interface RequestOutputs {
   currentModel: { model: PriceModel; edition: Edition | null };
   appraise: { appraisal: Appraisal; dataVersion: number; milliseconds: number };
   compare: Comparison;
+  everySet: EverySet;
   saveEdition: Edition;
   listEditions: readonly Edition[];
   saveDraft: { savedAtUtc: string };

@@ -167,3 +167,24 @@ export interface EverySet extends Omit<AttributeSets, "figures" | "leaveOneOut">
   readonly currencyCode: string;
   readonly response: "price" | "lnPrice";
 }
+
+/** Whether attribute g is in the set. */
+export function hasAttribute(set: number, g: number): boolean {
+  return Math.floor(set / 2 ** g) % 2 === 1;
+}
+
+/**
+ * What a model leaves out so that its attribute set is this one. An attribute that others already say exactly goes as soon as
+ * any goes, else it would come back in place of one of them; what is not known for the item stays as it was.
+ */
+export function leftOutFor(
+  { attributes, alwaysIn, notKnown }: Pick<AttributeSets, "attributes" | "alwaysIn" | "notKnown">,
+  set: number,
+  model: { readonly attributes: readonly { readonly key: string }[]; readonly leftOut: readonly string[] },
+): string[] {
+  const out = attributes.flatMap(({ key }, g) => (hasAttribute(set, g) ? [] : [key]));
+  const looked = new Set([...attributes, ...alwaysIn, ...notKnown].map(({ key }) => key));
+  const repeating = model.attributes.map(({ key }) => key).filter((key) => !looked.has(key));
+  const stay = model.leftOut.filter((key) => notKnown.some((one) => one.key === key) || repeating.includes(key));
+  return [...new Set([...stay, ...out, ...(out.length === 0 ? [] : repeating)])];
+}
