@@ -1,29 +1,38 @@
 /** Runs every check over a fit, the most serious finding first; checks that cannot be run are left out with the reason. */
 import type { Diagnosis, FitDiagnoses } from "../domain/diagnosis.ts";
-import { curvature } from "./diagnostics/curvature.ts";
-import type { Diagnostic } from "./diagnostics/diagnostic.ts";
-import { outlier } from "./diagnostics/outlier.ts";
-import { shape } from "./diagnostics/shape.ts";
-import { spread, spreadWithPrice } from "./diagnostics/spread.ts";
+import { type RowDiagnostics, rowDiagnostics } from "../numerics/rowDiagnostics.ts";
+import { columnsOf, type Diagnostic, type DiagnosticContext } from "./diagnostics/diagnostic.ts";
+import { DIAGNOSTICS } from "./diagnostics/index.ts";
 import type { Fit } from "./fit.ts";
 
-const FAMILY: readonly Diagnostic[] = [spread, spreadWithPrice, shape, curvature, outlier];
 const SEVERITY = { trouble: 0, look: 1, fine: 2 } as const;
 
 export function diagnoseFit(fit: Fit): FitDiagnoses {
   const found: Diagnosis[] = [];
-  const leftOut: { code: Diagnosis["code"]; reason: string }[] = [];
-  for (const diagnostic of FAMILY) {
-    const reason = whyNot(fit, diagnostic);
-    if (reason === null) found.push(diagnostic.run(fit));
-    else leftOut.push({ code: diagnostic.code, reason });
+  const leftOut: { code: Diagnosis["code"]; label: string; reason: string }[] = [];
+  const context = contextOf(fit);
+  for (const diagnostic of DIAGNOSTICS) {
+    const { code, label } = diagnostic;
+    const finding = whyNot(fit, diagnostic) ?? diagnostic.run(fit, context);
+    if (typeof finding === "string") leftOut.push({ code, label, reason: finding });
+    else found.push({ code, label, ...finding });
   }
-  found.sort((a, b) => SEVERITY[a.verdict] - SEVERITY[b.verdict] || a.p - b.p);
+  found.sort((a, b) => SEVERITY[a.verdict] - SEVERITY[b.verdict] || (a.p ?? 1) - (b.p ?? 1));
   return { found, leftOut };
 }
 
-function whyNot({ columns, rule, solution }: Fit, { needs }: Diagnostic): string | null {
-  if (rule.weights !== null || rule.penalty !== null)
+export function contextOf(fit: Fit): DiagnosticContext {
+  let rows: RowDiagnostics | null = null;
+  return {
+    rows: () => {
+      rows ??= rowDiagnostics(columnsOf(fit), fit.design.response, fit.solution, fit.rule.weights);
+      return rows;
+    },
+  };
+}
+
+function whyNot({ columns, rule, solution }: Fit, { needs, underWeights }: Diagnostic): string | null {
+  if (!underWeights && (rule.weights !== null || rule.penalty !== null))
     return "The check holds for least squares with equal weights and without a penalty.";
   if (columns.length === 0) return "The model has no attributes.";
   if (solution.residualDf < needs) return "There are too few sales for so many attributes.";

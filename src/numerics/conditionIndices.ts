@@ -5,7 +5,7 @@
  * tied to d_k: φ_jk/Σφ_jk with φ_jk = (v_jk/d_k)². From the root of the inverse and not from cross-products, whose condition
  * is the square: (Z′Z)⁻¹ = (LG)(LG)′, L the lengths, G = [[1/√n, −x̄′T], [0, T]] with C⁻¹ = TT′, and LG = V·D⁻¹·W′.
  */
-import { Matrix, SVD } from "ml-matrix";
+import { determinant, Matrix, SVD } from "ml-matrix";
 import type { LeastSquaresSolution } from "./solveLeastSquares.ts";
 
 export interface ConditionIndices {
@@ -59,4 +59,20 @@ function decompose(g: Matrix): ConditionIndices {
     for (let c = 0; c < q; c++) proportions[j * q + c]! /= sum;
   }
   return { singularValues, indices: singularValues.map((d) => singularValues[0]! / d), proportions };
+}
+
+/**
+ * Generalised variance inflation of a group of columns, det R_gg·det Q_gg with R the correlations and Q their inverse
+ * (Fox & Monette 1992), from centred cross-products and their inverse, k × k in raw units. One column gives its VIF.
+ */
+export function generalisedInflation(
+  crossProducts: Float64Array,
+  inverse: Float64Array,
+  k: number,
+  group: readonly number[],
+): number {
+  const lengths = group.map((j) => Math.sqrt(crossProducts[j * k + j]!));
+  const scaled = (matrix: Float64Array, power: 1 | -1) =>
+    new Matrix(group.map((j, a) => group.map((l, b) => matrix[j * k + l]! * (lengths[a]! * lengths[b]!) ** power)));
+  return Math.max(1, determinant(scaled(crossProducts, -1)) * determinant(scaled(inverse, 1)));
 }

@@ -1,4 +1,4 @@
-/** Upper tails of the F and chi-squared distributions, never as 1 − cdf (Abramowitz & Stegun 26.6.2, 26.4.4, 26.4.5). */
+/** Upper tails of the F, normal and chi-squared distributions, never as 1 − cdf (Abramowitz & Stegun 26.6.2, 26.4.4, 26.4.5). */
 import betainc from "@stdlib/math-base-special-betainc";
 import { tTwoSided } from "./studentT.ts";
 
@@ -10,6 +10,12 @@ export function fUpperTail(f: number, a: number, b: number): number {
 
 /** From so many degrees of freedom on, Student's t is the normal distribution to the last digit for |t| below some 40. */
 const NORMAL_DF = 1e20;
+
+/** P(Z > z) of the normal distribution. */
+export function normalUpperTail(z: number): number {
+  const half = tTwoSided(z, NORMAL_DF) / 2;
+  return z >= 0 ? half : 1 - half;
+}
 
 /**
  * P(χ² > x) with a whole number of degrees of freedom: e^(−x/2) or the two-sided normal tail, plus one positive term for

@@ -5,7 +5,9 @@ import { columnsOf, type Diagnostic, standardisedFitted, verdictOf } from "./dia
 
 export const curvature: Diagnostic = {
   code: "curvature",
+  label: "Missing curvature",
   needs: 3,
+  underWeights: false,
   run: (fit) => {
     const z = standardisedFitted(fit);
     const columns = [...columnsOf(fit), z.map((value) => value ** 2), z.map((value) => value ** 3)];
@@ -15,8 +17,6 @@ export const curvature: Diagnostic = {
     const statistic = explained / 2 / (longer.residualSumOfSquares / longer.residualDf);
     const p = fUpperTail(statistic, 2, longer.residualDf);
     return {
-      code: "curvature",
-      label: "Missing curvature",
       statistic,
       df: [2, longer.residualDf],
       p,

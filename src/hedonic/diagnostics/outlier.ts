@@ -1,23 +1,25 @@
-/** Is the sale furthest from the model of the others further than chance allows? n·P(|T| > max |t|), at most 1 (Bonferroni). */
-import { rowDiagnostics } from "../../numerics/rowDiagnostics.ts";
+/**
+ * Is the sale furthest from the model of the others further than chance allows? n·P(|T| > max |t|), at most 1, t externally
+ * studentised (Beckman & Trussell 1974) with Bonferroni's bound.
+ */
 import { tTwoSided } from "../../numerics/studentT.ts";
-import { columnsOf, type Diagnostic, verdictOf } from "./diagnostic.ts";
+import { type Diagnostic, verdictOf, worstSales } from "./diagnostic.ts";
 
 export const outlier: Diagnostic = {
   code: "outlier",
+  label: "Sale furthest out",
   needs: 2,
-  run: (fit) => {
-    const { externallyStudentised } = rowDiagnostics(columnsOf(fit), fit.design.response, fit.solution);
+  underWeights: false,
+  run: (fit, context) => {
+    const { externallyStudentised } = context.rows();
     // A sale that is the only one of its kind has no distance from the others.
-    const statistic = externallyStudentised.reduce(
-      (most, t) => (Number.isNaN(t) ? most : Math.max(most, Math.abs(t))),
-      0,
-    );
+    const size = (i: number) => Math.abs(externallyStudentised[i]!) || 0;
+    let statistic = 0;
+    for (let i = 0; i < fit.design.n; i++) statistic = Math.max(statistic, size(i));
     const df = fit.solution.residualDf - 1;
-    const p = Math.min(1, fit.design.n * tTwoSided(statistic, df));
+    const chance = (t: number) => Math.min(1, fit.design.n * tTwoSided(t, df));
+    const p = chance(statistic);
     return {
-      code: "outlier",
-      label: "Sale furthest out",
       statistic,
       df: [df],
       p,
@@ -30,7 +32,8 @@ export const outlier: Diagnostic = {
         p < 0.05
           ? "Check the record of that sale; set it aside only for a reason that can be written down."
           : "Nothing.",
-      source: "Belsley, Kuh & Welsch 1980; Bonferroni",
+      source: "Beckman & Trussell 1974; Bonferroni",
+      sales: worstSales(fit, size, (i) => size(i) > 3 && chance(size(i)) < 0.05),
     };
   },
 };

@@ -4,7 +4,9 @@ import { type Diagnostic, verdictOf } from "./diagnostic.ts";
 
 export const shape: Diagnostic = {
   code: "shape",
+  label: "Normal residuals",
   needs: 1,
+  underWeights: false,
   run: ({ solution: { residuals } }) => {
     const n = residuals.length;
     const moment = (power: number) => residuals.reduce((sum, e) => sum + e ** power, 0) / n;
@@ -14,8 +16,6 @@ export const shape: Diagnostic = {
     const statistic = (n / 6) * (skewness ** 2 + excess ** 2 / 4);
     const p = chiSquaredUpperTail(statistic, 2);
     return {
-      code: "shape",
-      label: "Normal residuals",
       statistic,
       df: [2],
       p,

@@ -10,13 +10,13 @@ const WHAT_TO_DO =
 
 export const spread: Diagnostic = {
   code: "spread",
+  label: "Even spread",
   needs: 1,
+  underWeights: false,
   run: (fit) => {
     const statistic = explainedSquares(columnsOf(fit), fit.solution);
     const p = chiSquaredUpperTail(statistic, fit.columns.length);
     return {
-      code: "spread",
-      label: "Even spread",
       statistic,
       df: [fit.columns.length],
       p,
@@ -33,14 +33,14 @@ export const spread: Diagnostic = {
 
 export const spreadWithPrice: Diagnostic = {
   code: "spreadWithPrice",
+  label: "Spread and price",
   needs: 1,
+  underWeights: false,
   run: (fit) => {
     const z = standardisedFitted(fit);
     const statistic = explainedSquares([z, z.map((value) => value * value)], fit.solution);
     const p = chiSquaredUpperTail(statistic, 2);
     return {
-      code: "spreadWithPrice",
-      label: "Spread and price",
       statistic,
       df: [2],
       p,

@@ -1,6 +1,7 @@
 /** Checks of a fit against 45-digit values: tests/reference/README.md (houseprices, diamonds600). */
 import { describe, expect, test } from "vitest";
 import { diagnoseFit } from "../../../src/hedonic/diagnoseFit.ts";
+import { DIAGNOSTICS } from "../../../src/hedonic/diagnostics/index.ts";
 import { fitColumns } from "../../../src/hedonic/fitPriceModel.ts";
 import { publishedDesign } from "../../fixtures/plainDesign.ts";
 import { referenceChecks } from "../../fixtures/referenceChecks.ts";
@@ -26,7 +27,7 @@ describe.each([
     expect(Math.abs(found.statistic / wanted[statistic] - 1)).toBeLessThan(tolerance);
     expect(found.df).toEqual([wanted.df].flat());
     // A tail multiplies the relative error of its statistic by about half of it.
-    if (wanted.p > 0) expect(Math.abs(found.p / wanted.p - 1)).toBeLessThan(tolerance * (1 + found.statistic));
+    if (wanted.p > 0) expect(Math.abs(found.p! / wanted.p - 1)).toBeLessThan(tolerance * (1 + found.statistic));
   });
 
   test("the sale furthest out is the published one", () => {
@@ -35,9 +36,16 @@ describe.each([
     expect(Math.abs(found.statistic / most - 1)).toBeLessThan(tolerance);
   });
 
-  test("nothing is said of a weighted fit, and the reason is given", () => {
+  test("of a weighted fit only what holds under weights is said, and of the rest the reason", () => {
     const weighted = diagnoseFit({ ...fit, rule: { weights: new Float64Array(design.n).fill(1), penalty: null } });
-    expect(weighted.found).toEqual([]);
-    expect(weighted.leftOut).toHaveLength(5);
+    expect(weighted.found.map(({ code }) => code).sort()).toEqual(["collinearity", "influence"]);
+    expect(weighted.leftOut).toHaveLength(DIAGNOSTICS.length - 2);
+    for (const { reason } of weighted.leftOut) expect(reason).toContain("equal weights");
+  });
+
+  test("every check is run once, the most serious finding first", () => {
+    expect(diagnoses.found.map(({ code }) => code).sort()).toEqual(DIAGNOSTICS.map(({ code }) => code).sort());
+    const severity = diagnoses.found.map(({ verdict }) => ["trouble", "look", "fine"].indexOf(verdict));
+    expect(severity).toEqual([...severity].sort());
   });
 });
