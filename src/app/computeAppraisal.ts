@@ -48,6 +48,8 @@ export interface ComputedAppraisal {
   /** The fit in use and the subject on its columns, for what is worked out beside the result. */
   readonly fit: Fit;
   readonly row: SubjectRow | null;
+  /** Errors under the model's rule; null at an even spread with every sale counting alike. */
+  readonly errors: FitErrors | null;
   /** Groups of the reference set after exact dependencies, in the model or not. */
   readonly reference: readonly AttributeGroup[];
 }
@@ -90,6 +92,7 @@ export function computeAppraisal(input: AppraisalInput, prepared = prepareEviden
     used,
     fit: short,
     row,
+    errors,
     reference: resolved.referenceGroups,
   };
 }

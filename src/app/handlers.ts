@@ -15,6 +15,7 @@ import {
   describeClass,
   listClasses,
 } from "./assetClasses.ts";
+import { checkHealth } from "./checkHealth.ts";
 import { compareModels } from "./compareModels.ts";
 import { openableDemos } from "./demo/demoClasses.ts";
 import { everySet, rememberSets } from "./everySet.ts";
@@ -75,6 +76,7 @@ export function createHandlers(ports: Ports): Handlers {
     currentModel: (input) => currentModel(ports, input),
     appraise: (input) => appraise(ports, memory, input),
     compare: (input) => compareModels(ports, input),
+    health: (input) => checkHealth(ports, memory, input),
     everySet: (input) => everySet(ports, memory, sets, input),
     saveEdition: (input) => saveEdition(ports, input),
     previewSheet: (input) => previewSheet(ports, input),

@@ -16,6 +16,7 @@ import type {
   ReadingOptions,
   StoredHeldBackRow,
 } from "../domain/importRecord.ts";
+import type { ModelHealth } from "../domain/modelHealth.ts";
 import type { Edition, PriceModel } from "../domain/priceModel.ts";
 import type { Sale } from "../domain/sale.ts";
 import type { SheetRecord, VerificationReport } from "../domain/sheetRecord.ts";
@@ -258,6 +259,7 @@ export const requestInputs = {
     subject: subjectInput.nullable(),
     level: z.number().gt(0).lt(1),
   }),
+  health: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable() }),
   everySet: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable(), rule: defensibleRule }),
   saveEdition: z.object({ classId: id, model: priceModelInput }),
   listEditions: byClass,
@@ -337,6 +339,7 @@ export interface RequestOutputs {
   currentModel: { model: PriceModel; edition: Edition | null };
   appraise: { appraisal: Appraisal; dataVersion: number; milliseconds: number };
   compare: Comparison;
+  health: ModelHealth;
   everySet: EverySet;
   saveEdition: Edition;
   listEditions: readonly Edition[];

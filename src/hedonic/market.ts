@@ -107,8 +107,13 @@ interface Quarter {
   readonly from: number;
 }
 
+/** "2024 Q3" */
+export function quarterWords(quarter: number): string {
+  return `${Math.floor(quarter / 4)} Q${(quarter % 4) + 1}`;
+}
+
 /** Quarters since year 0. */
-function quarterOf(day: number): number {
+export function quarterOf(day: number): number {
   const [year, month] = dayOf(day).split("-").map(Number) as [number, number];
   return year * 4 + Math.floor((month - 1) / 3);
 }
@@ -120,7 +125,7 @@ function quarters(soldOn: Float64Array): MarketColumns {
   const kept: Quarter[] = [];
   const joined: string[] = [];
   for (const [quarter, count] of [...counts].sort((a, b) => a[0] - b[0])) {
-    const name = `${Math.floor(quarter / 4)} Q${(quarter % 4) + 1}`;
+    const name = quarterWords(quarter);
     const before = kept.at(-1);
     if (before !== undefined && (count < FEW_SALES || before.count < FEW_SALES)) {
       before.count += count;

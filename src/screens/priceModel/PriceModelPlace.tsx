@@ -3,9 +3,10 @@ import { useMemo } from "react";
 import { hrefOf, useRoute } from "../frame/useRoute.ts";
 import { Busy, EmptyState, ErrorNote, PaneLayout, SubPlaces, TextLink } from "../parts/index.ts";
 import { useActs } from "../workbench/acts.ts";
-import { useWorkbench } from "../workbench/workbench.ts";
+import { useWorkbench, type Workbench } from "../workbench/workbench.ts";
 import { AttributeRail } from "./AttributeRail.tsx";
-import { CompareChoice, CompareOutcome, useCompare } from "./CompareModels.tsx";
+import { CompareChoice, CompareOutcome, type CompareState, useCompare } from "./CompareModels.tsx";
+import { HealthOutcome } from "./ModelHealth.tsx";
 import { ModelOutcome } from "./ModelOutcome.tsx";
 import { ModelPane } from "./ModelPane.tsx";
 import { switchAttribute } from "./modelChanges.ts";
@@ -14,6 +15,7 @@ import { tilesOf } from "./tiles.ts";
 
 const VIEWS: readonly { readonly sub: string | null; readonly href: string; readonly label: string }[] = [
   { sub: null, href: hrefOf("price-model"), label: "Fit and ledger" },
+  { sub: "health", href: hrefOf("price-model", "health"), label: "Health" },
   { sub: "compare", href: hrefOf("price-model", "compare"), label: "Compare" },
 ];
 
@@ -64,8 +66,19 @@ export function PriceModelPlace() {
             {sub === "compare" ? <CompareChoice state={compare} /> : <ModelPane bench={bench} model={model} />}
           </>
         }
-        right={sub === "compare" ? <CompareOutcome bench={bench} state={compare} /> : <ModelOutcome bench={bench} />}
+        right={<Outcome sub={sub} bench={bench} compare={compare} />}
       />
     </div>
   );
+}
+
+interface OutcomeProps {
+  readonly sub: string | null;
+  readonly bench: Workbench;
+  readonly compare: CompareState;
+}
+
+function Outcome({ sub, bench, compare }: OutcomeProps) {
+  if (sub === "compare") return <CompareOutcome bench={bench} state={compare} />;
+  return sub === "health" ? <HealthOutcome bench={bench} /> : <ModelOutcome bench={bench} />;
 }

@@ -36,9 +36,10 @@ describe("changes of a price model", () => {
     expect(gone.leftOut).toEqual([]);
     expect(gone.attributes.map((one) => one.key)).toEqual(["make"]);
   });
-  test("a number goes from line to ln and back, a choice stays a choice", () => {
+  test("a number goes from line to ln to a curve and back, a choice stays a choice", () => {
     expect(cycleForm(model, "hours").attributes[0]!.form).toBe("ln");
-    expect(cycleForm(cycleForm(model, "hours"), "hours").attributes[0]!.form).toBe("line");
+    expect(cycleForm(cycleForm(model, "hours"), "hours").attributes[0]!.form).toBe("spline");
+    expect(cycleForm(cycleForm(cycleForm(model, "hours"), "hours"), "hours").attributes[0]!.form).toBe("line");
     expect(cycleForm(model, "make").attributes[1]!.form).toBe("choice");
   });
   test("an exact dependency is resolved by one of its choices, and others left out stay out", () => {

@@ -3,6 +3,7 @@ import type { Verb } from "../verb.ts";
 import { compareVerb } from "./compare.ts";
 import { demoVerb } from "./demo.ts";
 import { digitsVerb } from "./digits.ts";
+import { healthVerb } from "./health.ts";
 import { importVerb } from "./import.ts";
 import { priceVerb } from "./price.ts";
 import { refitVerb } from "./refit.ts";
@@ -17,6 +18,7 @@ export const VERBS: readonly Verb[] = [
   refitVerb,
   priceVerb,
   compareVerb,
+  healthVerb,
   sheetVerb,
   verifyVerb,
   serveVerb,
