@@ -58,6 +58,7 @@ export interface SetSwitch {
   readonly label: string;
   readonly pairs: number;
   readonly mean: number | null;
+  readonly span: Span | null;
   /** Over pairs of which both are defensible; null without one. */
   readonly meanDefensible: number | null;
   /** In every defensible set, in none, or in some. */
@@ -115,7 +116,13 @@ export interface AttributeSets {
   readonly movesMost: string | null;
   readonly averaged: AveragedPrice | null;
   readonly stacked: StackedPrice | null;
-  /** True sentences for the head of the picture. */
+  /** The span of the price in words, or what is in its place. */
+  readonly headline: string;
+  /** Which coefficients change sign, over all sets and over the defensible ones. */
+  readonly turns: string;
+  /** How much of the averaged price's range is doubt about the set; null without an average. */
+  readonly doubt: string | null;
+  /** Everything there is to say, these three among it. */
   readonly sentences: readonly string[];
 }
 

@@ -3,12 +3,12 @@
  * how far price and coefficients move over them, and the price averaged over sets. All sets on the same sales, at the weights
  * and penalties of the fit in use. Ranges as in estimatePrice: ŷ₀ ± t·s·√(1 + h₀).
  */
-import type { AttributeSets, DefensibleRule, SetFigures, Span } from "../domain/attributeSets.ts";
+import type { AttributeSets, DefensibleRule, SetFigures } from "../domain/attributeSets.ts";
 import { USUAL_RULE } from "../domain/attributeSets.ts";
-import { formatMoney, listWords } from "../domain/format.ts";
 import { tUpperQuantile } from "../numerics/studentT.ts";
 import { generalisedErrors } from "../numerics/subsetErrors.ts";
 import { averagedPrice, type SetPrices } from "./averagedPrice.ts";
+import { setSentences } from "./setSentences.ts";
 import { coefficientSpans, setSwitches, spanOf } from "./setSpans.ts";
 import {
   backFrom,
@@ -88,7 +88,7 @@ export function judgeSets(looked: LookedAtSets, rule: DefensibleRule = USUAL_RUL
     stacked: fit.rule.penalty === null ? stackedPrice(sets, prices, defensible, looked.kept) : null,
   };
   const untested = offered.filter((set) => Number.isNaN(error[set]!)).length;
-  return { ...result, sentences: sentencesOf(result, offered.length, untested, currencyCode) };
+  return { ...result, ...setSentences(result, offered.length, untested, currencyCode) };
 }
 
 /** Fitted price, variance for one sale and AICc per set; NaN where the set is not offered, not determined or has no freedom. */
@@ -181,41 +181,4 @@ function movesMost(switches: AttributeSets["switches"], now: number): string | n
     priceSwitched === null || Number.isNaN(now) ? -1 : Math.abs(priceSwitched - now);
   const most = [...switches].sort((a, b) => move(b) - move(a))[0];
   return most === undefined || move(most) < 0 ? null : most.key;
-}
-
-function sentencesOf(
-  result: Omit<AttributeSets, "sentences">,
-  offered: number,
-  untested: number,
-  currencyCode: string,
-): string[] {
-  const { defensible, price, averaged, rule, errorKind, coefficients, alwaysIn } = result;
-  const which =
-    rule.kind === "error"
-      ? `error within ${Math.round(rule.share * 100)} % of the best`
-      : `AICc within ${rule.distance} of the best`;
-  const how =
-    errorKind === "leave-one-out" ? "each sale priced without itself" : "each tenth of the sales priced by the rest";
-  const counted = `${defensible.length} of ${offered} attribute sets are defensible: ${which}, ${how}.`;
-  const turning = coefficients.filter(({ defensibleSigns: { above, below } }) => above > 0 && below > 0);
-  const names = turning.map(({ label, level }) => (level === null ? label : `${label} ${level}`));
-  const turns =
-    turning.length === 0
-      ? "No coefficient changes sign among the defensible ones."
-      : `Among the defensible ones the sign of ${listWords(names)} changes with the set.`;
-  const others = alwaysIn.map(({ label }) => label);
-  const cannot = `${untested} of them cannot be tested so: without some sale or tenth a coefficient is not determined.`;
-  return [
-    counted,
-    ...(untested === 0 ? [] : [cannot]),
-    ...(price === null ? [] : [spanSentence(price, averaged?.price ?? null, currencyCode)]),
-    ...(defensible.length > 1 ? [turns] : []),
-    ...(others.length === 0 ? [] : [`In every set: ${listWords(others)}.`]),
-  ];
-}
-
-function spanSentence({ low, high }: Span, averaged: number | null, currencyCode: string): string {
-  const money = (amount: number): string => formatMoney(amount, currencyCode);
-  const span = `Whichever defensible set is used, the price lies between ${money(low)} and ${money(high)}`;
-  return averaged === null ? `${span}.` : `${span}; averaged by Akaike weight over all sets it is ${money(averaged)}.`;
 }

@@ -91,6 +91,7 @@ export function setSwitches(sets: SetTable, prices: Float64Array, defensible: re
       label,
       pairs: changes.length,
       mean: meanOf(changes),
+      span: spanOf(changes),
       meanDefensible: meanOf(defensibleChanges),
       inDefensible: having === 0 ? "never" : having === defensible.length ? "always" : "sometimes",
       priceSwitched: Number.isNaN(switched) ? null : switched,
