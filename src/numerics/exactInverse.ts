@@ -4,7 +4,7 @@
  * work of plain cross-products, so the caller decides when it is worth it.
  * Symbols: Z n × k centred, scaled; C = Z′WZ + Λ = R′R; T = R⁻¹ so that C⁻¹ = TT′.
  */
-import type { Centring } from "./centreColumns.ts";
+import type { Centring } from "./centring.ts";
 import {
   add,
   type DoubleDouble,

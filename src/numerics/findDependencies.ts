@@ -1,16 +1,17 @@
 /**
  * Exact linear dependencies among columns, in the order the columns stand: an earlier column is kept, a later one that is
- * a combination of kept ones (and the constant) is dependent. Gram–Schmidt, each projection done twice (Giraud, Langou &
- * Rozložník 2005), on centred and scaled columns; then the coefficients are read off and made as simple as they can be.
+ * a combination of kept ones (and the constant) is dependent. The rows of centred, scaled columns are reduced to a triangle, and
+ * Gram–Schmidt goes over its columns, each projection done twice (Giraud, Langou & Rozložník 2005); then the coefficients are
+ * read off and made as simple as they can be.
  * A column depends on others when what is left of it is below RELATIVE_TOLERANCE of its centred length, plus what storing
  * its values as doubles may have cost. 1.36 × kW, exact in decimals only, is found; kW rounded to a whole hp is not.
  */
 
 import { accumulateMoments, type Moments } from "./accumulateMoments.ts";
-import { centreColumns, measureCentring, storedError } from "./centreColumns.ts";
+import { type Centring, centringOf, storedError } from "./centring.ts";
 import { choleskyFactor, invertUpper, scaledCondition, timesOwnTranspose } from "./choleskyFactor.ts";
 import { type Column, numbersOf } from "./column.ts";
-import { checkColumns } from "./numericsError.ts";
+import { reduceRows } from "./reduceRows.ts";
 import { type Ratio, simplestRatio } from "./simplestRatio.ts";
 
 export interface DependencyTerm {
@@ -48,19 +49,17 @@ const NO_PART = 1e-8;
 export function findDependencies(given: readonly Column[], options: DependencyOptions): Dependencies {
   // A choice of one level makes no column: a model of nothing else has none to compare, which is no error.
   if (given.length === 0) return { kept: [], dependent: [] };
-  if (areClearlyIndependent(options.moments ?? accumulateMoments(given), options)) {
-    return { kept: [...given.keys()], dependent: [] };
-  }
+  const moments = options.moments ?? accumulateMoments(given);
+  if (areClearlyIndependent(moments, options)) return { kept: [...given.keys()], dependent: [] };
+  const centring = centringOf(moments, options.intercept);
+  const centred = triangleOf(given, centring);
   const columns = given.map(numbersOf);
-  checkColumns(columns);
-  const centring = measureCentring(columns, options.intercept);
-  const centred = centreColumns(columns, centring);
   const basis: Basis = { vectors: [], rows: [], columns: [] };
   const dependent: Dependency[] = [];
   columns.forEach((column, j) => {
     const z = centred[j]!;
     const length = Math.sqrt(dotOf(z, z));
-    const stored = (storedError(column) / centring.scales[j]!) * Math.sqrt(column.length) * 4;
+    const stored = (storedError(given[j]!) / centring.scales[j]!) * Math.sqrt(column.length) * 4;
     const floor = Math.max((options.relativeTolerance ?? RELATIVE_TOLERANCE) * length, stored);
     const parts = project(basis, z);
     const rest = Math.sqrt(dotOf(parts.rest, parts.rest));
@@ -75,6 +74,21 @@ export function findDependencies(given: readonly Column[], options: DependencyOp
     }
   });
   return { kept: basis.columns, dependent };
+}
+
+/**
+ * The columns of R with Z = QR, Z centred and scaled: k numbers stand for n rows, as lengths and angles among them are those
+ * among the columns of Z.
+ */
+function triangleOf(columns: readonly Column[], centring: Centring): Float64Array[] {
+  const q = columns.length + 1;
+  const none = {
+    means: [...centring.means, { hi: 0, lo: 0 }],
+    spreads: centring.spreads,
+    scales: Float64Array.of(...centring.scales, 1),
+  };
+  const r = reduceRows(columns, new Float64Array(columns[0]!.length), none, null, null);
+  return columns.map((_, j) => Float64Array.from({ length: q }, (__, i) => (i <= j ? r[i * q + j]! : 0)));
 }
 
 /** What is left of a column beside the others is at least its length over the condition number; far from what is looked for. */
@@ -141,7 +155,7 @@ function describe(
   columns: readonly Float64Array[],
   j: number,
   scaled: readonly { column: number; coefficient: number }[],
-  centring: ReturnType<typeof measureCentring>,
+  centring: Centring,
   intercept: boolean,
 ): Dependency {
   const target = columns[j]!;

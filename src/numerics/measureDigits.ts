@@ -4,8 +4,8 @@
  * independent storing errors d_j of column j and d_y of the response, uniform within half a unit in the last place:
  * var b_j ≈ ⅓[(C⁻¹)_jj (Σ_k b_k² d_k² + d_y²) + Σ_k (C⁻¹)_jk² d_k² e′e] (Stewart & Sun 1990, ch. III, for the two terms).
  */
-import { storedError } from "./centreColumns.ts";
-import { type Column, isIndicator } from "./column.ts";
+import { storedError } from "./centring.ts";
+import type { Column } from "./column.ts";
 import type { Refined } from "./refineCoefficients.ts";
 
 export interface FittedParts {
@@ -20,7 +20,7 @@ export interface FittedParts {
 export function measureDigits(columns: readonly Column[], response: Float64Array, parts: FittedParts): number {
   const k = columns.length;
   const { slopes, inverse, standardErrors } = parts;
-  const stored = columns.map((column) => (isIndicator(column) ? 0 : storedError(column) ** 2));
+  const stored = columns.map((column) => storedError(column) ** 2);
   const spread = stored.reduce((total, d, j) => total + d * slopes[j]! ** 2, storedError(response) ** 2);
   let worst = leftOver(parts.refined.corrections);
   for (let j = 0; j < k; j++) {

@@ -3,7 +3,7 @@
  * tall-skinny QR (Demmel, Grigori, Hoemmen & Langou 2012) over tiles of centred, scaled rows, then one tile for the penalties.
  * Symbols: z_ij = √w_i (x_ij − m_j)/c_j, the response last; R upper triangular with R′R = Z′Z + Λ.
  */
-import type { Centring } from "./centreColumns.ts";
+import type { Centring } from "./centring.ts";
 import type { Column } from "./column.ts";
 import { currentKernel } from "./kernels/currentKernel.ts";
 import { blocksOf, COLUMN_BYTES, putBlock, putColumn } from "./kernels/designBlocks.ts";

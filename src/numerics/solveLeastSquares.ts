@@ -7,7 +7,7 @@
  * C⁻¹ = TT′, s² = e′We/(n − p).
  */
 import { accumulateMoments, type Moments } from "./accumulateMoments.ts";
-import { type Centring, centringOf } from "./centreColumns.ts";
+import { type Centring, centringOf } from "./centring.ts";
 import { choleskyFactor, invertUpper, scaledCondition, solveByRoot, timesOwnTranspose } from "./choleskyFactor.ts";
 import { type Column, numbersOf } from "./column.ts";
 import type { DoubleDouble } from "./doubleDouble.ts";

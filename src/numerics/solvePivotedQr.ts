@@ -4,7 +4,7 @@
  * Symbols: Z n × k centred (with an intercept), weighted and scaled; ZP = QR, T = PR⁻¹ in raw units: (X′WX + Λ)⁻¹ = TT′.
  */
 import { accumulateMoments } from "./accumulateMoments.ts";
-import { type Centring, centringOf } from "./centreColumns.ts";
+import { type Centring, centringOf } from "./centring.ts";
 import { invertUpper, scaledCondition, timesOwnTranspose } from "./choleskyFactor.ts";
 import type { Column } from "./column.ts";
 import { NumericsError } from "./numericsError.ts";

@@ -2,8 +2,10 @@
  * Columns moved to mean zero and scaled by powers of two, and what storing them as doubles may have cost.
  * Symbols: n rows, k columns; m means in double-double; c scales; z_ij = (x_ij − m_j)/c_j.
  */
-import { type Moments, powerOfTwoNear, rootMeanSquare } from "./accumulateMoments.ts";
-import { type DoubleDouble, mean } from "./doubleDouble.ts";
+
+import { type Moments, powerOfTwoNear } from "./accumulateMoments.ts";
+import { type Column, isIndicator } from "./column.ts";
+import type { DoubleDouble } from "./doubleDouble.ts";
 
 export interface Centring {
   /** Means in double-double, k; zeros when the columns are not centred. */
@@ -14,14 +16,7 @@ export interface Centring {
   readonly scales: Float64Array;
 }
 
-/** Means, spreads and scales of the columns; without `centred` the means are zero and spreads are about zero. */
-export function measureCentring(columns: readonly Float64Array[], centred: boolean): Centring {
-  const means = columns.map((column) => (centred ? mean(column) : { hi: 0, lo: 0 }));
-  const spreads = Float64Array.from(columns, (column, j) => rootMeanSquare(column, means[j]!.hi, means[j]!.lo));
-  return { means, spreads, scales: spreads.map(powerOfTwoNear) };
-}
-
-/** The same from moments: about the weighted means, or about zero. */
+/** Means, spreads and scales from moments: about the weighted means, or about zero. */
 export function centringOf(moments: Moments, centred: boolean): Centring {
   const { means, meanTails, scales, weightSum, crossProducts } = moments;
   const q = scales.length;
@@ -36,22 +31,12 @@ export function centringOf(moments: Moments, centred: boolean): Centring {
   return { means: Array.from(means, () => ({ hi: 0, lo: 0 })), spreads, scales: spreads.map(powerOfTwoNear) };
 }
 
-/** New columns z. */
-export function centreColumns(columns: readonly Float64Array[], centring: Centring): Float64Array[] {
-  return columns.map((column, j) => {
-    const { hi, lo } = centring.means[j]!;
-    const factor = 1 / centring.scales[j]!;
-    const z = new Float64Array(column.length);
-    for (let i = 0; i < z.length; i++) z[i] = (column[i]! - hi - lo) * factor;
-    return z;
-  });
-}
-
 /**
  * Largest error that storing a column's values as doubles can have caused: 0 for whole numbers below 2^53, which are
  * stored exactly, else half a unit in the last place of the largest value.
  */
-export function storedError(column: Float64Array): number {
+export function storedError(column: Column): number {
+  if (isIndicator(column)) return 0;
   const isWhole = column.every(Number.isInteger);
   let largest = 0;
   for (let i = 0; i < column.length; i++) largest = Math.max(largest, Math.abs(column[i]!));
