@@ -6,7 +6,7 @@
  */
 
 import type { Moments } from "../../numerics/accumulateMoments.ts";
-import { type Column, valueAt } from "../../numerics/column.ts";
+import { type Column, numbersOf, rowsOf } from "../../numerics/column.ts";
 import { fUpperTail } from "../../numerics/testTails.ts";
 import type { Fit } from "../fit.ts";
 import { columnsOf, type Diagnostic, momentsOfMade, product, verdictOf } from "./diagnostic.ts";
@@ -77,16 +77,22 @@ export function expectedOrder(fit: Fit): { mean: number; variance: number } {
 
 /** x_t+1 − x_t. */
 function differences(column: Column, start: number, size: number): Float64Array {
-  return Float64Array.from({ length: size }, (_, t) => valueAt(column, start + t + 1) - valueAt(column, start + t));
+  const x = numbersOf(rowsOf(column, start, start + size + 1));
+  const result = new Float64Array(size);
+  for (let t = 0; t < size; t++) result[t] = x[t + 1]! - x[t]!;
+  return result;
 }
 
 /** (Ax)_t = (x_t − x_t−1) − (x_t+1 − x_t), with no difference beyond either end. */
 function bendings(column: Column, n: number, start: number, size: number): Float64Array {
-  return Float64Array.from({ length: size }, (_, at) => {
-    const t = start + at;
-    const x = valueAt(column, t);
-    return (t > 0 ? x - valueAt(column, t - 1) : 0) + (t < n - 1 ? x - valueAt(column, t + 1) : 0);
-  });
+  const from = Math.max(0, start - 1);
+  const x = numbersOf(rowsOf(column, from, Math.min(n, start + size + 1)));
+  const result = new Float64Array(size);
+  for (let at = 0, t = start - from; at < size; at++, t++) {
+    const before = t > 0 ? x[t]! - x[t - 1]! : 0;
+    result[at] = before - (t + 1 < x.length ? x[t + 1]! - x[t]! : 0);
+  }
+  return result;
 }
 
 function timesInverse(moments: Moments, inverse: Float64Array, k: number): Float64Array {
