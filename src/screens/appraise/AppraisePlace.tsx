@@ -5,9 +5,13 @@ import { priceBasisWords } from "../../domain/sale.ts";
 import { BuiltUpSteps } from "../charts/BuiltUpSteps.tsx";
 import { partStep, priceStep } from "../charts/figures.ts";
 import { RangeGauge } from "../charts/RangeGauge.tsx";
-import { Busy, ErrorNote, PaneLayout, SectionHeading, SegmentedChoice } from "../parts/index.ts";
+import { hrefOf, useRoute } from "../frame/useRoute.ts";
+import { Busy, ErrorNote, PaneLayout, SectionHeading, SegmentedChoice, SubPlaces } from "../parts/index.ts";
 import { useWorkbench, type Workbench } from "../workbench/workbench.ts";
 import css from "./AppraisePlace.module.css";
+import { SetsOutcome } from "./everySet/SetsOutcome.tsx";
+import { SetsPane } from "./everySet/SetsPane.tsx";
+import { useEverySet } from "./everySet/useEverySet.ts";
 import { LedgerTeaser } from "./LedgerTeaser.tsx";
 import { NearRows } from "./NearRows.tsx";
 import { NotKnowingView } from "./NotKnowingView.tsx";
@@ -16,17 +20,49 @@ import { PullRows } from "./PullRows.tsx";
 import { RangeNote } from "./RangeNote.tsx";
 import { SubjectPane } from "./SubjectPane.tsx";
 
+const VIEWS: readonly { readonly sub: string | null; readonly href: string; readonly label: string }[] = [
+  { sub: null, href: hrefOf("appraise"), label: "Subject" },
+  { sub: "sets", href: hrefOf("appraise", "sets"), label: "Every attribute set" },
+];
+
 export function AppraisePlace() {
   const bench = useWorkbench();
+  const { sub } = useRoute();
+  const sets = useEverySet(sub === "sets" ? bench : null);
   if (bench.assetClass === null)
     return bench.error === null ? <Busy words="Opening" /> : <ErrorNote error={bench.error} />;
+  const places = (
+    <SubPlaces label="Appraise" places={VIEWS.map((view) => ({ ...view, isCurrent: view.sub === sub }))} />
+  );
+  if (sub === "sets") {
+    return (
+      <PaneLayout
+        name="appraise-sets"
+        leftWidth={420}
+        leftLabel="Which sets count"
+        rightLabel="What they say"
+        left={
+          <>
+            {places}
+            <SetsPane state={sets} />
+          </>
+        }
+        right={<SetsOutcome bench={bench} state={sets} />}
+      />
+    );
+  }
   return (
     <PaneLayout
       name="appraise"
       leftWidth={468}
       leftLabel="Subject"
       rightLabel="Price"
-      left={<SubjectPane bench={bench} />}
+      left={
+        <>
+          {places}
+          <SubjectPane bench={bench} />
+        </>
+      }
       right={<Outcome bench={bench} />}
     />
   );

@@ -1,0 +1,83 @@
+/** Names of the families that the two attributes which matter most part the marks into, each beside its own cloud. */
+import { lowerStart } from "../../domain/format.ts";
+import { type Frame, familyOf, type SetMarks, type SetScale } from "./setScale.ts";
+
+interface FamilyNamesProps {
+  readonly marks: SetMarks;
+  readonly scale: SetScale;
+  readonly parting: readonly number[];
+  readonly frame: Frame;
+  readonly limit: number;
+}
+
+interface Cloud {
+  readonly xs: number[];
+  readonly ys: number[];
+}
+
+const LETTER = 6.6;
+
+export function FamilyNames({ marks, scale, parting, frame, limit }: FamilyNamesProps) {
+  if (parting.length === 0) return null;
+  const clouds = cloudsOf(marks, scale, parting);
+  const lowest = scale.y(limit) + 16;
+  let last = Number.NEGATIVE_INFINITY;
+  return clouds.flatMap(({ xs, ys }, family) => {
+    if (xs.length === 0) return [];
+    const text = nameOf(marks, parting, family);
+    const wanted = Math.max(lowest, last + 20, middleOf(ys));
+    const place = freePlace(clouds, wanted, text.length * LETTER, frame);
+    if (place === null) return [];
+    last = place.y;
+    return [
+      <text
+        key={text}
+        x={place.x}
+        y={place.y}
+        textAnchor={place.anchor}
+        className="halo"
+        style={{ font: "italic 400 13px var(--serif)" }}
+      >
+        {text}
+      </text>,
+    ];
+  });
+}
+
+function cloudsOf({ price, error }: SetMarks, { x, y }: SetScale, parting: readonly number[]): Cloud[] {
+  const clouds: Cloud[] = Array.from({ length: 4 }, () => ({ xs: [], ys: [] }));
+  price.forEach((amount, set) => {
+    const err = error[set];
+    if (amount === null || err === null || err === undefined) return;
+    const cloud = clouds[familyOf(set, parting)]!;
+    cloud.xs.push(x(amount));
+    cloud.ys.push(y(err));
+  });
+  return clouds;
+}
+
+function nameOf({ attributes }: SetMarks, [first, second]: readonly number[], family: number): string {
+  const a = lowerStart(attributes[first!]!.label);
+  if (second === undefined) return family === 0 ? `${a} in` : `${a} left out`;
+  const b = lowerStart(attributes[second]!.label);
+  return [`both ${a} and ${b} in`, `${a} in, ${b} left out`, `${b} in, ${a} left out`, `neither ${a} nor ${b}`][
+    family
+  ]!;
+}
+
+function middleOf(values: readonly number[]): number {
+  const sorted = [...values].sort((a, b) => a - b);
+  return sorted[Math.floor(sorted.length / 2)]!;
+}
+
+/** At the right end of the height, else at the left; null where marks stand at both. */
+function freePlace(clouds: readonly Cloud[], y: number, length: number, { left, right, bottom }: Frame) {
+  for (const up of [0, -14, 14, -28, 28, 42]) {
+    const at = y + up;
+    if (at > bottom - 6) continue;
+    const near = clouds.flatMap(({ xs, ys }) => xs.filter((_, i) => Math.abs(ys[i]! - (at - 4)) < 13));
+    if (near.every((x) => x < right - length - 16)) return { x: right - 8, y: at, anchor: "end" } as const;
+    if (near.every((x) => x > left + length + 16)) return { x: left + 8, y: at, anchor: "start" } as const;
+  }
+  return null;
+}
