@@ -27,7 +27,7 @@ export const bends: Diagnostic = {
     if (worst === undefined)
       return "No number enters the model as a straight line or logarithm with more than two values.";
     const { t, p, group } = worst;
-    const way = t > 0 ? "grows" : "shrinks";
+    const [ends, middle] = t > 0 ? ["higher", "lower"] : ["lower", "higher"];
     return {
       statistic: t,
       df: [df],
@@ -35,7 +35,7 @@ export const bends: Diagnostic = {
       verdict: verdictOf(p),
       sentence:
         p < 0.05
-          ? `${group.label} bends: each step more of it ${way} in effect, where the model has all steps alike.`
+          ? `${group.label} bends: prices lie ${ends} at both ends of it than the model says, and ${middle} in between.`
           : "No number bends where the model has it straight.",
       whatToDo: p < 0.05 ? `Try a curve or a logarithm for ${group.label}.` : "Nothing.",
       source: "Larsen & McCleary 1972; Bonferroni",

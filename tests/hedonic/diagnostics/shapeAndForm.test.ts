@@ -61,5 +61,5 @@ test("the attribute that bends is named, and the straight ones are not", () => {
   const bend = found.find(({ code }) => code === "bends")!;
   expect(bend.verdict).toBe("trouble");
   expect(bend.attributes).toEqual(["age"]);
-  expect(bend.sentence).toContain("Age bends");
+  expect(bend.sentence).toContain("Age bends: prices lie higher at both ends");
 });
