@@ -8,6 +8,7 @@ import {
   formatNumber,
   formatPercent,
   listWords,
+  lowerStart,
   roundingStep,
   roundOutward,
   roundTo,
@@ -80,11 +81,16 @@ function turnsOf({ coefficients, defensible }: Found, offered: number): string {
 }
 
 function countWords(count: number): string {
-  return count === 1 ? "One coefficient changes" : `${formatNumber(count)} coefficients change`;
+  if (count === 1) return "One coefficient changes";
+  const words = ["Two", "Three", "Four", "Five", "Six", "Seven", "Eight", "Nine", "Ten"];
+  return `${words[count - 2] ?? formatNumber(count)} coefficients change`;
 }
 
 function namesOf(spans: readonly CoefficientSpan[]): string {
-  const names = spans.map(({ label, level }) => (level === null || level === "yes" ? label : `${label} ${level}`));
+  const names = spans.map(({ label, level }) => {
+    const name = lowerStart(label);
+    return level === null || level === "yes" ? name : `${name} ${level}`;
+  });
   if (names.length <= NAMED) return listWords(names);
   return listWords([...names.slice(0, NAMED - 1), `${names.length - NAMED + 1} more`]);
 }

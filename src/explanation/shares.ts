@@ -5,7 +5,7 @@
  */
 import type { AttributeShare, AttributeShares } from "../domain/attributeSets.ts";
 import { AppError } from "../domain/errors.ts";
-import { formatSigned, listWords, lowerStart } from "../domain/format.ts";
+import { formatPercent, formatSigned, listWords, lowerStart } from "../domain/format.ts";
 import type { ResponseForm } from "../domain/priceModel.ts";
 import { type AveragedShares, averagedShares } from "../numerics/averagedShares.ts";
 import { buildSetTable, type SetTable, type SetTableInput } from "./setTable.ts";
@@ -72,7 +72,7 @@ function dependent(): AppError {
 /** What the shares say, and what they do not. */
 function sentencesOf(shares: readonly AttributeShare[], r2: number): string[] {
   if (!(r2 > 0) || shares.length === 0) return [];
-  const percent = (share: number): string => `${Math.round((100 * share) / r2)} %`;
+  const percent = (share: number): string => formatPercent(share / r2);
   const largest = [...shares].sort((a, b) => b.r2 - a.r2).slice(0, SAID);
   const parts = largest.map(({ label, r2: share }) => `${label} ${percent(share)}`);
   return [
@@ -92,6 +92,6 @@ export function distanceSentence({ shares, distance }: AttributeShares, response
   const enough = response === "lnPrice" ? 0.005 : Math.abs(distance) / 1000;
   if (most === undefined || !(apart(most) > enough)) return null;
   const amount = (part: number): string =>
-    response === "lnPrice" ? `${formatSigned(100 * Math.expm1(part), 1)} %` : formatSigned(part);
+    response === "lnPrice" ? `${formatSigned(100 * Math.expm1(part), 1)}\u00a0%` : formatSigned(part);
   return `The two rules part most on ${lowerStart(most.label)}: ${amount(most.distance!)} averaged over orders, ${amount(most.additive!)} by its own coefficient alone; averaging shares out what moves together, the plain rule gives all of it to the attribute whose coefficient carries it.`;
 }

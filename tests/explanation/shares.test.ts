@@ -36,7 +36,7 @@ describe("shares of the houses", () => {
   });
 
   test("are said in words that claim no cause", () => {
-    expect(found.sentences[0]).toMatch(/Log\(lotsize\) 24 %, Bathrooms 15 % and Aircon 13 %\.$/);
+    expect(found.sentences[0]).toMatch(/Log\(lotsize\) 24\u00a0%, Bathrooms 15\u00a0% and Aircon 13\u00a0%\.$/);
     expect(found.sentences[1]).toContain("not of what causes a price");
   });
 });

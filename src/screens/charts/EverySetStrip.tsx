@@ -34,12 +34,14 @@ export interface EverySetStripProps {
   /** Lowest and highest price of the sets that count; null while they are being found. */
   readonly span: Span | null;
   readonly step: number;
+  /** Finer, for telling one set from another. */
+  readonly fineStep: number;
   readonly currencyCode: string;
   nameOf(set: number): string;
   onChoose(set: number): void;
 }
 
-const HEIGHT = 372;
+const HEIGHT = 340;
 const REACH = 16;
 
 export function EverySetStrip(props: EverySetStripProps) {
@@ -103,11 +105,11 @@ export function EverySetStrip(props: EverySetStripProps) {
   );
 }
 
-function markWords({ marks, step, currencyCode }: EverySetStripProps, set: number, name: string): string {
+function markWords({ marks, fineStep, currencyCode }: EverySetStripProps, set: number, name: string): string {
   const price = marks.price[set];
   const error = marks.error[set];
   if (typeof price !== "number") return `${name}: not priced`;
-  const money = formatMoney(roundTo(price, step), currencyCode);
+  const money = formatMoney(roundTo(price, fineStep), currencyCode);
   return `${name}: ${money}${typeof error === "number" ? `, error ${formatPercent(error, 1)}` : ""}`;
 }
 
@@ -248,7 +250,7 @@ function Named(props: EverySetStripProps & PartProps) {
         <>
           <path d={`M${x} ${frame.top - 6}V${frame.bottom}`} className="s-verd" strokeDasharray="1 3" />
           <rect x={x - 2} y={scale.y(error) - 9} width="4" height="18" className="f-verd" />
-          <text x={x} y={20} textAnchor={isFar ? "end" : "middle"} className="t-verd t-serif" fontSize="15">
+          <text x={x} y={20} textAnchor={isFar ? "end" : "middle"} className="t-verd t-serif" style={{ fontSize: 16 }}>
             {formatMoney(roundTo(price, step), currencyCode)}
           </text>
           <text x={isFar ? x - 62 : x + 38} y={20} textAnchor={isFar ? "end" : "start"} className="t-soft halo">

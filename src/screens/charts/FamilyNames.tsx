@@ -20,15 +20,14 @@ const LETTER = 6.6;
 export function FamilyNames({ marks, scale, parting, frame, limit }: FamilyNamesProps) {
   if (parting.length === 0) return null;
   const clouds = cloudsOf(marks, scale, parting);
-  const lowest = scale.y(limit) + 16;
-  let last = Number.NEGATIVE_INFINITY;
+  const lowest = scale.y(limit) + 18;
+  const taken: Place[] = [];
   return clouds.flatMap(({ xs, ys }, family) => {
     if (xs.length === 0) return [];
     const text = nameOf(marks, parting, family);
-    const wanted = Math.max(lowest, last + 20, middleOf(ys));
-    const place = freePlace(clouds, wanted, text.length * LETTER, frame);
+    const place = freePlace(clouds, Math.max(lowest, middleOf(ys)), lowest, text.length * LETTER, frame, taken);
     if (place === null) return [];
-    last = place.y;
+    taken.push(place);
     return [
       <text
         key={text}
@@ -70,14 +69,29 @@ function middleOf(values: readonly number[]): number {
   return sorted[Math.floor(sorted.length / 2)]!;
 }
 
-/** At the right end of the height, else at the left; null where marks stand at both. */
-function freePlace(clouds: readonly Cloud[], y: number, length: number, { left, right, bottom }: Frame) {
-  for (const up of [0, -14, 14, -28, 28, 42]) {
-    const at = y + up;
-    if (at > bottom - 6) continue;
-    const near = clouds.flatMap(({ xs, ys }) => xs.filter((_, i) => Math.abs(ys[i]! - (at - 4)) < 13));
-    if (near.every((x) => x < right - length - 16)) return { x: right - 8, y: at, anchor: "end" } as const;
-    if (near.every((x) => x > left + length + 16)) return { x: left + 8, y: at, anchor: "start" } as const;
+interface Place {
+  readonly x: number;
+  readonly y: number;
+  readonly anchor: "start" | "end";
+}
+
+/** At either end of the height where no marks and no other name stand, as near to it as can be; null where there is none. */
+function freePlace(
+  clouds: readonly Cloud[],
+  wanted: number,
+  lowest: number,
+  length: number,
+  { left, right, bottom }: Frame,
+  taken: readonly Place[],
+): Place | null {
+  for (const move of [0, 12, -12, 24, -24, 36, -36, 48, 60]) {
+    const y = wanted + move;
+    if (y < lowest || y > bottom - 6) continue;
+    const near = clouds.flatMap(({ xs, ys }) => xs.filter((_, i) => Math.abs(ys[i]! - (y - 4)) < 13));
+    const isFree = (anchor: Place["anchor"]): boolean =>
+      taken.every((one) => one.anchor !== anchor || Math.abs(one.y - y) > 17);
+    if (isFree("end") && near.every((x) => x < right - length - 16)) return { x: right - 8, y, anchor: "end" };
+    if (isFree("start") && near.every((x) => x > left + length + 16)) return { x: left + 8, y, anchor: "start" };
   }
   return null;
 }

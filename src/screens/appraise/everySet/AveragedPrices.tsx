@@ -3,17 +3,12 @@ import type { AveragedPrice, EverySet } from "../../../domain/attributeSets.ts";
 import { formatMoney, formatNumber, formatPercent, roundOutward, roundTo } from "../../../domain/format.ts";
 import { SectionHeading } from "../../parts/index.ts";
 import css from "./everySet.module.css";
-import { stepOf } from "./setWords.ts";
+import { amountStep, fineStepOf, stepOf } from "./setWords.ts";
 
 export function AveragedPrices({ found }: { readonly found: EverySet }) {
-  const { averaged, stacked, currencyCode, listed, current, doubt } = found;
-  const step = stepOf(found);
-  const own = listed.find(({ set }) => set === current) ?? null;
-  const money = (amount: number): string => formatMoney(roundTo(amount, step), currencyCode);
-  const range = (one: { low: number; high: number }): string => {
-    const { low, high } = roundOutward(one, step);
-    return `${formatNumber(low)} – ${formatNumber(high)}`;
-  };
+  const { averaged, stacked, currencyCode } = found;
+  const money = (amount: number): string => formatMoney(roundTo(amount, fineStepOf(found)), currencyCode);
+  const range = (one: AveragedPrice): string => rangeWords(one, stepOf(found));
   if (averaged === null) {
     return (
       <section aria-labelledby="averaged">
@@ -25,78 +20,101 @@ export function AveragedPrices({ found }: { readonly found: EverySet }) {
       </section>
     );
   }
-  const width = (one: AveragedPrice): string =>
-    formatMoney(roundTo(one.addedWidth, Math.max(1, step / 10)), currencyCode);
-  const rows: readonly [string, string, string, string][] = [
-    [
-      "Nine in ten",
-      range(averaged),
-      stacked === null ? "" : range(stacked),
-      own?.low == null || own.high === null ? "" : range({ low: own.low, high: own.high }),
-    ],
-    ["Doubt about the set adds", width(averaged), stacked === null ? "" : width(stacked), ""],
-    [
-      "Typical error",
-      "",
-      stacked === null ? "" : formatPercent(stacked.error, 2),
-      own?.error == null ? "" : formatPercent(own.error, 2),
-    ],
-    [
-      "Sets with weight over 0.01",
-      formatNumber(averaged.weights.length),
-      stacked === null ? "" : formatNumber(stacked.weights.length),
-      "1",
-    ],
-  ];
   return (
     <section aria-labelledby="averaged">
       <SectionHeading id="averaged">Averaged price</SectionHeading>
-      <p className={css.average}>{money(averaged.price)}</p>
+      <p className={css.average}>{formatMoney(roundTo(averaged.price, stepOf(found)), currencyCode)}</p>
       <table className={css.averages}>
-        <caption className="vh">Price averaged by Akaike weights and by stacking, and of the set in use</caption>
+        <caption className="vh">Price averaged by AICc and by stacking, and of the set in use</caption>
         <thead>
           <tr>
             <td />
-            <th scope="col" className="num" title="by AICc: how well each set fits, less what its coefficients cost">
-              by AICc
-            </th>
-            <th scope="col" className="num" title="the mixture that errs least on sales priced without themselves">
-              stacked
+            <th scope="col" className="num">
+              price
             </th>
             <th scope="col" className="num">
-              set in use
+              nine in ten
+            </th>
+            <th scope="col" className="num">
+              error
             </th>
           </tr>
         </thead>
         <tbody>
-          <tr>
-            <th scope="row">Price</th>
+          <tr title="weights by how well each set fits, less what its coefficients cost (Akaike)">
+            <th scope="row">By AICc</th>
             <td className="num">
               <b>{money(averaged.price)}</b>
             </td>
-            <td className="num">{stacked === null ? "" : <b>{money(stacked.price)}</b>}</td>
-            <td className="num">{own?.price == null ? "" : money(own.price)}</td>
+            <td className="num">{range(averaged)}</td>
+            <td />
           </tr>
-          {rows.map(([label, ...cells]) => (
-            <tr key={label}>
-              <th scope="row">{label}</th>
-              {cells.map((cell, at) => (
-                // biome-ignore lint/suspicious/noArrayIndexKey: three columns in a fixed order
-                <td key={at} className="num">
-                  {cell}
-                </td>
-              ))}
+          {stacked === null ? null : (
+            <tr title="the mixture that errs least on sales priced without themselves">
+              <th scope="row">Stacked</th>
+              <td className="num">
+                <b>{money(stacked.price)}</b>
+              </td>
+              <td className="num">{range(stacked)}</td>
+              <td className="num">{formatPercent(stacked.error, 2)}</td>
             </tr>
-          ))}
+          )}
+          <SetInUse found={found} />
         </tbody>
       </table>
-      <p className="small soft">
-        By AICc over all sets.{" "}
+      <Doubt found={found} averaged={averaged} />
+    </section>
+  );
+}
+
+function SetInUse({ found }: { readonly found: EverySet }) {
+  const own = found.listed.find(({ set }) => set === found.current);
+  if (own === undefined || own.price === null) return null;
+  const { price, low, high, error } = own;
+  return (
+    <tr>
+      <th scope="row">Set in use</th>
+      <td className="num">{formatMoney(roundTo(price, fineStepOf(found)), found.currencyCode)}</td>
+      <td className="num">{low === null || high === null ? "" : rangeWords({ low, high }, stepOf(found))}</td>
+      <td className="num">{error === null ? "" : formatPercent(error, 2)}</td>
+    </tr>
+  );
+}
+
+function rangeWords(range: { low: number; high: number }, step: number): string {
+  const { low, high } = roundOutward(range, step);
+  return `${formatNumber(low)}–${formatNumber(high)}`;
+}
+
+/** How much the choice of attributes adds to the ranges, and what the two ways of weighing are. */
+function Doubt({ found, averaged }: { readonly found: EverySet; readonly averaged: AveragedPrice }) {
+  const { stacked, currencyCode, doubt } = found;
+  const width = ({ addedWidth }: AveragedPrice): string =>
+    formatMoney(roundTo(addedWidth, amountStep([addedWidth])), currencyCode);
+  const rows: readonly [string, string, string | null][] = [
+    ["Doubt about the set widens the range by", width(averaged), stacked === null ? null : width(stacked)],
+    [
+      "Sets with weight over 0.01",
+      formatNumber(averaged.weights.length),
+      stacked === null ? null : formatNumber(stacked.weights.length),
+    ],
+  ];
+  return (
+    <>
+      <dl className={css.facts}>
+        {rows.map(([label, first, second]) => (
+          <div key={label}>
+            <dt>{label}</dt>
+            <dd>{second === null ? first : `${first}, stacked ${second}`}</dd>
+          </div>
+        ))}
+      </dl>
+      <p className={`${css.note} small soft`}>
         {stacked === null
-          ? "No mixture could be stacked."
-          : `Stacked: the mixture of the ${formatNumber(stacked.over)} best defensible sets that errs least when each sale is priced without itself.`}{" "}
+          ? ""
+          : `Stacked: the mixture of the ${formatNumber(stacked.over)} best defensible sets that errs least when each sale is priced without itself. `}
         {doubt}
       </p>
-    </section>
+    </>
   );
 }

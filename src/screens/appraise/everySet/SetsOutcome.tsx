@@ -10,7 +10,7 @@ import { AveragedPrices } from "./AveragedPrices.tsx";
 import css from "./everySet.module.css";
 import { SharesView } from "./SharesView.tsx";
 import { SpanBars } from "./SpanBars.tsx";
-import { countWithin, setName, stepOf } from "./setWords.ts";
+import { countWithin, fineStepOf, setName, stepOf } from "./setWords.ts";
 import type { EverySetState } from "./useEverySet.ts";
 
 export function SetsOutcome({ bench, state }: { readonly bench: Workbench; readonly state: EverySetState }) {
@@ -46,14 +46,14 @@ function Found({ bench, state, found }: FoundProps) {
           ruleWords={`error within ${Math.round(share * 100)} % of the best`}
           span={isSettled ? found.price : null}
           step={stepOf(found)}
+          fineStep={fineStepOf(found)}
           currencyCode={found.currencyCode}
           nameOf={nameOf}
           onChoose={state.choose}
         />
         <figcaption className="small soft">
-          One mark for each attribute set. Across: the price it gives this item, {found.currencyCode}. Down: how far it
-          is typically off on a sale not yet seen, on an axis that gives the best sets more room. A click makes a set
-          the one in use.
+          Each mark is one attribute set: its price across, its error down (the best sets get more room). A click makes
+          it the set in use.
         </figcaption>
         <SetTable found={found} />
       </figure>
@@ -89,7 +89,7 @@ function SetTable({ found }: { readonly found: EverySet }) {
 
 function SetRows({ found }: { readonly found: EverySet }) {
   const { marks, currencyCode, defensible, current } = found;
-  const step = stepOf(found);
+  const step = fineStepOf(found);
   const priced = [...marks.price.keys()].filter((set) => marks.price[set] !== null && marks.error[set] !== null);
   const sets = priced.sort((a, b) => marks.error[a]! - marks.error[b]!);
   const counts = new Set(defensible);

@@ -4,7 +4,7 @@ import { hasAttribute } from "../../../domain/attributeSets.ts";
 import { formatNumber, formatPercent, formatSigned, listWords, lowerStart, roundTo } from "../../../domain/format.ts";
 import { Busy, SectionHeading } from "../../parts/index.ts";
 import css from "./everySet.module.css";
-import { amountStep, setName, stepOf } from "./setWords.ts";
+import { amountStep, fineStepOf, setName } from "./setWords.ts";
 import type { EverySetState } from "./useEverySet.ts";
 
 export function SetsPane({ state }: { readonly state: EverySetState }) {
@@ -63,7 +63,7 @@ const SHOWN = 8;
 
 function HeavySets({ state, found }: { readonly state: EverySetState; readonly found: EverySet }) {
   const { attributes, listed, current } = found;
-  const step = stepOf(found);
+  const step = fineStepOf(found);
   const hasWeights = found.averaged !== null;
   const top = listed.slice(0, SHOWN);
   const own = listed.find(({ set }) => set === current);
@@ -170,9 +170,7 @@ function Switches({ found }: { readonly found: EverySet }) {
   const pairs = rows[0]!.pairs;
   return (
     <section aria-labelledby="switches">
-      <SectionHeading id="switches" aside={`${currencyCode}, over ${formatNumber(pairs)} pairs of sets each`}>
-        What putting it in does to the price
-      </SectionHeading>
+      <SectionHeading id="switches">What putting it in does to the price</SectionHeading>
       <table>
         <caption className="vh">
           Change of the price when an attribute is put into a set, lowest, mean and highest
@@ -180,7 +178,9 @@ function Switches({ found }: { readonly found: EverySet }) {
         <thead>
           <tr>
             <td />
-            <th scope="col">lowest to highest</th>
+            <th scope="col">
+              {currencyCode}, {formatNumber(pairs)} pairs each
+            </th>
             <th scope="col" className="num">
               mean
             </th>

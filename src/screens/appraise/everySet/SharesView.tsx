@@ -21,11 +21,7 @@ function Shares({ found, shares }: { readonly found: EverySet; readonly shares: 
   const rows = [...shares.shares].sort((a, b) => b.r2 - a.r2);
   return (
     <>
-      {shares.sentences.map((sentence) => (
-        <p key={sentence} className={css.note}>
-          {sentence}
-        </p>
-      ))}
+      <p className={css.note}>{shares.sentences.join(" ")}</p>
       <table className={css.shares}>
         <caption className="vh">Shares of explained variation and of the distance from the average price</caption>
         <thead>

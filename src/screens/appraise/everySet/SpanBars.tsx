@@ -8,7 +8,7 @@ import css from "./everySet.module.css";
 import { amountStep } from "./setWords.ts";
 
 /** Widths of the columns beside the picture. */
-const BESIDE = 360;
+const BESIDE = 388;
 const ROW = 22;
 
 export function SpanBars({ found }: { readonly found: EverySet }) {
@@ -89,7 +89,7 @@ function SpanRow({ one, scale }: { readonly one: CoefficientSpan; readonly scale
         {level === null || level === "yes" ? label : `${label} ${level}`}{" "}
         <span className="soft fine">{stepWords ?? (level === "yes" ? "yes" : "")}</span>
         {isTurning(one.signs) ? (
-          <span className={turnsHere ? "brick fine" : "brass fine"}> sign turns{turnsHere ? " here too" : ""}</span>
+          <span className={turnsHere ? "brick fine" : "brass fine"}> {turnsHere ? "sign turns" : "turns in all"}</span>
         ) : null}
       </th>
       <td className={css.picture}>

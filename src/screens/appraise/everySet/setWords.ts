@@ -25,6 +25,11 @@ export function stepOf({ listed, current }: Pick<EverySet, "listed" | "current">
   return roundingStep({ low: one.low, high: one.high });
 }
 
+/** Finer than the step of the price, for telling sets apart. */
+export function fineStepOf(found: Pick<EverySet, "listed" | "current">): number {
+  return niceStep(stepOf(found) / 5);
+}
+
 /** Step of amounts that are read beside each other: two to three digits of the largest. */
 export function amountStep(amounts: readonly number[]): number {
   const largest = Math.max(1, ...amounts.map(Math.abs));
