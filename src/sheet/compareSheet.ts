@@ -10,9 +10,19 @@ import type { Conclusion, SheetEvidence, VerifiedFigure } from "../domain/sheetR
 type Leaf = number | string | boolean | null;
 
 export interface CompareOptions {
-  /** False leaves sentences and labels out: another version of the program may word them differently. */
-  readonly words: boolean;
+  /**
+   * True where another version of the program made the sheet: it may word sentences differently, know fewer figures, and add
+   * in another order. Then sentences and figures it did not have are left out, and numbers may differ in their last digits.
+   */
+  readonly otherVersion: boolean;
 }
+
+/** Two versions may add in another order; more than this is another number. */
+const RELATIVE_DIFFERENCE = 1e-9;
+/** What is zero but for rounding (a sum of parts less the whole) is no more than this. */
+const ABSOLUTE_DIFFERENCE = 1e-12;
+/** How a version came to its numbers, not what they are. */
+const WAYS = new Set(["report.digitsToTrust", "report.condition", "report.path"]);
 
 /** Places that only the store can give again. */
 const NOT_RECOMPUTED = new Set(["evidence.read", "evidence.out"]);
@@ -36,36 +46,42 @@ export function compareSheet(
   embedded: SheetEvidence,
   recomputed: Appraisal,
   recomputedConclusion: Conclusion,
-  options: CompareOptions = { words: true },
+  options: CompareOptions = { otherVersion: false },
 ): VerifiedFigure[] {
   const figures: VerifiedFigure[] = [];
-  walk(embedded.appraisal, recomputed, [], "", figures);
-  walk(embedded.conclusion, recomputedConclusion, ["printed price"], "conclusion", figures);
-  return options.words
-    ? figures
-    : figures.filter(({ printed, recomputed: again }) => isNumeric(printed) || isNumeric(again));
+  const found = { figures, ...options };
+  walk(embedded.appraisal, recomputed, [], "", found);
+  walk(embedded.conclusion, recomputedConclusion, ["printed price"], "conclusion", found);
+  return options.otherVersion
+    ? figures.filter(({ printed, recomputed: again }) => isNumeric(printed) || isNumeric(again))
+    : figures;
 }
 
 const isNumeric = (value: VerifiedFigure["printed"]): boolean => typeof value === "number";
 
-function walk(a: unknown, b: unknown, names: readonly string[], path: string, figures: VerifiedFigure[]): void {
+interface Found extends CompareOptions {
+  readonly figures: VerifiedFigure[];
+}
+
+function walk(a: unknown, b: unknown, names: readonly string[], path: string, found: Found): void {
   if (NOT_RECOMPUTED.has(path)) return;
+  if (found.otherVersion && (a === undefined || WAYS.has(path))) return;
   if (Array.isArray(a) && Array.isArray(b)) {
-    walkList(a, b, names, path, figures);
+    walkList(a, b, names, path, found);
     return;
   }
   if (isRecord(a) && isRecord(b)) {
     for (const key of new Set([...Object.keys(a), ...Object.keys(b)])) {
       const name = path === "" && key === "priced" ? [] : [words(key)];
-      walk(a[key], b[key], [...names, ...name], path === "" ? key : `${path}.${key}`, figures);
+      walk(a[key], b[key], [...names, ...name], path === "" ? key : `${path}.${key}`, found);
     }
     return;
   }
-  figures.push({
+  found.figures.push({
     name: nameOf(names, path),
     printed: shown(a),
     recomputed: shown(b),
-    equal: Object.is(plain(a), plain(b)),
+    equal: Object.is(plain(a), plain(b)) || (found.otherVersion && isNearly(a, b)),
   });
 }
 
@@ -74,15 +90,21 @@ function walkList(
   b: readonly unknown[],
   names: readonly string[],
   path: string,
-  figures: VerifiedFigure[],
+  found: Found,
 ): void {
+  const { figures } = found;
   if (a.length !== b.length) {
     figures.push({ name: `${nameOf(names, path)}, how many`, printed: a.length, recomputed: b.length, equal: false });
   }
   const count = Math.max(a.length, b.length);
   for (let k = 0; k < count; k++) {
-    walk(a[k], b[k], [...names, entryName(a[k] ?? b[k], k)], `${path}[]`, figures);
+    walk(a[k], b[k], [...names, entryName(a[k] ?? b[k], k)], `${path}[]`, found);
   }
+}
+
+function isNearly(a: unknown, b: unknown): boolean {
+  if (typeof a !== "number" || typeof b !== "number") return false;
+  return Math.abs(a - b) <= RELATIVE_DIFFERENCE * Math.max(Math.abs(a), Math.abs(b)) + ABSOLUTE_DIFFERENCE;
 }
 
 function isRecord(value: unknown): value is Record<string, unknown> {

@@ -53,7 +53,7 @@ export async function verifyReport(input: VerifyInput): Promise<VerificationRepo
   const knownToJournal = input.knowsDigest === null ? null : input.knowsDigest(evidence.sheetNumber, sheet.digest);
   return {
     verdict: stands ? "stands" : "altered",
-    sentence: sentence(stands, equalCount, problems, knownToJournal),
+    sentence: sentence(stands, equalCount, problems, knownToJournal, sameProgramVersion),
     bytesIntact: sheet.sealIntact,
     fingerprintEqual,
     textEqual,
@@ -93,7 +93,7 @@ function figuresOf(
       return [];
     }
     const conclusion = concludePrice(again.priced, evidence.request.adjustments);
-    return compareSheet(evidence, again, conclusion, { words: sameVersion });
+    return compareSheet(evidence, again, conclusion, { otherVersion: !sameVersion });
   } catch (cause) {
     const why = cause instanceof AppError ? ` ${sentenceOf(cause.toPlain())}` : "";
     problems.push(`The price could not be worked out again from what the file embeds.${why}`);
@@ -124,10 +124,17 @@ function differentWords(figures: readonly VerifiedFigure[], count: number): stri
   return `${formatNumber(count)} of ${formatNumber(figures.length)} figures ${plural(count, "is", "are")} not what the embedded sales give; the first is ${first.name}: ${first.printed} in the file, ${first.recomputed} worked out again.`;
 }
 
-function sentence(stands: boolean, equalCount: number, problems: readonly string[], known: boolean | null): string {
+function sentence(
+  stands: boolean,
+  equalCount: number,
+  problems: readonly string[],
+  known: boolean | null,
+  sameVersion: boolean,
+): string {
   if (!stands) return `The sheet does not stand: ${problems[0]!.charAt(0).toLowerCase()}${problems[0]!.slice(1)}`;
   const journal = known === null ? "" : known ? " The journal knows it." : " The journal here does not know it.";
-  return `The sheet stands: no byte was changed, and all ${formatNumber(equalCount)} figures came out again to the last bit.${journal}`;
+  const how = sameVersion ? "to the last bit" : "to nine digits, in another version of the program than made it";
+  return `The sheet stands: no byte was changed, and all ${formatNumber(equalCount)} figures came out again ${how}.${journal}`;
 }
 
 /** A file that cannot be read but carries a seal was a sheet once: it was altered. Without a seal it may be anything. */
