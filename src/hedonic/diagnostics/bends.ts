@@ -8,7 +8,7 @@ import { type Column, numbersOf, rowsOf } from "../../numerics/column.ts";
 import { quadraticForm } from "../../numerics/leverages.ts";
 import { tTwoSided } from "../../numerics/studentT.ts";
 import type { AttributeGroup, Fit } from "../fit.ts";
-import { centredProduct, columnsOf, type Diagnostic, momentsOfMade, verdictOf } from "./diagnostic.ts";
+import { centredProduct, columnsOf, type Diagnostic, momentsOfMade, SMALL_SHARE, verdictOf } from "./diagnostic.ts";
 
 export const bends: Diagnostic = {
   code: "bends",
@@ -32,7 +32,7 @@ export const bends: Diagnostic = {
       statistic: t,
       df: [df],
       p,
-      verdict: verdictOf(p),
+      verdict: verdictOf(p, t * t < SMALL_SHARE * (t * t + df)),
       sentence:
         p < 0.05
           ? `${group.label} bends: prices lie ${ends} at both ends of it than the model says, and ${middle} in between.`

@@ -1,7 +1,7 @@
 /** Do powers 2 and 3 of ŷ explain what the columns left over? F with 2 and n − p − 2 (Ramsey 1969). */
 import { solveLeastSquares } from "../../numerics/solveLeastSquares.ts";
 import { fUpperTail } from "../../numerics/testTails.ts";
-import { columnsOf, type Diagnostic, standardisedFitted, verdictOf } from "./diagnostic.ts";
+import { columnsOf, type Diagnostic, SMALL_SHARE, standardisedFitted, verdictOf } from "./diagnostic.ts";
 
 export const curvature: Diagnostic = {
   code: "curvature",
@@ -20,7 +20,7 @@ export const curvature: Diagnostic = {
       statistic,
       df: [2, longer.residualDf],
       p,
-      verdict: verdictOf(p),
+      verdict: verdictOf(p, explained < SMALL_SHARE * longer.totalSumOfSquares),
       sentence:
         p < 0.05
           ? "The price bends in a way that the forms of the attributes do not follow."

@@ -25,10 +25,17 @@ export interface Diagnostic {
 /** A finding without what the diagnostic itself says already. */
 export type Finding = Omit<Diagnosis, "code" | "label">;
 
-/** Common practice, no source: below 1 in 100 trouble, below 1 in 20 a look. */
-export function verdictOf(p: number): Verdict {
-  return p < 0.01 ? "trouble" : p < 0.05 ? "look" : "fine";
+/**
+ * Below 1 in 100 trouble, below 1 in 20 a look. Many sales show what is real but too small to matter: `isSmall` makes that a look
+ * at most. Common practice, no source.
+ */
+export function verdictOf(p: number, isSmall = false): Verdict {
+  if (p >= 0.05) return "fine";
+  return p < 0.01 && !isSmall ? "trouble" : "look";
 }
+
+/** A share of variation explained below this is small. Common practice, no source. */
+export const SMALL_SHARE = 0.01;
 
 export function columnsOf(fit: Fit): Column[] {
   return fit.columns.map((index) => fit.design.columns[index]!.values);

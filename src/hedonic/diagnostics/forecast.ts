@@ -13,6 +13,9 @@ import { columnsOf, type Diagnostic, verdictOf } from "./diagnostic.ts";
 /** Common practice, no source. */
 const LAST_PART = 1 / 6;
 
+/** Latest sales that spread by less than a tenth more (√1.2) are near enough. Common practice, no source. */
+const SMALL_RATIO = 1.2;
+
 export const forecast: Diagnostic = {
   code: "forecast",
   label: "Latest sales",
@@ -33,7 +36,7 @@ export const forecast: Diagnostic = {
       statistic,
       df: [late, before.residualDf],
       p,
-      verdict: verdictOf(p),
+      verdict: verdictOf(p, statistic < SMALL_RATIO),
       sentence:
         p < 0.05
           ? `The ${design.n - early} sales of the last sixth of the period lie further from a model of the earlier sales than chance allows: what items fetch has changed.`

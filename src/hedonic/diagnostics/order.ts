@@ -27,7 +27,8 @@ export const order: Diagnostic = {
       statistic,
       df: [],
       p,
-      verdict: verdictOf(p),
+      // 1 − d/2 is about the correlation of neighbours.
+      verdict: verdictOf(p, 1 - statistic / 2 < 0.1),
       sentence:
         p < 0.05
           ? "Sales near in time lie on the same side of the model more often than chance allows: prices move in a way that the model does not follow."

@@ -19,7 +19,7 @@ export const shape: Diagnostic = {
       statistic,
       df: [2],
       p,
-      verdict: verdictOf(p),
+      verdict: verdictOf(p, Math.abs(skewness) < 0.5 && Math.abs(excess) < 1),
       sentence:
         p < 0.05
           ? `Distances from the model are not normal: skewness ${skewness.toFixed(2)}, excess kurtosis ${excess.toFixed(2)}.`

@@ -3,7 +3,14 @@
  * Breusch & Pagan 1979), and on ŷ and ŷ² (White 1980, special form); chi-squared.
  */
 import { chiSquaredUpperTail } from "../../numerics/testTails.ts";
-import { columnsOf, type Diagnostic, explainedSquares, standardisedFitted, verdictOf } from "./diagnostic.ts";
+import {
+  columnsOf,
+  type Diagnostic,
+  explainedSquares,
+  SMALL_SHARE,
+  standardisedFitted,
+  verdictOf,
+} from "./diagnostic.ts";
 
 const WHAT_TO_DO =
   "Read coefficient ranges with the errors that allow for uneven spread, or model the logarithm of the price.";
@@ -20,7 +27,7 @@ export const spread: Diagnostic = {
       statistic,
       df: [fit.columns.length],
       p,
-      verdict: verdictOf(p),
+      verdict: verdictOf(p, statistic < SMALL_SHARE * fit.design.n),
       sentence:
         p < 0.05
           ? "Sales lie further from the model at some values of the attributes than at others."
@@ -44,7 +51,7 @@ export const spreadWithPrice: Diagnostic = {
       statistic,
       df: [2],
       p,
-      verdict: verdictOf(p),
+      verdict: verdictOf(p, statistic < SMALL_SHARE * fit.design.n),
       sentence:
         p < 0.05
           ? "The distance of sales from the model changes with the price itself."

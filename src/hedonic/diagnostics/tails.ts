@@ -4,7 +4,7 @@
  * Residuals of a fit are taken as a sample, which holds for many more sales than coefficients.
  */
 import { normalUpperTail } from "../../numerics/testTails.ts";
-import { type Diagnostic, verdictOf } from "./diagnostic.ts";
+import { type Diagnostic, SMALL_SHARE, verdictOf } from "./diagnostic.ts";
 
 export const tails: Diagnostic = {
   code: "tails",
@@ -18,7 +18,8 @@ export const tails: Diagnostic = {
       statistic,
       df: [],
       p,
-      verdict: verdictOf(p),
+      // A²/n is the mean weighted square of the distance between the two distributions.
+      verdict: verdictOf(p, statistic < SMALL_SHARE * residuals.length),
       sentence:
         p < 0.05
           ? "Very small and very large distances from the model are more, or fewer, than a normal distribution has."
@@ -32,20 +33,23 @@ export const tails: Diagnostic = {
   },
 };
 
-/** A²·(1 + 0.75/n + 2.25/n²) of the values about their own mean and standard deviation (n − 1). */
+/**
+ * With each value's place from below and from above: A² = −n − Σ((2i − 1)ln Φ(z_i) + (2(n − i) + 1)ln(1 − Φ(z_i)))/n, i from 1,
+ * z the values about their own mean over their standard deviation (n − 1); times 1 + 0.75/n + 2.25/n².
+ */
 export function andersonDarling(values: Float64Array): number {
   const n = values.length;
   const mean = values.reduce((sum, value) => sum + value, 0) / n;
   const spread = Math.sqrt(values.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (n - 1));
   const z = values.map((value) => (value - mean) / spread).sort();
   let sum = 0;
-  for (let i = 0; i < n; i++) sum += (2 * i + 1) * (lnUpper(-z[i]!) + lnUpper(z[n - 1 - i]!));
+  z.forEach((one, i) => {
+    // The smaller of the two tails; past where it is no longer a double, the smallest one.
+    const tail = Math.max(normalUpperTail(Math.abs(one)), Number.MIN_VALUE);
+    const [below, above] = one < 0 ? [Math.log(tail), Math.log1p(-tail)] : [Math.log1p(-tail), Math.log(tail)];
+    sum += (2 * i + 1) * below + (2 * (n - i) - 1) * above;
+  });
   return (-n - sum / n) * (1 + 0.75 / n + 2.25 / n ** 2);
-}
-
-/** ln P(Z > z); past where the tail is no longer a double, ln of the smallest one. */
-function lnUpper(z: number): number {
-  return Math.log(Math.max(normalUpperTail(z), Number.MIN_VALUE));
 }
 
 export function andersonDarlingTail(a: number): number {
