@@ -106,6 +106,8 @@ export interface AttributeSets {
    */
   readonly leaveOneOut: readonly { readonly set: number; readonly error: number }[];
   readonly rule: DefensibleRule;
+  /** Step that prices are rounded to: that of the averaged price, else of the best set; the same whichever set is in use. */
+  readonly step: number;
   /** Sets that count, the least error (or AICc) first. */
   readonly defensible: readonly number[];
   readonly current: number;

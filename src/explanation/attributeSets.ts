@@ -3,8 +3,9 @@
  * how far price and coefficients move over them, and the price averaged over sets. All sets on the same sales, at the weights
  * and penalties of the fit in use. Ranges as in estimatePrice: ŷ₀ ± t·s·√(1 + h₀).
  */
-import type { AttributeSets, DefensibleRule, SetFigures } from "../domain/attributeSets.ts";
+import type { AttributeSets, DefensibleRule, SetFigures, Span } from "../domain/attributeSets.ts";
 import { USUAL_RULE } from "../domain/attributeSets.ts";
+import { roundingStep } from "../domain/format.ts";
 import { tUpperQuantile } from "../numerics/studentT.ts";
 import { generalisedErrors } from "../numerics/subsetErrors.ts";
 import { averagedPrice, type SetPrices } from "./averagedPrice.ts";
@@ -87,8 +88,9 @@ export function judgeSets(looked: LookedAtSets, rule: DefensibleRule = USUAL_RUL
     averaged: fit.rule.penalty === null ? averagedPrice(prices, back) : null,
     stacked: fit.rule.penalty === null ? stackedPrice(sets, prices, defensible, looked.kept) : null,
   };
+  const step = stepOf(result.figures, result.averaged, defensible);
   const untested = offered.filter((set) => Number.isNaN(error[set]!)).length;
-  return { ...result, ...setSentences(result, offered.length, untested, currencyCode) };
+  return { ...result, step, ...setSentences({ ...result, step }, offered.length, untested, currencyCode) };
 }
 
 /** Fitted price, variance for one sale and AICc per set; NaN where the set is not offered, not determined or has no freedom. */
@@ -174,6 +176,12 @@ function figuresOf(
 
 function listed(values: Float64Array): (number | null)[] {
   return Array.from(values, (value) => (Number.isFinite(value) ? value : null));
+}
+
+function stepOf({ low, high }: SetFigures, averaged: Span | null, [best]: readonly number[]): number {
+  if (averaged !== null) return roundingStep(averaged);
+  const [from, to] = best === undefined ? [null, null] : [low[best]!, high[best]!];
+  return from === null || to === null ? 1 : roundingStep({ low: from, high: to });
 }
 
 function movesMost(switches: AttributeSets["switches"], now: number): string | null {

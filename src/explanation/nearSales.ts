@@ -9,6 +9,7 @@ import { formatMoney, formatNumber, niceStep, roundTo } from "../domain/format.t
 import type { SaleColumns } from "../domain/sale.ts";
 import type { AttributeGroup, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { isIndicator } from "../numerics/column.ts";
+import { firstFew } from "./firstFew.ts";
 
 export const LISTED = 8;
 
@@ -29,7 +30,7 @@ export function nearSales(input: NearInput): NearReport {
   const gross = new Float64Array(fit.design.n);
   for (const one of adjustments) for (let i = 0; i < gross.length; i++) gross[i]! += Math.abs(one[i]!);
   const idOf = (i: number): number => sales.ids[fit.design.rows[i]!]!;
-  const order = smallest(gross, LISTED, idOf);
+  const order = firstFew(gross.length, LISTED, (a, b) => gross[a]! - gross[b]! || idOf(a) - idOf(b));
   const near = order.map((i) => describe(input, adjustments, gross[i]!, i));
   return { sales: near, sentence: sentence(near, input) };
 }
@@ -47,22 +48,6 @@ function adjustmentsFor(fit: Fit, row: SubjectRow, group: AttributeGroup): Float
     } else for (let i = 0; i < result.length; i++) result[i]! += slope * (own - column[i]!);
   }
   return result;
-}
-
-/** Rows of the smallest values, smallest first. */
-function smallest(values: Float64Array, count: number, idOf: (i: number) => number): number[] {
-  const kept: number[] = [];
-  const isBefore = (a: number, b: number): boolean =>
-    values[a]! < values[b]! || (values[a] === values[b] && idOf(a) < idOf(b));
-  for (let i = 0; i < values.length; i++) {
-    const last = kept[kept.length - 1];
-    if (kept.length === count && last !== undefined && !isBefore(i, last)) continue;
-    let place = kept.length;
-    while (place > 0 && isBefore(i, kept[place - 1]!)) place -= 1;
-    kept.splice(place, 0, i);
-    if (kept.length > count) kept.pop();
-  }
-  return kept;
 }
 
 function describe(

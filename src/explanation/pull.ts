@@ -11,6 +11,7 @@ import { formatMoney, formatNumber, niceStep, roundTo } from "../domain/format.t
 import type { SaleColumns } from "../domain/sale.ts";
 import type { Fit, SubjectRow } from "../hedonic/fit.ts";
 import { numbersOf, valueAt } from "../numerics/column.ts";
+import { firstFew } from "./firstFew.ts";
 
 /** Sales listed by name; the others are summed in one row. */
 const LISTED = 40;
@@ -54,21 +55,30 @@ export interface PullInput {
 export function pull(input: PullInput): PullReport {
   const { fit, sales } = input;
   const weights = pullWeights(fit, input.row);
-  const order = Array.from(weights.keys()).sort(
+  const listed = firstFew(
+    weights.length,
+    LISTED,
     (a, b) =>
       Math.abs(weights[b]!) - Math.abs(weights[a]!) ||
       sales.ids[fit.design.rows[a]!]! - sales.ids[fit.design.rows[b]!]!,
   );
-  const listed = order.slice(0, LISTED);
   const top = listed.map((i) => describe(input, weights, i));
   const largestMove = largestMoveOf(input, weights);
   return {
     top,
-    restWeight: order.slice(LISTED).reduce((sum, i) => sum + weights[i]!, 0),
-    restCount: order.length - listed.length,
+    restWeight: restOf(weights, listed),
+    restCount: weights.length - listed.length,
     negativeCount: weights.filter((weight) => weight < 0).length,
     sentence: pullSentence(input, weights, largestMove),
   };
+}
+
+/** Σ of the weights that are not listed. */
+function restOf(weights: Float64Array, listed: readonly number[]): number {
+  const isListed = new Set(listed);
+  let sum = 0;
+  for (let i = 0; i < weights.length; i++) if (!isListed.has(i)) sum += weights[i]!;
+  return sum;
 }
 
 function describe({ fit, row, sales, ...input }: PullInput, weights: Float64Array, i: number): Pull {

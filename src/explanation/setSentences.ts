@@ -1,6 +1,6 @@
 /**
- * What every attribute set says, in words made from the same numbers that the pictures show. Prices are rounded as the price
- * of the set in use is, spans outward.
+ * What every attribute set says, in words made from the same numbers that the pictures show. Prices are rounded to one
+ * step, spans outward.
  */
 import type { AttributeSets, CoefficientSpan } from "../domain/attributeSets.ts";
 import {
@@ -9,7 +9,6 @@ import {
   formatPercent,
   listWords,
   lowerStart,
-  roundingStep,
   roundOutward,
   roundTo,
 } from "../domain/format.ts";
@@ -53,9 +52,7 @@ function countedWords({ defensible, rule, errorKind }: Found, offered: number): 
   return `${formatNumber(defensible.length)} of ${formatNumber(offered)} attribute sets ${verb} defensible: ${which}, ${how}.`;
 }
 
-function headlineOf({ price, averaged, figures, current, defensible }: Found, currencyCode: string): string {
-  const [low, high] = [figures.low[current], figures.high[current]];
-  const step = typeof low === "number" && typeof high === "number" ? roundingStep({ low, high }) : 1;
+function headlineOf({ price, averaged, step, defensible }: Found, currencyCode: string): string {
   const money = (amount: number): string => formatMoney(amount, currencyCode);
   const ends = roundOutward(price!, step);
   const tail = averaged === null ? "" : `; averaged by weight it is ${money(roundTo(averaged.price, step))}`;

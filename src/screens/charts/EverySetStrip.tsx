@@ -34,6 +34,8 @@ export interface EverySetStripProps {
   /** Lowest and highest price of the sets that count; null while they are being found. */
   readonly span: Span | null;
   readonly step: number;
+  /** Step of the price in use, as it stands elsewhere. */
+  readonly ownStep: number;
   /** Finer, for telling one set from another. */
   readonly fineStep: number;
   readonly currencyCode: string;
@@ -206,6 +208,7 @@ function Band({ scale, frame, limit, count, ruleWords, span, step, currencyCode 
   return (
     <>
       <path d={`M${left} ${y}H${right}`} className="s-ink" strokeDasharray="5 3" />
+      {isBeside ? null : <rect x={right - 306} y={y - 19} width="306" height="18" className="f-raised" />}
       <text
         x={isBeside || ends === null ? left + 6 : right - 6}
         y={isBeside ? bracket + 4 : y - 6}
@@ -235,7 +238,7 @@ function Band({ scale, frame, limit, count, ruleWords, span, step, currencyCode 
 
 /** The set in use with its price on top, and the edition's. */
 function Named(props: EverySetStripProps & PartProps) {
-  const { marks, current, edition, scale, frame, step, currencyCode } = props;
+  const { marks, current, edition, scale, frame, ownStep, currencyCode } = props;
   const price = marks.price[current];
   const error = marks.error[current];
   const isMarked = typeof price === "number" && typeof error === "number";
@@ -244,14 +247,14 @@ function Named(props: EverySetStripProps & PartProps) {
   return (
     <>
       <text x={4} y={20} className="t-soft">
-        typical error on a sale not yet seen
+        {isFar && x < 640 ? "error" : "typical error on a sale not yet seen"}
       </text>
       {isMarked ? (
         <>
           <path d={`M${x} ${frame.top - 6}V${frame.bottom}`} className="s-verd" strokeDasharray="1 3" />
           <rect x={x - 2} y={scale.y(error) - 9} width="4" height="18" className="f-verd" />
           <text x={x} y={20} textAnchor={isFar ? "end" : "middle"} className="t-verd t-serif" style={{ fontSize: 16 }}>
-            {formatMoney(roundTo(price, step), currencyCode)}
+            {formatMoney(roundTo(price, ownStep), currencyCode)}
           </text>
           <text x={isFar ? x - 62 : x + 38} y={20} textAnchor={isFar ? "end" : "start"} className="t-soft halo">
             in use, {props.nameOf(current)}: {formatPercent(error, 1)}
@@ -264,7 +267,7 @@ function Named(props: EverySetStripProps & PartProps) {
 }
 
 function EditionMark(props: EverySetStripProps & PartProps & { readonly set: number; readonly name: string }) {
-  const { marks, scale, frame, set, name, step, currencyCode } = props;
+  const { marks, scale, frame, set, name, fineStep, currencyCode } = props;
   const price = marks.price[set];
   const error = marks.error[set];
   if (typeof price !== "number" || typeof error !== "number") return null;
@@ -274,7 +277,7 @@ function EditionMark(props: EverySetStripProps & PartProps & { readonly set: num
     <>
       <path d={`M${x} ${y - 6}l6 6l-6 6l-6 -6Z`} className="f-brass s-paper" />
       <text x={isFar ? x - 11 : x + 11} y={y + 4} textAnchor={isFar ? "end" : "start"} className="t-brass halo">
-        <tspan className="t-b">{name}</tspan> {formatMoney(roundTo(price, step), currencyCode)},{" "}
+        <tspan className="t-b">{name}</tspan> {formatMoney(roundTo(price, fineStep), currencyCode)},{" "}
         {formatPercent(error, 1)}
       </text>
     </>

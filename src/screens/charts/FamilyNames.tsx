@@ -16,6 +16,14 @@ interface Cloud {
 }
 
 const LETTER = 6.6;
+const MOVES = [0, 12, -12, 24, -24, 36, -36, 48, -48, 60, 72, 84, 96, 110, 125, 140, 160, 180] as const;
+/** The marks as `drawSetMarks` draws them, by family. */
+const GLYPHS = [
+  "M0 -5V5",
+  "M0 -3.2V3.2",
+  "M2.6 0A2.6 2.6 0 1 1 -2.6 0A2.6 2.6 0 1 1 2.6 0",
+  "M-2.4 -2.4L2.4 2.4M-2.4 2.4L2.4 -2.4",
+] as const;
 
 export function FamilyNames({ marks, scale, parting, frame, limit }: FamilyNamesProps) {
   if (parting.length === 0) return null;
@@ -28,17 +36,25 @@ export function FamilyNames({ marks, scale, parting, frame, limit }: FamilyNames
     const place = freePlace(clouds, Math.max(lowest, middleOf(ys)), lowest, text.length * LETTER, frame, taken);
     if (place === null) return [];
     taken.push(place);
+    const side = place.anchor === "end" ? -1 : 1;
     return [
-      <text
-        key={text}
-        x={place.x}
-        y={place.y}
-        textAnchor={place.anchor}
-        className="halo"
-        style={{ font: "italic 400 13px var(--serif)" }}
-      >
-        {text}
-      </text>,
+      <g key={text}>
+        <path
+          d={GLYPHS[family]}
+          transform={`translate(${place.x} ${place.y - 4})`}
+          className="s-slate f-none"
+          strokeWidth="1.4"
+        />
+        <text
+          x={place.x + side * 9}
+          y={place.y}
+          textAnchor={place.anchor}
+          className="halo"
+          style={{ font: "italic 400 13px var(--serif)" }}
+        >
+          {text}
+        </text>
+      </g>,
     ];
   });
 }
@@ -84,14 +100,14 @@ function freePlace(
   { left, right, bottom }: Frame,
   taken: readonly Place[],
 ): Place | null {
-  for (const move of [0, 12, -12, 24, -24, 36, -36, 48, 60]) {
+  for (const move of MOVES) {
     const y = wanted + move;
     if (y < lowest || y > bottom - 6) continue;
     const near = clouds.flatMap(({ xs, ys }) => xs.filter((_, i) => Math.abs(ys[i]! - (y - 4)) < 13));
     const isFree = (anchor: Place["anchor"]): boolean =>
       taken.every((one) => one.anchor !== anchor || Math.abs(one.y - y) > 17);
-    if (isFree("end") && near.every((x) => x < right - length - 16)) return { x: right - 8, y, anchor: "end" };
-    if (isFree("start") && near.every((x) => x > left + length + 16)) return { x: left + 8, y, anchor: "start" };
+    if (isFree("end") && near.every((x) => x < right - length - 26)) return { x: right - 10, y, anchor: "end" };
+    if (isFree("start") && near.every((x) => x > left + length + 26)) return { x: left + 10, y, anchor: "start" };
   }
   return null;
 }

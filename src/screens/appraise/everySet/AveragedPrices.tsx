@@ -3,12 +3,12 @@ import type { AveragedPrice, EverySet } from "../../../domain/attributeSets.ts";
 import { formatMoney, formatNumber, formatPercent, roundOutward, roundTo } from "../../../domain/format.ts";
 import { SectionHeading } from "../../parts/index.ts";
 import css from "./everySet.module.css";
-import { amountStep, fineStepOf, stepOf } from "./setWords.ts";
+import { amountStep, fineStepOf } from "./setWords.ts";
 
 export function AveragedPrices({ found }: { readonly found: EverySet }) {
   const { averaged, stacked, currencyCode } = found;
   const money = (amount: number): string => formatMoney(roundTo(amount, fineStepOf(found)), currencyCode);
-  const range = (one: AveragedPrice): string => rangeWords(one, stepOf(found));
+  const range = (one: AveragedPrice): string => rangeWords(one, found.step);
   if (averaged === null) {
     return (
       <section aria-labelledby="averaged">
@@ -23,7 +23,7 @@ export function AveragedPrices({ found }: { readonly found: EverySet }) {
   return (
     <section aria-labelledby="averaged">
       <SectionHeading id="averaged">Averaged price</SectionHeading>
-      <p className={css.average}>{formatMoney(roundTo(averaged.price, stepOf(found)), currencyCode)}</p>
+      <p className={css.average}>{formatMoney(roundTo(averaged.price, found.step), currencyCode)}</p>
       <table className={css.averages}>
         <caption className="vh">Price averaged by AICc and by stacking, and of the set in use</caption>
         <thead>
@@ -75,7 +75,7 @@ function SetInUse({ found }: { readonly found: EverySet }) {
     <tr>
       <th scope="row">Set in use</th>
       <td className="num">{formatMoney(roundTo(price, fineStepOf(found)), found.currencyCode)}</td>
-      <td className="num">{low === null || high === null ? "" : rangeWords({ low, high }, stepOf(found))}</td>
+      <td className="num">{low === null || high === null ? "" : rangeWords({ low, high }, found.step)}</td>
       <td className="num">{error === null ? "" : formatPercent(error, 2)}</td>
     </tr>
   );

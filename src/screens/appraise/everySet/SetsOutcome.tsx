@@ -4,13 +4,14 @@ import type { EverySet } from "../../../domain/attributeSets.ts";
 import { formatMoney, formatNumber, formatPercent, roundTo } from "../../../domain/format.ts";
 import type { Edition } from "../../../domain/priceModel.ts";
 import { EverySetStrip } from "../../charts/EverySetStrip.tsx";
+import { priceStep } from "../../charts/figures.ts";
 import { Busy, ErrorNote, Sentence, StrongMoney } from "../../parts/index.ts";
 import type { Workbench } from "../../workbench/workbench.ts";
 import { AveragedPrices } from "./AveragedPrices.tsx";
 import css from "./everySet.module.css";
 import { SharesView } from "./SharesView.tsx";
 import { SpanBars } from "./SpanBars.tsx";
-import { countWithin, fineStepOf, setName, stepOf } from "./setWords.ts";
+import { countWithin, fineStepOf, setName } from "./setWords.ts";
 import type { EverySetState } from "./useEverySet.ts";
 
 export function SetsOutcome({ bench, state }: { readonly bench: Workbench; readonly state: EverySetState }) {
@@ -30,6 +31,8 @@ function Found({ bench, state, found }: FoundProps) {
   const isSettled = found.rule.kind === "error" && found.rule.share === share;
   const within = useMemo(() => countWithin(found, share), [found, share]);
   const marks = useMemo(() => ({ attributes: found.attributes, ...found.marks }), [found]);
+  const priced = bench.appraisal?.priced ?? null;
+  const ownStep = priced === null ? found.step : priceStep(priced.price);
   const nameOf = useCallback((set: number) => setName(found, set), [found]);
   return (
     <div className={css.outcome} aria-busy={state.isAwaited}>
@@ -45,7 +48,8 @@ function Found({ bench, state, found }: FoundProps) {
           count={isSettled ? found.defensible.length : within.count}
           ruleWords={`error within ${Math.round(share * 100)} % of the best`}
           span={isSettled ? found.price : null}
-          step={stepOf(found)}
+          step={found.step}
+          ownStep={ownStep}
           fineStep={fineStepOf(found)}
           currencyCode={found.currencyCode}
           nameOf={nameOf}

@@ -1,6 +1,6 @@
 /** Attribute sets in words, and how coarse the figures of this place are. */
 import { type EverySet, hasAttribute } from "../../../domain/attributeSets.ts";
-import { listWords, lowerStart, niceStep, roundingStep } from "../../../domain/format.ts";
+import { listWords, lowerStart, niceStep } from "../../../domain/format.ts";
 
 const NAMED = 3;
 
@@ -18,16 +18,9 @@ function shortened(names: readonly string[]): string {
   return listWords([...names.slice(0, NAMED), `${names.length - NAMED} more`]);
 }
 
-/** Step of prices: that of the set in use. */
-export function stepOf({ listed, current }: Pick<EverySet, "listed" | "current">): number {
-  const one = listed.find(({ set }) => set === current);
-  if (one === undefined || one.low === null || one.high === null) return 1;
-  return roundingStep({ low: one.low, high: one.high });
-}
-
 /** Finer than the step of the price, for telling sets apart. */
-export function fineStepOf(found: Pick<EverySet, "listed" | "current">): number {
-  return niceStep(stepOf(found) / 5);
+export function fineStepOf({ step }: Pick<EverySet, "step">): number {
+  return niceStep(step / 5);
 }
 
 /** Step of amounts that are read beside each other: two to three digits of the largest. */
