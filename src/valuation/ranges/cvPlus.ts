@@ -4,6 +4,7 @@
  * It holds 1 − 2α − min(2(1 − 1/K)/(n/K + 1), (1 − K/n)/(K + 1)) or more of exchangeable sales.
  * A sale's fold is its place in the design's order, (i mod K).
  */
+import { AppError } from "../../domain/errors.ts";
 import type { Fit, FitRule } from "../../hedonic/fit.ts";
 import { type Moments, mergeMoments, partsBy } from "../../numerics/accumulateMoments.ts";
 import type { Column } from "../../numerics/column.ts";
@@ -25,8 +26,10 @@ const FOLDS = 10;
  * Weights and penalties are held as the fit has them, unless `refitRule` finds them anew for every fold: then the promise holds
  * for any estimator without recency weights.
  */
-export const cvPlus: RangeRule = (fit, row, levels, refitRule) => {
+export const cvPlus: RangeRule = (fit, row, levels, askedRule) => {
   const { design } = fit;
+  // Plain least squares has no rule to find, and its folds are sums of parts.
+  const refitRule = whatIsHeld(fit.rule) === null ? undefined : askedRule;
   const counted = design.weights?.reduce((sum, w) => sum + (w > 0 ? 1 : 0), 0) ?? design.n;
   if (counted < 2 * FOLDS) return withoutRanges("cv+", "Fewer than 20 sales are too few to set a tenth aside in turn.");
   const lows = new Float64Array(design.n);
@@ -42,7 +45,8 @@ export const cvPlus: RangeRule = (fit, row, levels, refitRule) => {
       }
     }
   } catch (cause) {
-    if (!(cause instanceof NumericsError)) throw cause;
+    // An estimator refuses in the words of the class, numerics in its own.
+    if (!(cause instanceof NumericsError || cause instanceof AppError)) throw cause;
     return withoutRanges(
       "cv+",
       "Without one tenth of the sales the model cannot be fitted, so this range cannot be given.",

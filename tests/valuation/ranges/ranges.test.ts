@@ -57,9 +57,10 @@ describe.each([
     });
   });
 
-  test("by CV+ come out alike when every fold finds its rule anew and finds the same", () => {
+  test("by CV+ come out alike when sales of one weight are fitted anew for every fold", () => {
     const held = RANGE_RULES["cv+"](fit, subjects[0]!, LEVELS);
-    const anew = RANGE_RULES["cv+"](fit, subjects[0]!, LEVELS, (kept) => ({ weights: kept, penalty: null }));
+    const weighted = { ...fit, rule: { weights: new Float64Array(fit.design.n).fill(1), penalty: null } };
+    const anew = RANGE_RULES["cv+"](weighted, subjects[0]!, LEVELS, (kept) => ({ weights: kept, penalty: null }));
     expectRanges(
       anew,
       (level) => {
@@ -156,4 +157,26 @@ test("levels that need more sales than there are get no range, and a sale of ful
   const lonely = RANGE_RULES["jackknife+"]({ ...fit, leverages: fit.leverages.with(3, 1) }, row, [0.8]);
   expect(lonely.ranges).toEqual([]);
   expect(lonely.sentence).toContain("only one of its kind");
+});
+
+test("where a fold leaves too little for the model, or the estimator, CV+ is not given and says so", () => {
+  // Level 1 of the choice is sale 3 alone: without its fold nothing tells its effect.
+  const size = Float64Array.from({ length: 40 }, (_, i) => (i * 7) % 23);
+  const attributes = [
+    { key: "size", values: size, kind: "line" as const },
+    { key: "kind", values: [...size.keys()].map((i) => (i === 3 ? 1 : 0)), kind: "choice" as const },
+  ];
+  const design = plainDesign(
+    attributes,
+    size.map((x, i) => 100 + x + (i % 3)),
+  );
+  const fit = fitColumns(design, design.groups, plain);
+  const row = { x: fit.solution.means, notKnown: [] };
+  const refits = (kept: Float64Array) => estimate({ ...design, weights: kept }, design.groups, { kind: "huber" }).rule;
+  const huber = fitColumns(design, design.groups, refits(new Float64Array(40).fill(1)));
+  for (const found of [RANGE_RULES["cv+"](fit, row, LEVELS), RANGE_RULES["cv+"](huber, row, LEVELS, refits)]) {
+    expect(found.ranges).toEqual([]);
+    expect(found.sentence).toContain("cannot be fitted");
+    expect(found.guarantee).toBeNull();
+  }
 });
