@@ -4,6 +4,8 @@
  * A set is a number: bit g stands for attributes[g]; lists over sets are in the order of these numbers.
  */
 
+import { listWords, lowerStart } from "./format.ts";
+
 /** Which sets count: within a share of the least error out of sample, or within a distance of the least AICc. */
 export type DefensibleRule =
   | { readonly kind: "error"; readonly share: number }
@@ -196,4 +198,20 @@ export function leftOutFor(
   const repeating = model.attributes.map(({ key }) => key).filter((key) => !looked.has(key));
   const stay = model.leftOut.filter((key) => notKnown.some((one) => one.key === key) || repeating.includes(key));
   return [...new Set([...stay, ...out, ...(out.length === 0 ? [] : repeating)])];
+}
+
+const NAMED = 3;
+
+/** "all ten attributes", "without age and hours", "only make and hours", "no attribute". */
+export function setName({ attributes }: Pick<AttributeSets, "attributes">, set: number): string {
+  const inside = attributes.filter((_, g) => hasAttribute(set, g)).map(({ label }) => lowerStart(label));
+  const out = attributes.filter((_, g) => !hasAttribute(set, g)).map(({ label }) => lowerStart(label));
+  if (out.length === 0) return `all ${attributes.length} attributes`;
+  if (inside.length === 0) return "no attribute";
+  return inside.length < out.length ? `only ${shortened(inside)}` : `without ${shortened(out)}`;
+}
+
+function shortened(names: readonly string[]): string {
+  if (names.length <= NAMED + 1) return listWords(names);
+  return listWords([...names.slice(0, NAMED), `${names.length - NAMED} more`]);
 }

@@ -1,6 +1,6 @@
 /** Right of every attribute set: the sentence, the strip of all sets, spans of coefficients, averaged prices and shares. */
 import { useCallback, useMemo, useState } from "react";
-import type { EverySet } from "../../../domain/attributeSets.ts";
+import { type EverySet, setName } from "../../../domain/attributeSets.ts";
 import { formatMoney, formatNumber, formatPercent, roundTo } from "../../../domain/format.ts";
 import type { Edition } from "../../../domain/priceModel.ts";
 import { EverySetStrip } from "../../charts/EverySetStrip.tsx";
@@ -11,7 +11,7 @@ import { AveragedPrices } from "./AveragedPrices.tsx";
 import css from "./everySet.module.css";
 import { SharesView } from "./SharesView.tsx";
 import { SpanBars } from "./SpanBars.tsx";
-import { countWithin, fineStepOf, setName } from "./setWords.ts";
+import { countWithin, fineStepOf } from "./setWords.ts";
 import type { EverySetState } from "./useEverySet.ts";
 
 export function SetsOutcome({ bench, state }: { readonly bench: Workbench; readonly state: EverySetState }) {

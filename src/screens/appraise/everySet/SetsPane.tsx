@@ -1,10 +1,10 @@
 /** Left of every attribute set: which sets count, those that weigh most, and what putting each attribute in does to the price. */
 import type { EverySet, ListedSet, SetSwitch } from "../../../domain/attributeSets.ts";
-import { hasAttribute } from "../../../domain/attributeSets.ts";
+import { hasAttribute, setName } from "../../../domain/attributeSets.ts";
 import { formatNumber, formatPercent, formatSigned, listWords, lowerStart, roundTo } from "../../../domain/format.ts";
 import { Busy, SectionHeading } from "../../parts/index.ts";
 import css from "./everySet.module.css";
-import { amountStep, fineStepOf, setName } from "./setWords.ts";
+import { amountStep, fineStepOf } from "./setWords.ts";
 import type { EverySetState } from "./useEverySet.ts";
 
 export function SetsPane({ state }: { readonly state: EverySetState }) {

@@ -1,22 +1,6 @@
-/** Attribute sets in words, and how coarse the figures of this place are. */
-import { type EverySet, hasAttribute } from "../../../domain/attributeSets.ts";
-import { listWords, lowerStart, niceStep } from "../../../domain/format.ts";
-
-const NAMED = 3;
-
-/** "all ten attributes", "without age and hours", "only make and hours", "no attribute". */
-export function setName({ attributes }: Pick<EverySet, "attributes">, set: number): string {
-  const inside = attributes.filter((_, g) => hasAttribute(set, g)).map(({ label }) => lowerStart(label));
-  const out = attributes.filter((_, g) => !hasAttribute(set, g)).map(({ label }) => lowerStart(label));
-  if (out.length === 0) return `all ${attributes.length} attributes`;
-  if (inside.length === 0) return "no attribute";
-  return inside.length < out.length ? `only ${shortened(inside)}` : `without ${shortened(out)}`;
-}
-
-function shortened(names: readonly string[]): string {
-  if (names.length <= NAMED + 1) return listWords(names);
-  return listWords([...names.slice(0, NAMED), `${names.length - NAMED} more`]);
-}
+/** How coarse the figures of this place are, and what counts before the answer is there. */
+import type { EverySet } from "../../../domain/attributeSets.ts";
+import { niceStep } from "../../../domain/format.ts";
 
 /** Finer than the step of the price, for telling sets apart. */
 export function fineStepOf({ step }: Pick<EverySet, "step">): number {

@@ -8,6 +8,7 @@ import { importVerb } from "./import.ts";
 import { priceVerb } from "./price.ts";
 import { refitVerb } from "./refit.ts";
 import { serveVerb } from "./serve.ts";
+import { setsVerb } from "./sets.ts";
 import { sheetVerb } from "./sheet.ts";
 import { tryVerb } from "./try.ts";
 import { verifyVerb } from "./verify.ts";
@@ -17,6 +18,7 @@ export const VERBS: readonly Verb[] = [
   importVerb,
   refitVerb,
   priceVerb,
+  setsVerb,
   compareVerb,
   healthVerb,
   sheetVerb,
