@@ -8,7 +8,7 @@ import { MARKET_KEY } from "../domain/attribute.ts";
 import type { PriceModel } from "../domain/priceModel.ts";
 import { correlation, inflation, partialCorrelation } from "../numerics/collinearity.ts";
 import { numbersOf } from "../numerics/column.ts";
-import { quantileOfSorted } from "../numerics/quantile.ts";
+import { quantileOfSorted, sortedOf } from "../numerics/quantile.ts";
 import { tUpperQuantile } from "../numerics/studentT.ts";
 import type { FitErrors } from "./errorRules/errors.ts";
 import type { AttributeGroup, Design, Fit } from "./fit.ts";
@@ -162,17 +162,14 @@ function evidenceOf(design: Design, group: AttributeGroup, fit: Fit): AttributeE
   };
   const columns = group.columns.map((index) => design.columns[index]!);
   if (group.form === "choice" || group.form === "yesNo") {
-    const counts = columns.map(({ level, values }) => ({
-      level: level!,
-      count: numbersOf(values).reduce((sum, one) => sum + one, 0),
-    }));
+    const counts = columns.map(({ level, mean }) => ({ level: level!, count: Math.round(mean * design.n) }));
     const rest = design.n - counts.reduce((sum, { count }) => sum + count, 0);
     const levels = [{ level: group.reference ?? "", count: rest }, ...counts];
     return { ...base, included, spread: null, levels, reference: group.reference };
   }
   const own = numbersOf(columns[0]!.values);
   const raw = group.form === "ln" ? own.map((value) => Math.exp(value)) : (group.stored ?? own);
-  const sorted = Float64Array.from(raw).sort();
+  const sorted = sortedOf(raw);
   const at = (p: number) => quantileOfSorted(sorted, p);
   const mean = raw.reduce((sum, value) => sum + value, 0) / raw.length;
   const spread = { low: at(0), q1: at(0.25), median: at(0.5), q3: at(0.75), high: at(1), mean };
@@ -196,7 +193,7 @@ function pairsOf(reference: Fit): ModelReport["movingTogether"] {
           reference.columns.indexOf(a),
           reference.columns.indexOf(b),
         ),
-        correlation: correlation(reference.design.columns[a]!.values, reference.design.columns[b]!.values),
+        correlation: correlation(reference.design.moments, a, b),
       });
     }
   });
@@ -205,8 +202,7 @@ function pairsOf(reference: Fit): ModelReport["movingTogether"] {
 
 /** √VIF, or GVIF^(1/2df) for a choice (Fox & Monette 1992). */
 function wideningOf(fit: Fit, group: AttributeGroup): ModelReport["widening"][number] {
-  const values = fit.columns.map((index) => fit.design.columns[index]!.values);
   const at = group.columns.map((index) => fit.columns.indexOf(index));
-  const times = inflation(values, fit.solution.inverse, at) ** (1 / (2 * at.length));
+  const times = inflation(fit.design.moments, fit.columns, fit.solution.inverse, at) ** (1 / (2 * at.length));
   return { key: group.key, label: group.label, times };
 }

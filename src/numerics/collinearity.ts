@@ -5,18 +5,27 @@
  */
 
 import { determinant, Matrix } from "ml-matrix";
-import { type Column, numbersOf } from "./column.ts";
+import type { Moments } from "./accumulateMoments.ts";
 
-/** Generalised variance inflation of the columns numbered `group`; one column gives its VIF. Never below 1 but for rounding. */
-export function inflation(columns: readonly Column[], inverse: Float64Array, group: readonly number[]): number {
+/**
+ * Generalised variance inflation of a group of columns; one column gives its VIF. Never below 1 but for rounding.
+ * `columns`: places in the moments of the columns that `inverse` (k × k, raw units) is about; `group`: places among those.
+ */
+export function inflation(
+  { crossProducts, scales }: Moments,
+  columns: readonly number[],
+  inverse: Float64Array,
+  group: readonly number[],
+): number {
   const k = columns.length;
+  const q = scales.length;
   const cross = Matrix.zeros(group.length, group.length);
   const partial = Matrix.zeros(group.length, group.length);
-  const centred = group.map((j) => centre(numbersOf(columns[j]!)));
   group.forEach((j, a) => {
     group.forEach((l, b) => {
-      cross.set(a, b, dotOf(centred[a]!, centred[b]!));
-      partial.set(a, b, inverse[j * k + l]!);
+      const [first, second] = [columns[j]!, columns[l]!];
+      cross.set(a, b, crossProducts[first * q + second]!);
+      partial.set(a, b, inverse[j * k + l]! * scales[first]! * scales[second]!);
     });
   });
   return Math.max(1, determinant(cross) * determinant(partial));
@@ -26,19 +35,8 @@ export function partialCorrelation(inverse: Float64Array, k: number, a: number, 
   return -inverse[a * k + b]! / Math.sqrt(inverse[a * k + a]! * inverse[b * k + b]!);
 }
 
-export function correlation(first: Column, second: Column): number {
-  const [x, y] = [numbersOf(first), numbersOf(second)];
-  const [a, b] = [centre(x), centre(y)];
-  return dotOf(a, b) / Math.sqrt(dotOf(a, a) * dotOf(b, b));
-}
-
-function centre(values: Float64Array): Float64Array {
-  const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
-  return values.map((value) => value - mean);
-}
-
-function dotOf(a: Float64Array, b: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < a.length; i++) sum += a[i]! * b[i]!;
-  return sum;
+/** Correlation of two columns of the moments, at their weights. */
+export function correlation({ crossProducts, scales }: Moments, a: number, b: number): number {
+  const q = scales.length;
+  return crossProducts[a * q + b]! / Math.sqrt(crossProducts[a * q + a]! * crossProducts[b * q + b]!);
 }

@@ -8,8 +8,7 @@ import type { Reach, ReachVerdict } from "../domain/appraisal.ts";
 import { formatNumber, listWords, lowerStart } from "../domain/format.ts";
 import type { Subject } from "../domain/subject.ts";
 import type { AttributeGroup, Fit, SubjectRow } from "../hedonic/fit.ts";
-import { numbersOf } from "../numerics/column.ts";
-import { quantileOfSorted } from "../numerics/quantile.ts";
+import { quantileOfSorted, sortedOf } from "../numerics/quantile.ts";
 import { subjectLeverage } from "./estimatePrice.ts";
 import { rawValue } from "./rawValue.ts";
 
@@ -33,9 +32,10 @@ export function measureReach(fit: Fit, row: SubjectRow, subject: Subject, itemWo
 
 function reachOfNumber(group: AttributeGroup, stored: Float64Array, row: SubjectRow, subject: Subject): AttributeReach {
   // Judged on the column's own scale, where a logarithm spreads values as the model sees them.
-  const scale = group.form === "ln" ? Math.log : (value: number) => value;
+  const isLn = group.form === "ln";
+  const scale = isLn ? Math.log : (value: number) => value;
   const undo = (value: number) => (group.form === "ln" ? Math.exp(value) : value);
-  const sorted = stored.map(scale).sort();
+  const sorted = isLn ? sortedOf(stored).map(Math.log) : sortedOf(stored);
   const value = group.blend !== null ? row.x[group.columns[0]!]! : scale(rawValue(group, subject));
   const [low, high] = [sorted[0]!, sorted[sorted.length - 1]!];
   const verdict: ReachVerdict = value < low || value > high ? "beyond" : isAtEdge(sorted, value) ? "edge" : "inside";
@@ -66,10 +66,21 @@ function isAtEdge(sorted: Float64Array, value: number): boolean {
   if (sorted.length >= 100) {
     if (value < quantileOfSorted(sorted, EDGE_SHARE) || value > quantileOfSorted(sorted, 1 - EDGE_SHARE)) return true;
   }
-  const above = sorted.findIndex((one) => one >= value);
+  const above = firstFrom(sorted, value);
   if (above <= 0 || sorted[above] === value) return false;
   const span = sorted[sorted.length - 1]! - sorted[0]!;
   return sorted[above]! - sorted[above - 1]! > GAP_SHARE * span;
+}
+
+/** Place of the first value that is not below; −1 when all are. */
+function firstFrom(sorted: Float64Array, value: number): number {
+  let [low, high] = [0, sorted.length];
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (sorted[middle]! < value) low = middle + 1;
+    else high = middle;
+  }
+  return low === sorted.length ? -1 : low;
 }
 
 function reachOfLevel(fit: Fit, group: AttributeGroup, subject: Subject): AttributeReach {
@@ -78,8 +89,9 @@ function reachOfLevel(fit: Fit, group: AttributeGroup, subject: Subject): Attrib
   const level = group.merged?.levels.includes(stated) ? group.merged.name : stated;
   const counts = group.columns.map((index) => fit.design.columns[index]!);
   const column = counts.find((one) => one.level === level);
-  const others = counts.reduce((sum, one) => sum + numbersOf(one.values).reduce((total, v) => total + v, 0), 0);
-  const count = column === undefined ? fit.design.n - others : numbersOf(column.values).reduce((sum, v) => sum + v, 0);
+  const countOf = ({ mean }: { mean: number }): number => Math.round(mean * fit.design.n);
+  const others = counts.reduce((sum, one) => sum + countOf(one), 0);
+  const count = column === undefined ? fit.design.n - others : countOf(column);
   const verdict: ReachVerdict = count === 0 ? "beyond" : count < FEW_SALES ? "edge" : "inside";
   const sales = count === 1 ? "1 sale" : `${formatNumber(count)} sales`;
   const sentence = `${sales} of the evidence ${count === 1 ? "has" : "have"} ${lowerStart(group.label)} ${level}.`;

@@ -65,8 +65,8 @@ function assume(fit: Fit, group: AttributeGroup, at: number, x: Float64Array): v
     const slope = fit.solution.slopes[fit.columns.indexOf(index)]!;
     for (let i = 0; i < n; i++) adds[i]! += slope * valueAt(columns[index]!.values, i);
   }
-  const order = Array.from(adds.keys()).sort((a, b) => adds[a]! - adds[b]! || a - b);
-  const chosen = order[Math.round(at * (n - 1))]!;
+  const wanted = Float64Array.from(adds).sort()[Math.round(at * (n - 1))]!;
+  const chosen = adds.indexOf(wanted);
   for (const index of group.columns) x[index] = valueAt(columns[index]!.values, chosen);
 }
 

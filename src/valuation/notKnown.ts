@@ -9,7 +9,7 @@ import { formatMoney, formatNumber, listWords, lowerStart, niceStep, roundTo } f
 import type { AttributeGroup, Design, Fit, SubjectRow } from "../hedonic/fit.ts";
 import { fitColumns } from "../hedonic/fitPriceModel.ts";
 import { numbersOf } from "../numerics/column.ts";
-import { quantileOfSorted } from "../numerics/quantile.ts";
+import { quantileOfSorted, sortedOf } from "../numerics/quantile.ts";
 import { estimatePrice } from "./estimatePrice.ts";
 
 const LEVEL = 0.9;
@@ -73,7 +73,7 @@ function valuesOf(design: Design, group: AttributeGroup): Typical[] {
       { value: "yes", x: [1] },
     ];
   const isCurve = group.form === "spline";
-  const sorted = Float64Array.from(isCurve ? group.stored! : numbersOf(columns[0]!.values)).sort();
+  const sorted = sortedOf(isCurve ? group.stored! : numbersOf(columns[0]!.values));
   return [0.25, 0.5, 0.75].map((p) => {
     const value = quantileOfSorted(sorted, p);
     const shown = formatNumber(group.form === "ln" ? Math.exp(value) : value, group.decimals);

@@ -15,7 +15,7 @@ export const choice: AttributeFormRule = {
   label: "choice",
   columns(source) {
     const { stored, levels, wanted } = source;
-    const codes = Uint16Array.from(stored);
+    const codes = new Uint16Array(stored);
     const counts = new Array<number>(levels.length).fill(0);
     for (const level of codes) counts[level]! += 1;
     const merged = wanted.rare === "merge" ? mergeRare(source, codes, counts) : null;

@@ -57,7 +57,7 @@ const SHOWN = 12;
 function listedText(found: EverySet): string {
   const { listed, current, currencyCode, averaged } = found;
   const rows = listed
-    .slice(0, SHOWN)
+    .filter(({ set }, at) => at < SHOWN || set === current)
     .map((one) => [
       `${setName(found, one.set)}${one.set === current ? ", in use" : ""}`,
       one.price === null ? "not priced" : formatMoney(one.price, currencyCode),
