@@ -2,6 +2,7 @@
 import { describe, expect, test } from "vitest";
 import { attributeSets, criteria } from "../../src/explanation/attributeSets.ts";
 import { fitColumns, plainRule } from "../../src/hedonic/fitPriceModel.ts";
+import { numbersOf, valueAt } from "../../src/numerics/column.ts";
 import { estimatePrice } from "../../src/valuation/estimatePrice.ts";
 import { plainDesign } from "../fixtures/plainDesign.ts";
 import { drawFrom } from "../fixtures/randomClass.ts";
@@ -269,4 +270,36 @@ test("criteria agree with the published ones of the houses", () => {
   const { aicc, bic } = criteria(sse, 546, 12);
   expect(aicc).toBeCloseTo(AIC + (2 * 13 * 14) / (546 - 14), 8);
   expect(bic).toBeCloseTo(BIC, 8);
+});
+
+describe("600 stones, whose size is said three times over", () => {
+  const stones = referenceSales("diamonds600");
+  const columns = stones.terms.flatMap((key, t) =>
+    stones.groups[t]!.map((j) => ({ key: stones.groups[t]!.length > 1 ? stones.names[j]! : key, j })),
+  );
+  const plain = plainDesign(
+    columns.map(({ key, j }) => ({ key, values: numbersOf(stones.columns[j]!), kind: "line" as const })),
+    stones.response.map(Math.exp),
+    { ln: true },
+  );
+  const groups = stones.terms.map((key, t) => ({
+    ...plain.groups[0]!,
+    key,
+    label: key,
+    columns: stones.groups[t]!.map((j) => columns.findIndex((one) => one.j === j)),
+  }));
+  const design = { ...plain, groups };
+  const row = { x: Float64Array.from(columns, ({ j }) => valueAt(stones.columns[j]!, 17)), notKnown: [] };
+  const found = attributeSets({ reference: groups, fit: fitColumns(design, groups), row, currencyCode: "EUR" });
+
+  test("reports by itself that cut, colour and clarity turn their signs where size is left out", () => {
+    const turning = found.coefficients.filter(({ signs: { above, below } }) => above > 0 && below > 0);
+    const quality = (word: string) => turning.filter(({ attribute }) => attribute === word).length;
+    for (const key of ["cut", "color", "clarity"]) expect([key, quality(key) > 0]).toEqual([key, true]);
+    const ladder = stones.expected.ladder.models;
+    const ofClarity = found.coefficients.find(({ attribute, all }) => attribute === "clarity" && all.low < -1)!;
+    expect(ofClarity.all.low).toBeLessThanOrEqual(ladder.M1.coefficients.clarityVVS1 + 1e-9);
+    expect(ofClarity.now).toBeGreaterThan(0);
+    expect(found.turns).toMatch(/coefficients change sign somewhere in the \d+ sets \(/);
+  });
 });
