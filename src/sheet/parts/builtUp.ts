@@ -182,6 +182,32 @@ function formsWords({ appraisal }: SheetContext): string {
   return said.length === 0 ? "" : ` ${upperStart(said.join(", "))}.`;
 }
 
+const MARKET_WORDS = {
+  line: "as a straight line in the sale date",
+  quarters: "by calendar quarter",
+  spline: "as a curve over the sale dates",
+} as const;
+
+/** How the fit was come by and what its errors suppose; merged levels, weights and the like. */
+function fitWords({ appraisal }: SheetContext): string {
+  const { fitted } = appraisal.report;
+  if (fitted === undefined) return " Least squares.";
+  const { sentence, errorsSentence, errorsCaution, notes } = fitted;
+  return [sentence, errorsSentence, errorsCaution ?? "", ...notes]
+    .filter((part) => part !== "")
+    .map((part) => ` ${part}`)
+    .join("");
+}
+
+function rangeWords({ priced }: SheetContext): string {
+  const { range } = priced.price;
+  if (range === undefined) return "";
+  return [range.insteadOf, range.sentence, range.guarantee, range.disagreement]
+    .filter((part) => part !== null)
+    .map((part) => ` ${part}`)
+    .join("");
+}
+
 function note(context: SheetContext): string {
   const { sheet, appraisal, priced, currencyCode, step } = context;
   const { report } = appraisal;
@@ -191,8 +217,8 @@ function note(context: SheetContext): string {
     report.model.market === "none"
       ? " No market movement in the model."
       : held === null
-        ? " Market movement as a straight line in the sale date."
-        : ` Market movement as a straight line, held after ${formatDay(held)}, the last sale.`;
+        ? ` Market movement ${MARKET_WORDS[report.model.market]}.`
+        : ` Market movement ${MARKET_WORDS[report.model.market]}, held after ${formatDay(held)}, the last sale.`;
   const order = isLn
     ? " In another order the steps would read differently in money; the factors and the end would not."
     : " The steps read the same in any order.";
@@ -200,5 +226,5 @@ function note(context: SheetContext): string {
     ? ` ${moneyTo(step, priced.price.amount, currencyCode)} is the median; the mean is ${moneyTo(step, priced.price.meanAmount, currencyCode)}.`
     : "";
   const rounding = `Figures are rounded to ${formatMoney(step, currencyCode)} so that they add up; ${formatMoney(sheet.conclusion.roundingStep, currencyCode)} is about a tenth of half the 90\u00a0% range.`;
-  return `Price model: ${isLn ? "ln price" : "price"}, least squares, ${editionWords(sheet.editionNumber)}.${formsWords(context)}${market}${order}${centre} ${rounding}`;
+  return `Price model: ${isLn ? "ln price" : "price"}, ${editionWords(sheet.editionNumber)}.${fitWords(context)}${formsWords(context)}${market}${order}${centre}${rangeWords(context)} ${rounding}`;
 }
