@@ -108,10 +108,13 @@ export function priceOf(input: AppraisalInput, { design }: PreparedEvidence): nu
   return estimatePrice(fitColumns(design, kept, rule), row, [], null).amount;
 }
 
-/** Attributes in use: not left out and known; a product while both of its attributes are. */
+/** Attributes in use: not left out and known; a product while both of its attributes are, a blend while all of its members are. */
 function staying({ leftOut }: PriceModel, row: SubjectRow | null): (group: AttributeGroup) => boolean {
   const isIn = (key: string): boolean => !leftOut.includes(key) && !row?.notKnown.includes(key);
-  return ({ key, product }) => isIn(key) && (product === null || (isIn(product.a) && isIn(product.b)));
+  return ({ key, product, blend }) =>
+    isIn(key) &&
+    (product === null || (isIn(product.a) && isIn(product.b))) &&
+    (blend === null || blend.members.every(isIn));
 }
 
 /** The model's estimator on the sales that are kept. */
@@ -153,6 +156,10 @@ function leftOutOf(
     if (exact !== undefined) return [{ key, label, why: "exact", sentence: exact.sentence }];
     if (model.leftOut.includes(key))
       return [{ key, label, why: "person", sentence: `${label} is left out by choice.` }];
+    const parts = group.blend?.members ?? (group.product === null ? [] : [group.product.a, group.product.b]);
+    if (parts.some((part) => model.leftOut.includes(part))) {
+      return [{ key, label, why: "person", sentence: `${label} is left out, as one of its attributes is.` }];
+    }
     if (!row?.notKnown.includes(key)) return [];
     const sentence = `${label} is not known for this item, so the model without it prices it.`;
     return [{ key, label, why: "not-known", sentence }];

@@ -19,6 +19,24 @@ export interface BlendColumn {
   readonly at: (values: ReadonlyMap<string, number>) => number;
 }
 
+/** Refuses what cannot be put together: members that are no numbers, not in the set, or in two blends at once. */
+export function checkBlends(
+  blends: readonly Blend[],
+  numbers: ReadonlySet<string>,
+  labelOf: (key: string) => string,
+): void {
+  const taken = new Map<string, string>();
+  for (const blend of blends) {
+    for (const { key } of blend.members) {
+      if (!numbers.has(key))
+        throw refusal(blend, `${labelOf(key)} is not a number of the attribute set, so it cannot be blended.`);
+      const other = taken.get(key);
+      if (other !== undefined) throw refusal(blend, `${labelOf(key)} is in the blend ${other} already.`);
+      taken.set(key, blend.label);
+    }
+  }
+}
+
 /** Refuses (AppError, family "fit"): fewer than two members, a member that does not vary, own weights that are all zero. */
 export function blendColumn(blend: Blend, members: readonly BlendMember[]): BlendColumn {
   if (members.length < 2) throw refusal(blend, "A blend needs at least two attributes that are numbers.");

@@ -6,19 +6,19 @@
  */
 import type { NewAssetClass } from "../domain/assetClass.ts";
 import { CHANNEL_KEY, MARKET_KEY } from "../domain/attribute.ts";
-import { DAYS_PER_MONTH, type Day, dayNumber, yearsBetween } from "../domain/day.ts";
+import { type Day, yearsBetween } from "../domain/day.ts";
 import { AppError } from "../domain/errors.ts";
-import { formatNumber } from "../domain/format.ts";
 import type { ModelAttribute, PriceModel } from "../domain/priceModel.ts";
 import { CHANNELS, type SaleColumns } from "../domain/sale.ts";
 import { accumulateMoments } from "../numerics/accumulateMoments.ts";
 import { type Column, isIndicator } from "../numerics/column.ts";
-import { type BlendMember, blendColumn } from "./blends.ts";
+import { type BlendMember, blendColumn, checkBlends } from "./blends.ts";
 import type { AttributeGroup, Design, DesignColumn } from "./fit.ts";
 import type { FormSource } from "./forms/form.ts";
 import { FORMS } from "./forms/index.ts";
 import { marketColumns } from "./market.ts";
 import { productColumns } from "./products.ts";
+import { recencyWeights } from "./recency.ts";
 
 /**
  * `effectiveOn`: the day the price speaks of, which recency counts from; the last sale without one.
@@ -51,7 +51,9 @@ export function buildDesign(
   addAttributes(built, sources, model);
   addProducts(built, model);
   addMarket(built, model, soldOn);
-  const weights = recencyWeights(model.halfLifeMonths ?? null, soldOn, effectiveOn, built.notes);
+  const recency = recencyWeights(model.halfLifeMonths ?? null, soldOn, effectiveOn);
+  const weights = recency?.weights ?? null;
+  if (recency !== null) built.notes.push(recency.note);
   const all = [...built.columns.map((column) => column.values), response];
   return {
     n: rows.length,
@@ -128,6 +130,9 @@ function refuseUnsuited(kind: string, label: string, { form }: ModelAttribute): 
 /** Each attribute in the model's order; a blend where its first member stands. */
 function addAttributes(built: Built, sources: readonly FormSource[], model: PriceModel): void {
   const blends = model.blends ?? [];
+  const isNumber = ({ attribute }: FormSource): boolean => attribute?.kind === "number" || attribute?.kind === "built";
+  const numbers = new Set(sources.filter(isNumber).map(({ wanted }) => wanted.key));
+  checkBlends(blends, numbers, (key) => sources.find(({ wanted }) => wanted.key === key)?.label ?? key);
   const added = new Set<string>();
   for (const source of sources) {
     const blend = blends.find(({ members }) => members.some(({ key }) => key === source.wanted.key));
@@ -139,7 +144,6 @@ function addAttributes(built: Built, sources: readonly FormSource[], model: Pric
     added.add(blend.key);
     const members = sources
       .filter(({ wanted }) => blend.members.some(({ key }) => key === wanted.key))
-      .filter(({ attribute }) => attribute?.kind === "number" || attribute?.kind === "built")
       .map(({ wanted, label, stored }): BlendMember => ({ key: wanted.key, label, stored }));
     const { values, at } = blendColumn(blend, members);
     push(built, blend.key, [{ level: null, values }], {
@@ -205,12 +209,24 @@ function push(
 
 /** Pairs of which both stand in the design; of the others nothing enters. */
 function addProducts(built: Built, { interactions = [] }: PriceModel): void {
+  const entered = new Set<string>();
   for (const pair of interactions) {
     const [a, b] = [pair.a, pair.b].map((key) => built.groups.find((group) => group.key === key));
     if (a === undefined || b === undefined || a.product !== null || b.product !== null) {
-      built.notes.push(`The product of ${pair.a} and ${pair.b} is left out: both must be attributes of the set.`);
+      const names = `${a?.label ?? pair.a} and ${b?.label ?? pair.b}`;
+      built.notes.push(
+        `The product of ${names} is left out: both must be attributes of the set that stand for themselves.`,
+      );
       continue;
     }
+    const name = [pair.a, pair.b].sort().join("*");
+    if (a === b || entered.has(name)) {
+      built.notes.push(
+        `The product of ${a.label} and ${b.label} is left out: ${a === b ? "an attribute with itself is a matter of its form" : "it is in already"}.`,
+      );
+      continue;
+    }
+    entered.add(name);
     const { columns, group } = productColumns(a, b, built.columns);
     push(built, group.key, columns, group);
   }
@@ -221,20 +237,6 @@ function addMarket(built: Built, { market }: PriceModel, soldOn: Float64Array): 
   if (made === null) return;
   built.notes.push(...made.notes);
   push(built, MARKET_KEY, made.columns, made.group);
-}
-
-function recencyWeights(
-  halfLifeMonths: number | null,
-  soldOn: Float64Array,
-  effectiveOn: Day | null,
-  notes: string[],
-): Float64Array | null {
-  if (halfLifeMonths === null) return null;
-  const until = (effectiveOn === null ? null : dayNumber(effectiveOn)) ?? soldOn.at(-1)!;
-  notes.push(`A sale counts half for every ${formatNumber(halfLifeMonths, 0)} months before the effective date.`);
-  const weights = soldOn.map((day) => 0.5 ** ((until - day) / DAYS_PER_MONTH / halfLifeMonths));
-  const mean = weights.reduce((sum, one) => sum + one, 0) / weights.length;
-  return weights.map((one) => one / mean);
 }
 
 function meanOf(column: Column): number {

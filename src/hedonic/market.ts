@@ -141,7 +141,7 @@ function quarters(soldOn: Float64Array): MarketColumns {
   const places = new Map(own.map((quarter, i) => [quarter, placeOf(soldOn[i]!)]));
   const codes = Uint16Array.from(own, (quarter) => places.get(quarter)!);
   const columns = kept.slice(1).map(({ name }, at) => ({ level: name, values: indicator(codes, at + 1) }));
-  const said = `Market movement: ${listWords(joined)} ${joined.length === 1 ? "has" : "have"} fewer than ${formatNumber(FEW_SALES)} sales beside them and ${joined.length === 1 ? "goes" : "go"} with the quarter before.`;
+  const said = `Market movement: ${listWords(joined)} ${joined.length === 1 ? "goes" : "go"} with the quarter before, as one of the two has fewer than ${formatNumber(FEW_SALES)} sales.`;
   return {
     columns,
     group: {

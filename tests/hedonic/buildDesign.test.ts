@@ -239,3 +239,90 @@ describe("blends", () => {
     expect(() => run(blend("equal"), null, { ...SALES, values })).toThrow(/Hours has the same value in every sale/);
   });
 });
+
+describe("what is said rather than passed over", () => {
+  const levels = ["other", "Quern", "Tessaly", "Fenwold", "Ostrand"];
+  const assetClass = {
+    ...CLASS,
+    attributes: CLASS.attributes.map((one) => (one.key === "make" ? { ...one, levels } : one)),
+  };
+  const rareMakes = (fenwold: number, ostrand: number) => {
+    const make = SALES.values.make!.map((level, i) => (i < fenwold ? 3 : i < fenwold + ostrand ? 4 : level));
+    return { ...SALES, values: { ...SALES.values, make } };
+  };
+  const notes = (change: Partial<PriceModel>, columns: SaleColumns = SALES) =>
+    computeAppraisal({ assetClass, sales: columns, model: model(change), subject: null, levels: [0.9] }).fit.design
+      .notes;
+
+  test("merged levels take a name that no level has", () => {
+    const input = { assetClass, sales: rareMakes(3, 2), subject: null, levels: [0.9] };
+    const { fit } = computeAppraisal({
+      ...input,
+      model: model(withForm("make", { rare: "merge", reference: "Quern" })),
+    });
+    const names = fit.groups
+      .find(({ key }) => key === "make")!
+      .columns.map((index) => fit.design.columns[index]!.level);
+    expect(names.sort()).toEqual(["Tessaly", "other", "other levels"]);
+  });
+
+  test("a single rare level, and a reference level that was merged away", () => {
+    expect(notes(withForm("make", { rare: "merge" }), rareMakes(3, 0))[0]).toMatch(
+      /only Fenwold has fewer than 5 sales/,
+    );
+    const gone = notes(withForm("make", { rare: "merge", reference: "Ostrand" }), rareMakes(3, 2));
+    expect(gone.at(-1)).toBe("Make: Ostrand is not there to be read against; the most frequent level stands in.");
+  });
+
+  test("a product with itself or twice is left out with a sentence", () => {
+    const twice = notes({
+      interactions: [
+        { a: "hours", b: "pull" },
+        { a: "pull", b: "hours" },
+        { a: "pull", b: "pull" },
+      ],
+    });
+    expect(twice).toEqual([
+      "The product of Pull and Hours is left out: it is in already.",
+      "The product of Pull and Pull is left out: an attribute with itself is a matter of its form.",
+    ]);
+  });
+
+  test("a blend of what is no number, or of one attribute twice, is refused", () => {
+    const member = (key: string) => ({ key, sign: 1 as const, weight: 1 });
+    const blend = (key: string, members: string[]) => ({
+      key,
+      label: key,
+      weighting: "equal" as const,
+      members: members.map(member),
+    });
+    expect(() => notes({ blends: [blend("blend_a", ["hours", "make"])] })).toThrow(/Make is not a number/);
+    expect(() => notes({ blends: [blend("blend_a", ["hours", "pull"]), blend("blend_b", ["pull", "built"])] })).toThrow(
+      /Pull is in the blend blend_a already/,
+    );
+  });
+
+  test("a blend goes out with one of its members", () => {
+    const blends = [
+      {
+        key: "blend_wear",
+        label: "Wear",
+        weighting: "equal" as const,
+        members: [
+          { key: "hours", sign: 1 as const, weight: 1 },
+          { key: "built", sign: 1 as const, weight: 1 },
+        ],
+      },
+    ];
+    const { appraisal } = run({ blends, leftOut: ["hours"] });
+    expect(appraisal.report.attributes).not.toContain("blend_wear");
+    expect(appraisal.report.leftOut.map(({ sentence }) => sentence)).toContain(
+      "Wear is left out, as one of its attributes is.",
+    );
+  });
+
+  test("a half-life too short for any sale is refused in words", () => {
+    const subject = { ...SUBJECT, effectiveOn: "2060-01-01" };
+    expect(() => run({ halfLifeMonths: 0.1 }, subject)).toThrow(/halve every 0.1 months no sale is left/);
+  });
+});

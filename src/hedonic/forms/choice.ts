@@ -34,11 +34,26 @@ export const choice: AttributeFormRule = {
       stepWords: null,
       unit: null,
       merged: merged === null ? null : { name: merged.name, levels: merged.levels },
-      notes: merged?.notes ?? [],
+      notes: notesOf(source, merged, counts),
       numbersAt: (value) => columns.map((column) => (column.level === nameOf(value) ? 1 : 0)),
     } satisfies FormColumns;
   },
 };
+
+/** What merging did, or why it did nothing; and a stated reference level that is not there to be read against. */
+function notesOf({ label, levels, wanted }: FormSource, merged: Merged | null, counts: readonly number[]): string[] {
+  const { rare, reference } = wanted;
+  const few = levels.filter((_, at) => counts[at]! > 0 && counts[at]! < RARE_SALES);
+  const alone =
+    rare === "merge" && merged === null && few.length === 1
+      ? [`${label}: only ${few[0]} has fewer than ${RARE_SALES} sales, so there is nothing to take it together with.`]
+      : [];
+  const isGone = reference !== null && rare !== "pool" && !((counts[levels.indexOf(reference)] ?? 0) > 0);
+  const moved = isGone
+    ? [`${label}: ${reference} is not there to be read against; the most frequent level stands in.`]
+    : [];
+  return [...(merged?.notes ?? []), ...alone, ...moved];
+}
 
 function baseOf({ levels, wanted }: FormSource, counts: readonly number[], present: readonly number[]): number {
   const stated = wanted.reference === null ? -1 : levels.indexOf(wanted.reference);
@@ -56,12 +71,14 @@ interface Merged {
 function mergeRare({ label, levels }: FormSource, codes: Uint16Array, counts: number[]): Merged | null {
   const rare = levels.map((_, at) => at).filter((at) => counts[at]! > 0 && counts[at]! < RARE_SALES);
   if (rare.length < 2) return null;
+  const name =
+    ["other", "other levels", "levels merged"].find((one) => !levels.includes(one)) ?? `merged ${levels.length}`;
   const code = levels.length;
   const isRare = new Set(rare);
   for (let i = 0; i < codes.length; i++) if (isRare.has(codes[i]!)) codes[i] = code;
   const named = rare.map((at) => `${levels[at]} (${formatNumber(counts[at]!)})`);
   counts[code] = rare.reduce((sum, at) => sum + counts[at]!, 0);
   for (const at of rare) counts[at] = 0;
-  const words = `${label}: ${listWords(named)} have fewer than ${RARE_SALES} sales each and are taken together as other, ${formatNumber(counts[code]!)} sales.`;
-  return { name: "other", levels: rare.map((at) => levels[at]!), notes: [words] };
+  const words = `${label}: ${listWords(named)} have fewer than ${RARE_SALES} sales each and are taken together as ${name}, ${formatNumber(counts[code]!)} sales.`;
+  return { name, levels: rare.map((at) => levels[at]!), notes: [words] };
 }
