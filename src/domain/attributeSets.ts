@@ -96,6 +96,8 @@ export interface AttributeSets {
   readonly attributes: readonly { readonly key: string; readonly label: string }[];
   /** In every set: the market movement, and what is beyond the fifteen that can be in or out. */
   readonly alwaysIn: readonly { readonly key: string; readonly label: string }[];
+  /** Those of `alwaysIn` that the fit can least do without, where more than fifteen could be in or out. */
+  readonly pinned: readonly { readonly key: string; readonly label: string }[];
   /** In no set, because the subject's value is not known. */
   readonly notKnown: readonly { readonly key: string; readonly label: string }[];
   readonly sales: number;

@@ -73,6 +73,7 @@ export function judgeSets(looked: LookedAtSets, rule: DefensibleRule = USUAL_RUL
   const result = {
     attributes: named(groups),
     alwaysIn: named(alwaysIn),
+    pinned: named(sets.pinned),
     notKnown: named(notKnown),
     sales: fit.design.n,
     figures: figuresOf(sets, prices, error),

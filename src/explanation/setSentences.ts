@@ -23,12 +23,12 @@ const LITTLE_DOUBT = 0.1;
 
 /** `offered`: sets that there are; `untested`: those without an error out of sample. */
 export function setSentences(found: Found, offered: number, untested: number, currencyCode: string): Words {
-  const { alwaysIn, price, defensible } = found;
+  const { alwaysIn, pinned, price, defensible } = found;
   const counted = countedWords(found, offered);
   const headline = price === null ? counted : headlineOf(found, currencyCode);
   const turns = turnsOf(found, offered);
   const doubt = doubtOf(found);
-  const others = alwaysIn.map(({ label }) => label);
+  const others = alwaysIn.filter(({ key }) => !pinned.some((one) => one.key === key)).map(({ label }) => label);
   const cannot = `${formatNumber(untested)} of them cannot be tested so: without some sale or tenth a coefficient is not determined.`;
   const sentences = [
     counted,
@@ -36,9 +36,16 @@ export function setSentences(found: Found, offered: number, untested: number, cu
     ...(price === null ? [] : [headline]),
     ...(defensible.length > 1 ? [turns] : []),
     ...(doubt === null ? [] : [doubt]),
+    ...(pinned.length === 0 ? [] : [pinnedWords(found)]),
     ...(others.length === 0 ? [] : [`In every set: ${listWords(others)}.`]),
   ];
   return { headline, turns, doubt, sentences };
+}
+
+function pinnedWords({ pinned, attributes }: Found): string {
+  const count = formatNumber(pinned.length + attributes.length);
+  const names = listWords(pinned.map(({ label }) => lowerStart(label)));
+  return `Of ${count} attributes ${formatNumber(attributes.length)} can be in or out in every combination; ${names}, which the fit can least do without, ${pinned.length === 1 ? "is" : "are"} in every set.`;
 }
 
 function countedWords({ defensible, rule, errorKind }: Found, offered: number): string {

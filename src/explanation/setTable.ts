@@ -14,6 +14,8 @@ export interface SetTable {
   /** Bit g of a set stands for groups[g]. */
   readonly groups: readonly AttributeGroup[];
   readonly alwaysIn: readonly AttributeGroup[];
+  /** Those of alwaysIn that are there because no more than fifteen can be in or out. */
+  readonly pinned: readonly AttributeGroup[];
   readonly notKnown: readonly AttributeGroup[];
   readonly table: SubsetTable;
   /** The set of the fit in use. */
@@ -59,6 +61,7 @@ export function buildSetTable({ reference, fit, row }: SetTableInput, coefficien
     moments,
     groups: free,
     alwaysIn,
+    pinned: alwaysIn.filter((group) => !group.isMarket),
     notKnown: reference.filter((group) => !isKnown(group)),
     table,
     current: free.reduce((set, group, g) => set + (isInUse(group) ? 2 ** g : 0), 0),

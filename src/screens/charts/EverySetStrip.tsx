@@ -205,6 +205,7 @@ function Band({ scale, frame, limit, count, ruleWords, span, step, currencyCode 
   const room = ends === null ? right - left : ends.low - left - 66;
   const bracket = top + 13;
   const isBeside = room > 330;
+  const money = (steps: number): string => formatMoney(steps * step, currencyCode);
   return (
     <>
       <path d={`M${left} ${y}H${right}`} className="s-ink" strokeDasharray="5 3" />
@@ -224,15 +225,48 @@ function Band({ scale, frame, limit, count, ruleWords, span, step, currencyCode 
             className="s-ink f-none"
             strokeWidth="1.4"
           />
-          <text x={ends.low - 7} y={bracket + 4} textAnchor="end" className="t-b halo">
-            {formatMoney(Math.floor(span.low / step) * step, currencyCode)}
-          </text>
-          <text x={ends.high + 7} y={bracket + 4} className="t-b halo">
-            {formatMoney(Math.ceil(span.high / step) * step, currencyCode)}
-          </text>
+          <BracketEnd
+            x={ends.low}
+            y={bracket}
+            side={-1}
+            room={ends.low - left}
+            text={money(Math.floor(span.low / step))}
+          />
+          <BracketEnd
+            x={ends.high}
+            y={bracket}
+            side={1}
+            room={right - ends.high}
+            text={money(Math.ceil(span.high / step))}
+          />
         </>
       )}
     </>
+  );
+}
+
+interface BracketEndProps {
+  readonly x: number;
+  readonly y: number;
+  /** −1: to the left of the bracket. */
+  readonly side: 1 | -1;
+  readonly room: number;
+  readonly text: string;
+}
+
+/** Beside the bracket, or over its end where there is no room. */
+function BracketEnd({ x, y, side, room, text }: BracketEndProps) {
+  const fits = room > text.length * 7 + 10;
+  const isStart = (side === 1) === fits;
+  return (
+    <text
+      x={fits ? x + side * 7 : x}
+      y={fits ? y + 4 : y + 20}
+      textAnchor={isStart ? "start" : "end"}
+      className="t-b halo"
+    >
+      {text}
+    </text>
   );
 }
 

@@ -90,7 +90,9 @@ function rangeWords(range: { low: number; high: number }, step: number): string 
 function Doubt({ found, averaged }: { readonly found: EverySet; readonly averaged: AveragedPrice }) {
   const { stacked, currencyCode, doubt } = found;
   const width = ({ addedWidth }: AveragedPrice): string =>
-    formatMoney(roundTo(addedWidth, amountStep([addedWidth])), currencyCode);
+    addedWidth < 1
+      ? `less than ${formatMoney(1, currencyCode)}`
+      : formatMoney(roundTo(addedWidth, amountStep([addedWidth])), currencyCode);
   const rows: readonly [string, string, string | null][] = [
     ["Doubt about the set widens the range by", width(averaged), stacked === null ? null : width(stacked)],
     [

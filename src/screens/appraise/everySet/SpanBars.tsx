@@ -89,7 +89,7 @@ function SpanRow({ one, scale }: { readonly one: CoefficientSpan; readonly scale
         {level === null || level === "yes" ? label : `${label} ${level}`}{" "}
         <span className="soft fine">{stepWords ?? (level === "yes" ? "yes" : "")}</span>
         {isTurning(one.signs) ? (
-          <span className={turnsHere ? "brick fine" : "brass fine"}> {turnsHere ? "sign turns" : "turns in all"}</span>
+          <span className={turnsHere ? "brick fine" : "brass fine"}> {turnsHere ? "sign turns" : "turns"}</span>
         ) : null}
       </th>
       <td className={css.picture}>
