@@ -1,7 +1,7 @@
 /**
  * The columns of a class kept as blobs of 64 Ki sales: read back some ten times as fast as rows. Numbers are little-endian
  * doubles as they are in memory. A copy is read only inside one transaction with its stamp, and only when the stamp names the
- * class's rows_version and every block has the length it must have; else rows are read, as if there were none.
+ * class's rows_version and every column has the length it must have; else rows are read, as if there were none.
  */
 import type { Database } from "better-sqlite3";
 import { type StoredAttribute, valuesTable } from "./attributeTables.ts";
@@ -132,11 +132,12 @@ export function writeSnapshot(
 const MANY_ROWS = 200;
 
 /**
- * Many rows at once, inside the caller's transaction: the copy is ended first, and the triggers that would end it again at every
+ * Many rows at once, in one transaction, so that a failure puts everything back: the copy is ended first, and the triggers that would end it again at every
  * row (and make each row a step that can be undone by itself) are taken off while the work runs, and put back.
  */
 export function withSnapshotEnded<T>(db: Database, classId: number, rowCount: number, work: () => T): T {
   if (rowCount < MANY_ROWS) return work();
+  if (!db.inTransaction) return db.transaction(() => withSnapshotEnded(db, classId, rowCount, work))();
   db.prepare("DELETE FROM snapshot_stamps WHERE class_id = ?").run(classId);
   const triggers = db
     .prepare<[string], { name: string; sql: string }>(

@@ -63,37 +63,44 @@ export function readSaleColumns(
 ): SaleColumns {
   const look = () => readSnapshot(db, classId, rowsVersion, attributes);
   const kept = db.inTransaction ? look() : db.transaction(look)();
-  const found = kept ?? readRows(db, classId, attributes);
-  if (kept === null && found.base.ids.length >= SNAPSHOT_SALES) keep(db, classId, rowsVersion, attributes, found);
+  if (kept !== null) return toSaleColumns(db, classId, attributes, kept);
+  const before = commitsOfOthers(db);
+  const found = readRows(db, classId, attributes);
+  if (found.base.ids.length >= SNAPSHOT_SALES) keep(db, classId, rowsVersion, attributes, found, before);
   return toSaleColumns(db, classId, attributes, found);
 }
 
-/** A copy is a convenience: a store that cannot be written just now is read all the same. */
+/** Changes whenever another connection has committed anything to the file. */
+function commitsOfOthers(db: Database): unknown {
+  return db.pragma("data_version", { simple: true });
+}
+
+/**
+ * Writes the copy unless somebody has written to the file since the rows began to be read. A copy is a convenience: a store that
+ * cannot be written just now is read all the same.
+ */
 function keep(
   db: Database,
   classId: number,
   rowsVersion: number,
   attributes: readonly StoredAttribute[],
   columns: KeptColumns,
+  before: unknown,
 ): void {
   if (db.readonly) return;
   try {
     db.transaction(() => {
-      // Between reading and writing another window may have brought sales in.
-      const now = db
-        .prepare<[number], number>("SELECT rows_version FROM asset_classes WHERE id = ?")
-        .pluck()
-        .get(classId);
-      if (now === rowsVersion) writeSnapshot(db, classId, rowsVersion, attributes, columns);
+      if (commitsOfOthers(db) === before) writeSnapshot(db, classId, rowsVersion, attributes, columns);
     }).immediate();
   } catch (cause) {
-    if (!isBusy(cause)) throw cause;
+    if (!isOfTheDatabase(cause)) throw cause;
   }
 }
 
-function isBusy(cause: unknown): boolean {
+/** Busy, full, read-only or failing: reading has succeeded, and what is wrong with writing shows at the next write. */
+function isOfTheDatabase(cause: unknown): boolean {
   const code = (cause as { code?: unknown }).code;
-  return typeof code === "string" && (code.startsWith("SQLITE_BUSY") || code === "SQLITE_FULL");
+  return typeof code === "string" && code.startsWith("SQLITE_");
 }
 
 function toSaleColumns(

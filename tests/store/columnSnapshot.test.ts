@@ -194,3 +194,33 @@ describe("the copy in columns", () => {
     db.close();
   });
 });
+
+it("ends when another window changes a sale after the copy was written", () => {
+  const store = freshStore();
+  const classId = fill(store, MANY);
+  const columns = store.sales.readColumns(classId);
+  const other = new BetterSqlite3(store.path);
+  other.exec("UPDATE sales SET price_minor = 77 WHERE id = 3");
+  expect(columns.price[2]).toBe(10.02);
+  expect(other.prepare("SELECT count(*) FROM snapshot_stamps").pluck().get()).toBe(0);
+  const again = openStore(store.path);
+  expect(again.sales.readColumns(classId).price[2]).toBe(0.77);
+  again.close();
+  other.close();
+});
+
+it("puts its guards back when bringing many sales in fails", () => {
+  const one = kept();
+  const bad = [
+    ...Array.from({ length: 300 }, () => ({ row: null, sale: sale(), cells: null })),
+    { row: 301, sale: sale({ soldOn: "no day" }), cells: null },
+  ];
+  expect(() => one.store.sales.insertSales(one.classId, null, bad)).toThrow();
+  const guards = one.db
+    .prepare("SELECT count(*) FROM sqlite_schema WHERE name LIKE 'snapshot_ends_with%'")
+    .pluck()
+    .get();
+  expect(guards).toBe(6);
+  expect(stampOf(one)).toBe(MANY.length);
+  one.db.close();
+});
