@@ -108,6 +108,17 @@ export function priceOf(input: AppraisalInput, { design }: PreparedEvidence): nu
   return estimatePrice(fitColumns(design, kept, rule), row, [], null).amount;
 }
 
+/** The fit in use alone, the subject on its columns and the reference set, for what needs no result object. */
+export function fitInUse(
+  { assetClass, model, subject }: AppraisalInput,
+  { design }: PreparedEvidence,
+): Pick<ComputedAppraisal, "fit" | "row" | "reference"> {
+  const row = subject === null ? null : describeSubject(design, assetClass, subject);
+  const { referenceGroups: reference } = resolveDependencies(design, model, row?.notKnown ?? []);
+  const kept = reference.filter(staying(model, row));
+  return { fit: fitColumns(design, kept, estimate(design, kept, model.estimator).rule), row, reference };
+}
+
 /** Attributes in use: not left out and known; a product while both of its attributes are, a blend while all of its members are. */
 function staying({ leftOut }: PriceModel, row: SubjectRow | null): (group: AttributeGroup) => boolean {
   const isIn = (key: string): boolean => !leftOut.includes(key) && !row?.notKnown.includes(key);

@@ -10,7 +10,7 @@ import type { PriceModel } from "../domain/priceModel.ts";
 import { judgeSets, type LookedAtSets, lookAtSets } from "../explanation/attributeSets.ts";
 import { akaikeWeights } from "../explanation/averagedPrice.ts";
 import { attributeShares, distanceSentence } from "../explanation/shares.ts";
-import { type ComputedAppraisal, computeAppraisal } from "./computeAppraisal.ts";
+import { type ComputedAppraisal, fitInUse } from "./computeAppraisal.ts";
 import type { Ports } from "./ports.ts";
 import type { EvidenceMemory } from "./rememberEvidence.ts";
 
@@ -46,7 +46,7 @@ export function everySet(
   if (sets.last?.question !== question) {
     const asked = { assetClass, model, subject, levels: [] };
     const { sales, prepared } = memory.recall(assetClass, asked, () => ports.store.sales.readColumns(classId));
-    const computed = computeAppraisal({ ...asked, sales }, prepared);
+    const computed = fitInUse({ ...asked, sales }, prepared);
     const { fit, row, reference } = computed;
     const looked = lookAtSets({ reference, fit, row, currencyCode: assetClass.currencyCode });
     sets.last = { question, looked, shares: sharesOrWhy(computed) };
@@ -64,7 +64,7 @@ function noSubject(): AppError {
   });
 }
 
-function sharesOrWhy({ fit, row }: ComputedAppraisal): SharesOrWhy {
+function sharesOrWhy({ fit, row }: Pick<ComputedAppraisal, "fit" | "row">): SharesOrWhy {
   try {
     const shares = attributeShares({ fit, row });
     const difference = distanceSentence(shares, fit.design.responseForm);
