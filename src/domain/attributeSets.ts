@@ -140,6 +140,8 @@ export interface AttributeShare {
   readonly r2: number;
   readonly r2Alone: number;
   readonly r2Last: number;
+  /** Standard error of `r2`, by jackknife over twentieths of the sales; null with few sales or more than twelve attributes. */
+  readonly r2Error: number | null;
   /** Of the subject's distance from the average, on the response's scale: averaged over orders, and b(x₀ − x̄). */
   readonly distance: number | null;
   readonly additive: number | null;

@@ -41,6 +41,32 @@ describe("shares of the houses", () => {
   });
 });
 
+test("have the standard errors of a jackknife over twentieths of the sales, each fitted by itself", () => {
+  const chosen = [0, 1, 2];
+  const designOf = (rows: readonly number[]) =>
+    plainDesign(
+      chosen.map((j) => ({
+        key: houses.terms[j]!,
+        values: Float64Array.from(rows, (i) => numbersOf(houses.columns[j]!)[i]!),
+        kind: "line" as const,
+      })),
+      Float64Array.from(rows, (i) => Math.exp(houses.response[i]!)),
+      { ln: true },
+    );
+  const sharesOf = (rows: readonly number[]) => {
+    const some = designOf(rows);
+    return attributeShares({ fit: fitColumns(some, some.groups), row: null }).shares;
+  };
+  const all = [...houses.response.keys()];
+  const without = Array.from({ length: 20 }, (_, part) => sharesOf(all.filter((i) => i % 20 !== part)));
+  sharesOf(all).forEach(({ r2Error }, g) => {
+    const values = without.map((shares) => shares[g]!.r2);
+    const mean = sum(values) / 20;
+    expect(r2Error! / Math.sqrt((19 / 20) * sum(values.map((value) => (value - mean) ** 2)))).toBeCloseTo(1, 8);
+  });
+  expect(sharesOf(all.slice(0, 39))[0]!.r2Error).toBeNull();
+});
+
 test("of two attributes the distance is shared by the mean of both orders", () => {
   const two = [design.groups[7]!, design.groups[8]!];
   const both = fitColumns(design, two);

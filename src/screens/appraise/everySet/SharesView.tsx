@@ -28,8 +28,8 @@ function Shares({ found, shares }: { readonly found: EverySet; readonly shares: 
           <tr>
             <td />
             <th scope="col">of the spread, last in to alone</th>
-            <th scope="col" className="num">
-              share
+            <th scope="col" className="num" title="averaged over all orders; ± one standard error, by jackknife">
+              share ± error
             </th>
             <th scope="col" className="num">
               alone
@@ -81,6 +81,9 @@ function ShareRow({ one, found, shares }: RowProps) {
       </td>
       <td className="num">
         <b>{of(one.r2)}</b>
+        {one.r2Error === null ? null : (
+          <span className="soft fine"> ± {formatNumber((100 * one.r2Error) / shares.r2)}</span>
+        )}
       </td>
       <td className="num soft">{of(one.r2Alone)}</td>
       <td className="num soft">{of(one.r2Last)}</td>

@@ -131,12 +131,13 @@ function sharesText({ shares, sharesRefused, response, currencyCode }: EverySet)
   const rows = shares.shares.map((one) => [
     one.label,
     of(one.r2),
+    one.r2Error === null ? "" : `± ${formatNumber((100 * one.r2Error) / shares.r2, 1)}`,
     of(one.r2Alone),
     of(one.r2Last),
     distance(one.distance),
     distance(one.additive),
   ]);
-  const heading = ["", "share", "alone", "last in", `this item, averaged, ${unit}`, `plain rule, ${unit}`];
+  const heading = ["", "share", "error", "alone", "last in", `this item, averaged, ${unit}`, `plain rule, ${unit}`];
   return `${shares.sentences.join(" ")}\n${table(heading, rows)}`;
 }
 
