@@ -1,7 +1,8 @@
 /**
- * Set-up before `npm start`, `npm test` and `npm run lotwright`: packages, the build, and what the occasion asks for besides.
+ * Set-up before `npm start`, `npm test`, `npm run lotwright` and `npm run bench` (which builds for itself): packages, the build,
+ * and what the occasion asks for besides.
  * Plain JavaScript without packages, for any Node from 18 on. Silent when there is nothing to do; all messages go to stderr,
- * so that a command's own output stays clean. Usage: node prepare.mjs [start|test|lotwright]
+ * so that a command's own output stays clean. Usage: node prepare.mjs [start|test|lotwright|bench]
  */
 import { build } from "./build.mjs";
 import { findOrInstallChromium } from "./chromium.mjs";
@@ -15,7 +16,7 @@ if (Number(process.versions.node.split(".")[0]) < 18) giveUp("Node 20.19 or late
 
 try {
   await withLock("packages", installPackages);
-  await withLock("build", build);
+  if (occasion !== "bench") await withLock("build", build);
   if (occasion === "start") await fetchElectronOnce();
   if (occasion === "test") findOrInstallChromium();
 } catch (cause) {
