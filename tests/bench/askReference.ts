@@ -20,7 +20,8 @@ export interface Reference {
   load(file: string, shape: Shape): Promise<Answer>;
   /** The milliseconds that the answer to `line` names. */
   timed(line: string): Timed;
-  close(): void;
+  /** Ends the program and waits for its end. */
+  close(): Promise<void>;
 }
 
 const ONE_THREAD = {
@@ -65,6 +66,9 @@ export function startReference(program: Program, folder: string, scripts: URL): 
     stdio: ["pipe", "pipe", "inherit"],
   });
   const waiting = answersOf(child);
+  const ended = new Promise<void>((resolve) => {
+    child.once("close", () => resolve());
+  });
   const ask = (line: string): Promise<Answer> =>
     new Promise((resolve, reject) => {
       waiting.push({ resolve, reject });
@@ -79,7 +83,10 @@ export function startReference(program: Program, folder: string, scripts: URL): 
       if (ms === undefined) throw new Error(`${command} does not answer ${line}: ${error ?? "no time"}`);
       return ms;
     },
-    close: () => child.stdin!.end(),
+    close: async () => {
+      child.stdin!.end();
+      await ended;
+    },
   };
 }
 

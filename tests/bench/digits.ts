@@ -79,7 +79,7 @@ export async function benchDigits(session: Session): Promise<Rung[]> {
   try {
     for (const power of LADDER) rungs.push(await rung(session, 10 ** power, references));
   } finally {
-    for (const reference of Object.values(references)) reference.close();
+    for (const reference of Object.values(references)) await reference.close();
   }
   const upTo = (most: number, way: string): number[] =>
     rungs.filter(({ asked }) => asked <= most).map(({ digits }) => digits[way]!);

@@ -27,7 +27,7 @@ async function theirPeak(session: Session, file: string, rows: number): Promise<
     await reference.ask("lstsq");
     return (await reference.ask("peak")).megabytes ?? Number.NaN;
   } finally {
-    reference.close();
+    await reference.close();
   }
 }
 

@@ -1,5 +1,5 @@
 // The figures as a table for the terminal: one line a figure, under the work it belongs to.
-import { type Figure, isMet, type Missing } from "./measure.ts";
+import { type Figure, isMet, type Missing, median } from "./measure.ts";
 import { ROWS } from "./rows.ts";
 
 /** Three significant digits, never in powers of ten. */
@@ -21,8 +21,7 @@ function reachText({ reach, better, unit }: Figure): string {
 
 function timesText({ oursMs, referenceMs }: Figure): string {
   if (oursMs === undefined || referenceMs === undefined) return "";
-  const middle = (values: readonly number[]): number => [...values].sort((a, b) => a - b)[values.length >> 1]!;
-  return `${shortNumber(middle(oursMs))} ms, reference ${shortNumber(middle(referenceMs))} ms`;
+  return `${shortNumber(median(oursMs))} ms, reference ${shortNumber(median(referenceMs))} ms`;
 }
 
 const HEADINGS = ["against / what", "figure", "spread", "reach", "", "medians"];

@@ -55,7 +55,7 @@ export async function withReferences(
       }
       await work(data, references);
     } finally {
-      for (const reference of Object.values(references)) reference.close();
+      for (const reference of Object.values(references)) await reference.close();
     }
   });
 }
