@@ -16,7 +16,7 @@ interface Cloud {
 }
 
 const LETTER = 6.6;
-const MOVES = [0, 12, -12, 24, -24, 36, -36, 48, -48, 60, 72, 84, 96, 110, 125, 140, 160, 180] as const;
+const MOVES = [0, 12, -12, 24, -24, 36, -36, 48, -48, 60, 72, 84, 96, 110, 125, 140, 160, 180, -60, -72] as const;
 /** The marks as `drawSetMarks` draws them, by family. */
 const GLYPHS = [
   "M0 -5V5",
@@ -33,7 +33,8 @@ export function FamilyNames({ marks, scale, parting, frame, limit }: FamilyNames
   return clouds.flatMap(({ xs, ys }, family) => {
     if (xs.length === 0) return [];
     const text = nameOf(marks, parting, family);
-    const place = freePlace(clouds, Math.max(lowest, middleOf(ys)), lowest, text.length * LETTER, frame, taken);
+    const wanted = Math.max(lowest, middleOf(ys));
+    const place = freePlace(clouds, wanted, lowest, text.length * LETTER, frame, taken);
     if (place === null) return [];
     taken.push(place);
     const side = place.anchor === "end" ? -1 : 1;
@@ -102,7 +103,7 @@ function freePlace(
 ): Place | null {
   for (const move of MOVES) {
     const y = wanted + move;
-    if (y < lowest || y > bottom - 6) continue;
+    if (y < lowest || y > bottom - 4) continue;
     const near = clouds.flatMap(({ xs, ys }) => xs.filter((_, i) => Math.abs(ys[i]! - (y - 4)) < 13));
     const isFree = (anchor: Place["anchor"]): boolean =>
       taken.every((one) => one.anchor !== anchor || Math.abs(one.y - y) > 17);

@@ -31,10 +31,10 @@ function Shares({ found, shares }: { readonly found: EverySet; readonly shares: 
             <th scope="col" className="num" title="averaged over all orders; ± one standard error, by jackknife">
               share ± error
             </th>
-            <th scope="col" className="num">
+            <th scope="col" className={`num ${css.wide}`}>
               alone
             </th>
-            <th scope="col" className="num">
+            <th scope="col" className={`num ${css.wide}`}>
               last in
             </th>
             {shares.distance === null ? null : <DistanceHeads found={found} />}
@@ -56,10 +56,14 @@ function DistanceHeads({ found }: { readonly found: EverySet }) {
   return (
     <>
       <th scope="col" className="num" title="averaged over all orders in which attributes can come in">
-        this item, averaged, {unit}
+        this item,
+        <br />
+        averaged, {unit}
       </th>
       <th scope="col" className="num" title="its own coefficient times its distance from the average">
-        plain rule, {unit}
+        plain rule,
+        <br />
+        {unit}
       </th>
     </>
   );
@@ -85,8 +89,8 @@ function ShareRow({ one, found, shares }: RowProps) {
           <span className="soft fine"> ± {formatNumber((100 * one.r2Error) / shares.r2)}</span>
         )}
       </td>
-      <td className="num soft">{of(one.r2Alone)}</td>
-      <td className="num soft">{of(one.r2Last)}</td>
+      <td className={`num soft ${css.wide}`}>{of(one.r2Alone)}</td>
+      <td className={`num soft ${css.wide}`}>{of(one.r2Last)}</td>
       {one.distance === null ? null : (
         <>
           <td className="num">{distanceWords(found, shares, one.distance)}</td>
@@ -117,8 +121,8 @@ function Totals({ found, shares }: { readonly found: EverySet; readonly shares: 
           </th>
           <td />
           <td className="num">{formatPercent(alwaysIn.r2 / r2)}</td>
-          <td />
-          <td />
+          <td className={css.wide} />
+          <td className={css.wide} />
           {distance === null ? null : (
             <>
               <td className="num">{distanceWords(found, shares, alwaysIn.distance)}</td>
@@ -131,8 +135,8 @@ function Totals({ found, shares }: { readonly found: EverySet; readonly shares: 
         <th scope="row">Together</th>
         <td className="soft">R² {formatNumber(r2, 3)}</td>
         <td className="num">100{"\u00a0"}%</td>
-        <td />
-        <td />
+        <td className={css.wide} />
+        <td className={css.wide} />
         {distance === null ? null : (
           <>
             <td className="num">{distanceWords(found, shares, distance)}</td>
@@ -144,7 +148,7 @@ function Totals({ found, shares }: { readonly found: EverySet; readonly shares: 
   );
 }
 
-const BAR = 200;
+const BAR = 160;
 
 /** The bar is the share; the thin line runs from what it adds last to what it has alone. */
 function ShareBar({ one, shares }: { readonly one: AttributeShare; readonly shares: AttributeShares }) {
