@@ -49,7 +49,7 @@ export function everySet(
     const computed = fitInUse({ ...asked, sales }, prepared);
     const { fit, row, reference } = computed;
     const looked = lookAtSets({ reference, fit, row, currencyCode: assetClass.currencyCode });
-    sets.last = { question, looked, shares: sharesOrWhy(computed) };
+    sets.last = { question, looked, shares: sharesOrWhy(computed, assetClass.currencyCode) };
   }
   return everySetOf(sets.last.looked, sets.last.shares, model, rule);
 }
@@ -64,10 +64,12 @@ function noSubject(): AppError {
   });
 }
 
-function sharesOrWhy({ fit, row }: Pick<ComputedAppraisal, "fit" | "row">): SharesOrWhy {
+function sharesOrWhy({ fit, row }: Pick<ComputedAppraisal, "fit" | "row">, currencyCode: string): SharesOrWhy {
+  if (fit.groups.every(({ isMarket }) => isMarket))
+    return { shares: null, sharesRefused: "No attribute is in the set in use, so there is nothing to share out." };
   try {
     const shares = attributeShares({ fit, row });
-    const difference = distanceSentence(shares, fit.design.responseForm);
+    const difference = distanceSentence(shares, fit.design.responseForm, currencyCode);
     const sentences = difference === null ? shares.sentences : [...shares.sentences, difference];
     return { shares: { ...shares, sentences }, sharesRefused: null };
   } catch (cause) {

@@ -5,7 +5,7 @@
  */
 import type { AttributeSets, DefensibleRule, SetFigures, Span } from "../domain/attributeSets.ts";
 import { USUAL_RULE } from "../domain/attributeSets.ts";
-import { roundingStep } from "../domain/format.ts";
+import { niceStep, roundingStep } from "../domain/format.ts";
 import { tUpperQuantile } from "../numerics/studentT.ts";
 import { generalisedErrors } from "../numerics/subsetErrors.ts";
 import { averagedPrice, type SetPrices } from "./averagedPrice.ts";
@@ -179,10 +179,12 @@ function listed(values: Float64Array): (number | null)[] {
   return Array.from(values, (value) => (Number.isFinite(value) ? value : null));
 }
 
-function stepOf({ low, high }: SetFigures, averaged: Span | null, [best]: readonly number[]): number {
+/** Without a range half a hundredth of the price. */
+function stepOf({ low, high, price }: SetFigures, averaged: Span | null, [best]: readonly number[]): number {
   if (averaged !== null) return roundingStep(averaged);
   const [from, to] = best === undefined ? [null, null] : [low[best]!, high[best]!];
-  return from === null || to === null ? 1 : roundingStep({ low: from, high: to });
+  if (from !== null && to !== null) return roundingStep({ low: from, high: to });
+  return best === undefined ? 1 : niceStep((price[best] ?? 0) / 200);
 }
 
 function movesMost(switches: AttributeSets["switches"], now: number): string | null {

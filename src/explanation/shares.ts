@@ -5,7 +5,7 @@
  */
 import type { AttributeShare, AttributeShares } from "../domain/attributeSets.ts";
 import { AppError } from "../domain/errors.ts";
-import { formatPercent, formatSigned, listWords, lowerStart } from "../domain/format.ts";
+import { formatMoney, formatPercent, formatSigned, listWords, lowerStart } from "../domain/format.ts";
 import type { ResponseForm } from "../domain/priceModel.ts";
 import { partsBy } from "../numerics/accumulateMoments.ts";
 import { allSubsets } from "../numerics/allSubsets.ts";
@@ -117,16 +117,22 @@ function sentencesOf(shares: readonly AttributeShare[], r2: number): string[] {
 }
 
 /**
- * Where averaging over orders and the plain rule b(x₀ − x̄) part most, and why; null without a subject or where they agree to
+ * Where averaging over orders and the plain rule b(x₀ − x̄) part most, and why; null without a subject, with one attribute, or where they agree to
  * half a percent of price (after ln) or a thousandth of the whole distance.
  */
-export function distanceSentence({ shares, distance }: AttributeShares, response: ResponseForm): string | null {
-  if (distance === null) return null;
+export function distanceSentence(
+  { shares, distance }: AttributeShares,
+  response: ResponseForm,
+  currencyCode: string,
+): string | null {
+  if (distance === null || shares.length < 2) return null;
   const apart = ({ distance: averaged, additive }: AttributeShare): number => Math.abs(averaged! - additive!);
   const most = [...shares].sort((a, b) => apart(b) - apart(a))[0];
   const enough = response === "lnPrice" ? 0.005 : Math.abs(distance) / 1000;
   if (most === undefined || !(apart(most) > enough)) return null;
   const amount = (part: number): string =>
-    response === "lnPrice" ? `${formatSigned(100 * Math.expm1(part), 1)}\u00a0%` : formatSigned(part);
+    response === "lnPrice"
+      ? `${formatSigned(100 * Math.expm1(part), 1)}\u00a0%`
+      : `${part > 0 ? "+" : ""}${formatMoney(part, currencyCode)}`;
   return `The two rules part most on ${lowerStart(most.label)}: ${amount(most.distance!)} averaged over orders, ${amount(most.additive!)} by its own coefficient alone; averaging shares out what moves together, the plain rule gives all of it to the attribute whose coefficient carries it.`;
 }

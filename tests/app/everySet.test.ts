@@ -140,6 +140,20 @@ describe("what cannot be answered", () => {
     await expect((async () => ask(none))()).rejects.toThrow(/No sale is left/);
   });
 
+  test("with every attribute left out there is nothing to share out, and the sets are the same", async () => {
+    const none = await ask({ ...model, leftOut: model.attributes.map(({ key }) => key) });
+    expect([none.current, none.shares]).toEqual([0, null]);
+    expect(none.sharesRefused).toMatch(/nothing to share out/);
+    expect(none.defensible).toEqual(found.defensible);
+  });
+
+  test("with coefficients pulled toward zero there is no average, and prices are still rounded alike", async () => {
+    const ridge = await ask({ ...model, estimator: { kind: "ridge", penalty: null } });
+    expect([ridge.averaged, ridge.stacked, ridge.doubt]).toEqual([null, null, null]);
+    expect(ridge.step).toBeGreaterThanOrEqual(100);
+    expect(ridge.headline).toMatch(/the price lies between €[\d,]+00 and €[\d,]+00\.$/);
+  });
+
   test("a way of estimating that weighs sales is said to be kept for all sets", async () => {
     const huber = await ask({ ...model, estimator: { kind: "huber" } });
     expect(huber.cautions[0]).toContain("weights of the sales");
