@@ -17,7 +17,8 @@ export interface Answer {
 
 export interface Reference {
   ask(line: string): Promise<Answer>;
-  load(file: string, shape: Shape): Promise<Answer>;
+  /** `order` C: the design lies row by row (numpy only). */
+  load(file: string, shape: Shape, order?: "C"): Promise<Answer>;
   /** The milliseconds that the answer to `line` names. */
   timed(line: string): Timed;
   /** Ends the program and waits for its end. */
@@ -76,8 +77,10 @@ export function startReference(program: Program, folder: string, scripts: URL): 
     });
   return {
     ask,
-    load: (file, { rows, numeric, levels }) =>
-      ask(`load ${file} ${rows} ${numeric} ${levels.length === 0 ? "-" : levels.join(",")}`),
+    load: (file, { rows, numeric, levels }, order) =>
+      ask(
+        `load ${file} ${rows} ${numeric} ${levels.length === 0 ? "-" : levels.join(",")}${order === undefined ? "" : " C"}`,
+      ),
     timed: (line) => async () => {
       const { ms, error } = await ask(line);
       if (ms === undefined) throw new Error(`${command} does not answer ${line}: ${error ?? "no time"}`);

@@ -32,10 +32,12 @@ describe("what is measured", () => {
       ["live", "add one sale", 0.05],
       ["live", "remove one sale", 0.05],
       ["sets", "R² + leave-one-out error (rows) + shares", 20],
-      ["rows", "R hatvalues, rstandard, rstudent, cooks.distance, dffits sharing one lm.influence", 10],
+      ["rows", "R, each function called by itself", 10],
+      ["rows", "R, all from one shared lm.influence", 10],
       ["load", "rows to arrays", 2000],
       ["load", "from the columnar copy", 200],
       ["memory", "numpy lstsq", 5],
+      ["memory", "numpy lstsq, design row by row (as column_stack makes it)", 5],
     ]);
     expect(new Set(ROWS.map(({ id }) => id)).size).toBe(ROWS.length);
   });

@@ -7,7 +7,7 @@ import type { Program, Reference } from "./askReference.ts";
 import { type BenchData, drawData, P30, P60, type Shape } from "./drawData.ts";
 import { fitFast } from "./fitFast.ts";
 import { growthExponent, median, plainFigure, ratioFigure, type Timed, takeTurns, timeOnce } from "./measure.ts";
-import { LM, LM_FIT, LSTSQ, ML_MATRIX, NORMAL, R_ROWS, reachOf } from "./rows.ts";
+import { LM, LM_FIT, LSTSQ, ML_MATRIX, NORMAL, R_APART, R_SHARED, reachOf } from "./rows.ts";
 import { type Session, sized, whyNot, withReferences } from "./session.ts";
 
 interface Rival {
@@ -76,15 +76,17 @@ async function diagnostics(session: Session, data: BenchData, { r }: References)
   session.say("row diagnostics, 10⁶ × 30 …");
   const solution = solveLeastSquares(data.columns, data.response, { intercept: true });
   const ours: Timed = () => timeOnce(() => rowDiagnostics(data.columns, data.response, solution));
-  const named = { row: "rows", what: R_ROWS };
   if (r === undefined) {
-    session.miss("rows", R_ROWS, whyNot("r"));
+    session.miss("rows", R_APART, whyNot("r"));
     session.add(plainFigure({ row: "rows", what: "ours alone" }, "ms", (await takeTurns([ours]))[0]!));
     return;
   }
   await r.ask("keep");
-  const [mine, theirs] = await takeTurns([ours, r.timed("diagnose")]);
-  session.add(ratioFigure(named, mine!, theirs!, reachOf("rows", R_ROWS)));
+  const [mine, apart, shared] = await takeTurns([ours, r.timed("apart"), r.timed("diagnose")]);
+  session.add(
+    ratioFigure({ row: "rows", what: R_APART }, mine!, apart!, reachOf("rows", R_APART)),
+    ratioFigure({ row: "rows", what: R_SHARED }, mine!, shared!, reachOf("rows", R_SHARED)),
+  );
 }
 
 async function oneFit(session: Session, row: string, shape: Shape, repeats: number): Promise<void> {

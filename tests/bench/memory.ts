@@ -5,7 +5,7 @@ import { fileURLToPath } from "node:url";
 import { startReference } from "./askReference.ts";
 import { drawData, P60 } from "./drawData.ts";
 import { plainFigure } from "./measure.ts";
-import { LSTSQ, reachOf } from "./rows.ts";
+import { C_ORDER, LSTSQ, reachOf } from "./rows.ts";
 import { isThere, type Session, sized, whyNot, withFileFor } from "./session.ts";
 
 const ROUNDS = 5;
@@ -20,10 +20,10 @@ function ourPeak(session: Session, file: string, rows: number): number {
   return (JSON.parse(stdout) as { megabytes: number }).megabytes;
 }
 
-async function theirPeak(session: Session, file: string, rows: number): Promise<number> {
+async function theirPeak(session: Session, file: string, rows: number, order?: "C"): Promise<number> {
   const reference = startReference("numpy", session.folder, session.scripts);
   try {
-    await reference.load(file, { rows, ...P60 });
+    await reference.load(file, { rows, ...P60 }, order);
     await reference.ask("lstsq");
     return (await reference.ask("peak")).megabytes ?? Number.NaN;
   } finally {
@@ -47,10 +47,14 @@ export async function benchMemory(session: Session): Promise<void> {
       return;
     }
     // The height of a process hardly differs from run to run; each one costs some seconds.
-    const theirs = [await theirPeak(session, file, rows), await theirPeak(session, file, rows)];
-    session.add(plainFigure({ row: "memory", what: "numpy lstsq, whole process" }, "MB", theirs));
-    const ratios = theirs.flatMap((megabytes) => ours.map((mine) => megabytes / mine));
-    const reach = reachOf("memory", LSTSQ);
-    session.add(plainFigure({ row: "memory", what: LSTSQ }, "×", ratios, reach, "more"));
+    for (const [what, order] of [
+      [LSTSQ, undefined],
+      [C_ORDER, "C"],
+    ] as const) {
+      const theirs = [await theirPeak(session, file, rows, order), await theirPeak(session, file, rows, order)];
+      session.add(plainFigure({ row: "memory", what: `${what}, whole process` }, "MB", theirs));
+      const ratios = theirs.flatMap((megabytes) => ours.map((mine) => megabytes / mine));
+      session.add(plainFigure({ row: "memory", what }, "×", ratios, reachOf("memory", what), "more"));
+    }
   });
 }

@@ -1,5 +1,5 @@
 # The reference fits in R, asked line by line on standard input; every answer is one line of JSON.
-# load FILE ROWS NUMERIC LEVELS | lmfit | lm | keep | diagnose | peak. Only the fit is timed, not the loading.
+# load FILE ROWS NUMERIC LEVELS | lmfit | lm | keep | diagnose | apart | peak. Only the fit is timed, not the loading.
 input <- file("stdin", "r")
 say <- function(...) { cat(sprintf(...), "\n", sep = ""); flush(stdout()) }
 X <- y <- frame <- fit <- NULL
@@ -52,6 +52,12 @@ diagnose <- function() {
   c(sum(hat), sum(standard), sum(student), sum(cook), sum(far), sum(without), sum(fit$fitted.values))
 }
 
+# As one types it: each function finds the influences for itself.
+apart <- function() {
+  without <- y - fit$residuals / (1 - hatvalues(fit))
+  c(sum(rstandard(fit)), sum(rstudent(fit)), sum(cooks.distance(fit)), sum(dffits(fit)), sum(without), sum(fitted(fit)))
+}
+
 while (length(line <- readLines(input, 1)) > 0) {
   words <- strsplit(line, " ")[[1]]
   switch(words[1],
@@ -60,6 +66,7 @@ while (length(line <- readLines(input, 1)) > 0) {
     lm = timed(function() coef(lm(y ~ ., data = frame))),
     keep = { fit <- lm(y ~ ., data = frame); say('{"kept": true}') },
     diagnose = timed(diagnose),
+    apart = timed(apart),
     {
       status <- readLines("/proc/self/status")
       kb <- as.numeric(gsub("[^0-9]", "", grep("^VmHWM", status, value = TRUE)))

@@ -1,5 +1,6 @@
 """The reference fits in numpy, asked line by line on standard input; every answer is one line of JSON.
-load FILE ROWS NUMERIC LEVELS | lstsq | normal | peak. The design is built while loading; only the fit is timed."""
+load FILE ROWS NUMERIC LEVELS [C] | lstsq | normal | peak. The design is built while loading; only the fit is timed.
+It lies column by column, which LAPACK wants, unless C asks for rows."""
 import json
 import sys
 import time
@@ -9,14 +10,14 @@ import numpy as np
 X = y = None
 
 
-def load(path, rows, numeric, levels):
+def load(path, rows, numeric, levels, order="F"):
     global X, y
     rows, numeric = int(rows), int(numeric)
     levels = [] if levels == "-" else [int(count) for count in levels.split(",")]
     width = 1 + numeric + sum(count - 1 for count in levels)
     with open(path, "rb") as file:
         y = np.fromfile(file, count=rows)
-        X = np.empty((rows, width), order="F")
+        X = np.empty((rows, width), order=order)
         X[:, 0] = 1
         for j in range(numeric):
             X[:, 1 + j] = np.fromfile(file, count=rows)
