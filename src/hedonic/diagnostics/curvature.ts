@@ -1,6 +1,7 @@
 /** Do powers 2 and 3 of ŷ explain what the columns left over? F with 2 and n − p − 2 (Ramsey 1969). */
+
+import { fUpperTail } from "../../numerics/fDistribution.ts";
 import { solveLeastSquares } from "../../numerics/solveLeastSquares.ts";
-import { fUpperTail } from "../../numerics/testTails.ts";
 import { columnsOf, type Diagnostic, SMALL_SHARE, standardisedFitted, verdictOf } from "./diagnostic.ts";
 
 export const curvature: Diagnostic = {

@@ -3,7 +3,7 @@
  * ±a(√m + 2r/√m), r = 1 … m, m = n − p (Brown, Durbin & Evans 1975). The statistic is the least a that the sums stay within,
  * and its p = 2(Q(3a) + e^(−4a²)(1 − Q(a))), Q the normal upper tail (their equation; 5 % at a = 0.948).
  */
-import { normalUpperTail } from "../../numerics/testTails.ts";
+import { normalUpperTail } from "../../numerics/normal.ts";
 import { type Diagnostic, verdictOf } from "./diagnostic.ts";
 import { recursiveResiduals } from "./recursiveResiduals.ts";
 

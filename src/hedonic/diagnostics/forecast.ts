@@ -4,9 +4,9 @@
  * Attributes and levels that only the late sales have are theirs alone, p − p₁ columns: a = n₂ − (p − p₁), b = n₁ − p₁.
  */
 import { type Column, rowsOf } from "../../numerics/column.ts";
+import { fUpperTail } from "../../numerics/fDistribution.ts";
 import { NumericsError } from "../../numerics/numericsError.ts";
 import { type LeastSquaresSolution, solveLeastSquares } from "../../numerics/solveLeastSquares.ts";
-import { fUpperTail } from "../../numerics/testTails.ts";
 import type { Design, Fit } from "../fit.ts";
 import { columnsOf, type Diagnostic, verdictOf } from "./diagnostic.ts";
 

@@ -7,8 +7,8 @@
 
 import type { DiagnosisDetail } from "../../domain/diagnosis.ts";
 import { formatNumber, formatPercent } from "../../domain/format.ts";
+import { fUpperTail } from "../../numerics/fDistribution.ts";
 import { covarianceRatios, type RowDiagnostics } from "../../numerics/rowDiagnostics.ts";
-import { fUpperTail } from "../../numerics/testTails.ts";
 import type { Fit } from "../fit.ts";
 import { type Diagnostic, worstSales } from "./diagnostic.ts";
 

@@ -7,7 +7,7 @@
 
 import type { Moments } from "../../numerics/accumulateMoments.ts";
 import { type Column, numbersOf, rowsOf } from "../../numerics/column.ts";
-import { fUpperTail } from "../../numerics/testTails.ts";
+import { fUpperTail } from "../../numerics/fDistribution.ts";
 import type { Fit } from "../fit.ts";
 import { columnsOf, type Diagnostic, momentsOfMade, product, verdictOf } from "./diagnostic.ts";
 

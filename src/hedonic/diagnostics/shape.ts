@@ -1,5 +1,5 @@
 /** Are the residuals normal? n/6·(S² + (K − 3)²/4), S skewness, K kurtosis; chi-squared with 2 (Jarque & Bera 1987). */
-import { chiSquaredUpperTail } from "../../numerics/testTails.ts";
+import { chiSquaredUpperTail } from "../../numerics/chiSquared.ts";
 import { type Diagnostic, verdictOf } from "./diagnostic.ts";
 
 export const shape: Diagnostic = {

@@ -2,7 +2,7 @@
  * Is the spread of the sales around the model the same everywhere? n·R² of e² on the columns (Koenker 1981, the studentised
  * Breusch & Pagan 1979), and on ŷ and ŷ² (White 1980, special form); chi-squared.
  */
-import { chiSquaredUpperTail } from "../../numerics/testTails.ts";
+import { chiSquaredUpperTail } from "../../numerics/chiSquared.ts";
 import {
   columnsOf,
   type Diagnostic,

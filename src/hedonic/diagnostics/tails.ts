@@ -3,7 +3,7 @@
  * with mean and variance estimated, and its p by the formulas of Stephens (in D'Agostino & Stephens 1986, table 4.9; from memory).
  * Residuals of a fit are taken as a sample, which holds for many more sales than coefficients.
  */
-import { normalUpperTail } from "../../numerics/testTails.ts";
+import { normalUpperTail } from "../../numerics/normal.ts";
 import { type Diagnostic, SMALL_SHARE, verdictOf } from "./diagnostic.ts";
 
 export const tails: Diagnostic = {

@@ -6,9 +6,9 @@
  */
 import { formatPercent } from "../../domain/format.ts";
 import type { Fit } from "../../hedonic/fit.ts";
+import { chiSquaredUpperTail } from "../../numerics/chiSquared.ts";
 import { type LeastSquaresSolution, solveLeastSquares } from "../../numerics/solveLeastSquares.ts";
 import { tUpperQuantile } from "../../numerics/studentT.ts";
-import { chiSquaredUpperTail } from "../../numerics/testTails.ts";
 import { subjectLeverage } from "../estimatePrice.ts";
 import { fittedAt, type RangeRule, toMoney, withoutRanges } from "./rangeRule.ts";
 
