@@ -120,7 +120,7 @@ export function fitInUse(
 }
 
 /** Attributes in use: not left out and known; a product while both of its attributes are, a blend while all of its members are. */
-function staying({ leftOut }: PriceModel, row: SubjectRow | null): (group: AttributeGroup) => boolean {
+export function staying({ leftOut }: PriceModel, row: SubjectRow | null): (group: AttributeGroup) => boolean {
   const isIn = (key: string): boolean => !leftOut.includes(key) && !row?.notKnown.includes(key);
   return ({ key, product, blend }) =>
     isIn(key) &&

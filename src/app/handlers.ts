@@ -19,6 +19,7 @@ import { checkHealth } from "./checkHealth.ts";
 import { compareModels } from "./compareModels.ts";
 import { openableDemos } from "./demo/demoClasses.ts";
 import { everySet, rememberSets } from "./everySet.ts";
+import { glance } from "./glanceAtPrice.ts";
 import { importSales, startClassFromFile } from "./importSales.ts";
 import { issueSheet, previewSheet, verifySheet } from "./issueSheet.ts";
 import { leaveOutHeldBack, listHeldBack, mendHeldBack } from "./mendHeldBack.ts";
@@ -75,6 +76,7 @@ export function createHandlers(ports: Ports): Handlers {
     openDemo: () => openDemo(ports, openableDemos()),
     currentModel: (input) => currentModel(ports, input),
     appraise: (input) => appraise(ports, memory, input),
+    glance: (input) => glance(ports, memory, input),
     compare: (input) => compareModels(ports, input),
     health: (input) => checkHealth(ports, memory, input),
     everySet: (input) => everySet(ports, memory, sets, input),

@@ -3,7 +3,7 @@
  * A shell is only a transport: it passes a name and an input, and hands back a Reply.
  */
 import { z } from "zod";
-import type { Appraisal } from "../domain/appraisal.ts";
+import type { Appraisal, GlancedPrice } from "../domain/appraisal.ts";
 import type { AssetClass, AssetClassSummary } from "../domain/assetClass.ts";
 import type { EverySet } from "../domain/attributeSets.ts";
 import type { Comparison } from "../domain/comparison.ts";
@@ -252,6 +252,7 @@ export const requestInputs = {
   leaveOutHeldBack: z.object({ classId: id, heldBackId: id, reason: text }),
   currentModel: byClass,
   appraise: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable(), levels }),
+  glance: z.object({ classId: id, model: priceModelInput, subject: subjectInput, levels }),
   compare: z.object({
     classId: id,
     first: sideChoice,
@@ -338,6 +339,8 @@ export interface RequestOutputs {
   /** The model the class is looked at with: of the latest edition, else the usual one over all attributes. */
   currentModel: { model: PriceModel; edition: Edition | null };
   appraise: { appraisal: Appraisal; dataVersion: number; milliseconds: number };
+  /** At once, from what is in memory; null when that cannot answer. What `appraise` answers to the same takes its place. */
+  glance: GlancedPrice | null;
   compare: Comparison;
   health: ModelHealth;
   everySet: EverySet;

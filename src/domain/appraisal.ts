@@ -174,6 +174,19 @@ export interface PriceEstimate {
   readonly marketHeldAt: Day | null;
 }
 
+/** A price from moments alone, shown only until the refined one comes. */
+export interface GlancedPrice {
+  readonly price: Pick<PriceEstimate, "amount" | "rangeForOneSale">;
+  /** Raw units of the response; the standard error under an even spread. */
+  readonly coefficients: readonly {
+    readonly attribute: string;
+    readonly level: string | null;
+    readonly value: number;
+    readonly standardError: number;
+  }[];
+  readonly isFinal: false;
+}
+
 export interface RangeAccount {
   readonly kind: RangeKind;
   readonly sentence: string;

@@ -9,6 +9,7 @@ import type { PriceModel } from "../domain/priceModel.ts";
 import { type Dependency, findDependencies } from "../numerics/findDependencies.ts";
 import { isPooled } from "./estimators/partialPooling.ts";
 import type { AttributeGroup, Design } from "./fit.ts";
+import { dependentIn, rememberDependencies } from "./knownDependencies.ts";
 
 export interface ResolvedSet {
   readonly notices: readonly DependencyNotice[];
@@ -25,10 +26,8 @@ export function resolveDependencies(design: Design, model: PriceModel, notKnown:
     order.map((index) => design.columns[index]!.values),
     { intercept: true },
   );
-  const dropped = new Set(found.dependent.map((one) => order[one.column]!));
-  const referenceGroups = design.groups
-    .map((group) => ({ ...group, columns: group.columns.filter((index) => !dropped.has(index)) }))
-    .filter((group) => group.columns.length > 0);
+  rememberDependencies(design, order, found.dependent);
+  const referenceGroups = groupsWithout(design, new Set(found.dependent.map((one) => order[one.column]!)));
   const standing = new Set(referenceGroups.map((group) => group.key));
   const notices = [
     ...design.groups.filter((group) => group.columns.length === 0).map((group) => singleLevelNotice(design, group)),
@@ -38,6 +37,22 @@ export function resolveDependencies(design: Design, model: PriceModel, notKnown:
     .filter((group) => !standing.has(group.key))
     .map((group) => ({ key: group.key, sentence: exactSentence(design, group, notices) }));
   return { notices, referenceGroups, exactOut };
+}
+
+/** The same reference groups from the dependencies found before in this design; null while none were looked for. */
+export function resolvedBefore(
+  design: Design,
+  model: PriceModel,
+  notKnown: readonly string[],
+): readonly AttributeGroup[] | null {
+  const dependent = dependentIn(design, columnOrder(design, model.leftOut, notKnown));
+  return dependent === null ? null : groupsWithout(design, dependent);
+}
+
+function groupsWithout({ groups }: Design, dropped: ReadonlySet<number>): AttributeGroup[] {
+  return groups
+    .map((group) => ({ ...group, columns: group.columns.filter((index) => !dropped.has(index)) }))
+    .filter((group) => group.columns.length > 0);
 }
 
 /**

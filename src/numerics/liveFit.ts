@@ -28,6 +28,13 @@ export interface LiveAnswer {
   readonly smallestPivot: number;
 }
 
+export interface LiveEstimate {
+  /** ȳ + Σ b_j(x_j − x̄_j), on the response's scale. */
+  readonly fitted: number;
+  /** 1/Σw + d′C⁻¹d with d = x − x̄, penalties in C. */
+  readonly leverage: number;
+}
+
 export interface LiveFit {
   /** Switches each of the columns that is out in, and each that is in out; O(q²) each. */
   switchColumns(columns: readonly number[]): void;
@@ -36,6 +43,8 @@ export interface LiveFit {
   /** Takes a sale out that is in the moments at this weight. */
   removeSale(row: ArrayLike<number>, weight?: number): void;
   answer(): LiveAnswer;
+  /** At one value per candidate column, raw; those of columns that are out are not read. */
+  estimateAt(x: ArrayLike<number>): LiveEstimate;
   /** The moments as edited. */
   readonly moments: Moments;
 }
@@ -88,6 +97,7 @@ export function openLiveFit(
     addSale: (row, weight) => replaceMoments(state, addRow(state.moments, row, weight)),
     removeSale: (row, weight) => replaceMoments(state, removeRow(state.moments, row, weight)),
     answer: () => answerOf(state),
+    estimateAt: (x) => estimateAt(state, x),
     get moments() {
       return state.moments;
     },
@@ -197,6 +207,21 @@ function answerOf(state: State): LiveAnswer {
     r2: total > 0 ? 1 - residualSum / total : 0,
     smallestPivot: smallest,
   };
+}
+
+function estimateAt({ moments, q, swept, isIn }: State, x: ArrayLike<number>): LiveEstimate {
+  const { means, scales, weightSum } = moments;
+  const y = q - 1;
+  const d = Float64Array.from({ length: y }, (_, j) => (isIn[j] === 1 ? (x[j]! - means[j]!) / scales[j]! : 0));
+  let fitted = means[y]!;
+  let form = 0;
+  for (let i = 0; i < y; i++) {
+    if (isIn[i] !== 1) continue;
+    fitted += swept[i * q + y]! * scales[y]! * d[i]!;
+    form -= swept[i * q + i]! * d[i]! * d[i]!;
+    for (let j = i + 1; j < y; j++) if (isIn[j] === 1) form -= 2 * swept[i * q + j]! * d[i]! * d[j]!;
+  }
+  return { fitted, leverage: 1 / weightSum + form };
 }
 
 /** Σ w e² in the response's scale: what stands swept, less Σ λ b². */
