@@ -6,14 +6,7 @@ import type { Database } from "better-sqlite3";
 import { minorUnitDigits } from "../domain/format.ts";
 import { CHANNELS, priceBasisWords, type SaleColumns } from "../domain/sale.ts";
 import { type StoredAttribute, valuesTable } from "./attributeTables.ts";
-import {
-  type BaseColumns,
-  type KeptColumns,
-  readSnapshot,
-  SNAPSHOT_SALES,
-  sharedDoubles,
-  writeSnapshot,
-} from "./columnSnapshot.ts";
+import { type BaseColumns, type KeptColumns, readSnapshot, SNAPSHOT_SALES, writeSnapshot } from "./columnSnapshot.ts";
 import { type PackedColumn, packColumns, unpackInto } from "./packedColumns.ts";
 import { priceBasisOf } from "./saleRows.ts";
 import { codedTexts, saleTexts } from "./textColumns.ts";
@@ -137,15 +130,15 @@ function readRows(db: Database, classId: number, attributes: readonly StoredAttr
     )
     .get()!;
   const base: BaseColumns = {
-    ids: sharedDoubles(extent.count),
-    soldOn: sharedDoubles(extent.count),
-    price: sharedDoubles(extent.count),
+    ids: new Float64Array(extent.count),
+    soldOn: new Float64Array(extent.count),
+    price: new Float64Array(extent.count),
     currencies: new Uint16Array(extent.count),
     kinds: new Uint8Array(extent.count),
     sources: new Uint32Array(extent.count),
   };
   const currencies = new Map<string, number>();
-  const values = attributes.map(() => sharedDoubles(extent.count));
+  const values = attributes.map(() => new Float64Array(extent.count));
   // "+class_id" keeps SQLite on the row number instead of a class index, which would have to be sorted.
   const selectBase = db
     .prepare<[number, number, number], BaseRow>(
