@@ -38,6 +38,7 @@ export async function demoBench(
     level: 0.9,
     appraisal,
     milliseconds,
+    glanced: null,
     move: null,
     status: "changed",
     error: null,

@@ -1,6 +1,6 @@
 /** The price, always on the table: subject, price and its last move, range on the ruler, and whether it is saved. */
 import type { ReactNode } from "react";
-import type { PricePart } from "../../domain/appraisal.ts";
+import type { GlancedPrice, PriceEstimate, PricePart } from "../../domain/appraisal.ts";
 import { CHANNEL_KEY } from "../../domain/attribute.ts";
 import { sentenceOf } from "../../domain/errors.ts";
 import { formatDay, formatMoney, formatNumber, listWords, lowerStart, roundTo } from "../../domain/format.ts";
@@ -13,18 +13,19 @@ export function PriceStrip() {
   const bench = useWorkbench();
   if (bench.assetClass === null) return <section className={css.strip} aria-label="Price strip" />;
   const priced = bench.appraisal?.priced ?? null;
+  const price = priced === null ? null : inFront(priced, bench.glanced);
   return (
     <section className={css.strip} aria-label="Price strip">
       <Who bench={bench} />
-      {priced === null ? (
+      {price === null ? (
         <p className={css.why} role="status">
           {bench.error !== null ? sentenceOf(bench.error) : "Not priced yet: give values of the item under Appraise."}
         </p>
       ) : (
         <>
-          <Price bench={bench} priced={priced} currencyCode={bench.assetClass.currencyCode} />
+          <Price bench={bench} price={price} currencyCode={bench.assetClass.currencyCode} />
           <StripGauge
-            price={priced.price}
+            price={price}
             move={bench.move}
             level={bench.level}
             currencyCode={bench.assetClass.currencyCode}
@@ -34,6 +35,11 @@ export function PriceStrip() {
       <State bench={bench} />
     </section>
   );
+}
+
+/** A glanced price stands in front of the last refined one; it has no range for the average. */
+function inFront({ price }: PricePart, glanced: GlancedPrice | null): PriceEstimate {
+  return glanced === null ? price : { ...price, ...glanced.price, rangeForAverage: [] };
 }
 
 function Who({ bench }: { bench: Workbench }) {
@@ -70,16 +76,18 @@ function whoWords({ subject, assetClass }: Workbench): string | null {
   return parts.filter((part) => part !== null).join(" · ");
 }
 
-function Price({ bench, priced, currencyCode }: { bench: Workbench; priced: PricePart; currencyCode: string }) {
-  const step = priceStep(priced.price);
+function Price({ bench, price, currencyCode }: { bench: Workbench; price: PriceEstimate; currencyCode: string }) {
+  const step = priceStep(price);
   const shown = (amount: number): string => formatMoney(roundTo(amount, step), currencyCode);
   const { move } = bench;
   const by = move === null ? 0 : roundTo(move.to, step) - roundTo(move.from, step);
   return (
     <div aria-live="polite" aria-atomic="true">
-      <div className={css.price} title={formatMoney(priced.price.amount, currencyCode, undefined, 2)}>
-        {shown(priced.price.amount)}
+      <div className={css.price} title={formatMoney(price.amount, currencyCode, undefined, 2)}>
+        {bench.glanced === null ? null : <span aria-hidden="true">≈</span>}
+        {shown(price.amount)}
       </div>
+      {bench.glanced === null ? null : <div className={css.was}>being refined</div>}
       {move === null ? null : (
         <div className={css.was}>
           {by === 0 ? (
@@ -114,7 +122,7 @@ function State({ bench }: { bench: Workbench }) {
           <b>Changed</b> {since}
         </>
       ),
-    refitting: <b>Refitting</b>,
+    refitting: <b>{bench.glanced === null ? "Refitting" : "Being refined"}</b>,
     notPriced: <b>Not priced</b>,
   };
   const dot = { saved: css.saved, changed: css.changed, refitting: css.refitting, notPriced: css.notPriced }[status];

@@ -177,6 +177,7 @@ export function WorkbenchProvider({ client, children }: { client: Client; childr
       level,
       appraisal: answer.appraisal,
       milliseconds: answer.milliseconds,
+      glanced: answer.glanced,
       move: answer.move,
       status,
       error: answer.error ?? openError,

@@ -1,7 +1,7 @@
 /** What every place works with: the open class, its model, the item being priced and the latest appraisal of both. */
 import { createContext, useContext } from "react";
 import type { Client } from "../../contract/client.ts";
-import type { Appraisal, Range } from "../../domain/appraisal.ts";
+import type { Appraisal, GlancedPrice, Range } from "../../domain/appraisal.ts";
 import type { AssetClass, AssetClassSummary } from "../../domain/assetClass.ts";
 import type { PlainError } from "../../domain/errors.ts";
 import type { Edition, PriceModel } from "../../domain/priceModel.ts";
@@ -42,6 +42,8 @@ export interface Workbench {
   /** The latest answer. It stays while a new one is awaited; null when there is none or the core refused. */
   readonly appraisal: Appraisal | null;
   readonly milliseconds: number | null;
+  /** A price shown until the refined one comes (status refitting), never final; null else. */
+  readonly glanced: GlancedPrice | null;
   readonly move: PriceMove | null;
   readonly status: Status;
   /** Why there is no price (status notPriced), or why the class could not be opened. */

@@ -48,6 +48,24 @@ describe("the price strip", () => {
     expect(words).toContain(`from ${formatMoney(roundTo(from, priceStep(price)), "EUR")}`);
   });
 
+  test("shows a glanced price as being refined, never as saved, and the refined one without a word of it", () => {
+    const { price } = bench.appraisal!.priced!;
+    const amount = 2 * price.amount;
+    const glanced = {
+      price: { amount, rangeForOneSale: price.rangeForOneSale.map((one) => ({ ...one, high: 3 * one.high })) },
+      coefficients: [],
+      isFinal: false,
+    } as const;
+    const step = priceStep({ ...price, ...glanced.price });
+    const words = wordsOf(draw({ ...bench, glanced, status: "refitting" }, <PriceStrip />));
+    expect(words).toContain(formatMoney(roundTo(amount, step), "EUR"));
+    expect(words).not.toContain(formatMoney(roundTo(price.amount, priceStep(price)), "EUR"));
+    expect(words).toContain("being refined");
+    expect(words).toContain("Being refined");
+    expect(words).not.toMatch(/saved|Edition/);
+    expect(wordsOf(draw(bench, <PriceStrip />))).not.toMatch(/refined|≈/);
+  });
+
   test("says why there is no price in place of the price", () => {
     const error = {
       family: "fit",
