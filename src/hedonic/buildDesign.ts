@@ -12,6 +12,7 @@ import type { ModelAttribute, PriceModel } from "../domain/priceModel.ts";
 import { CHANNELS, type SaleColumns } from "../domain/sale.ts";
 import { accumulateMoments } from "../numerics/accumulateMoments.ts";
 import { type Column, isIndicator } from "../numerics/column.ts";
+import { doubles, sharedColumns, sharedNumbers } from "../numerics/sharedMemory.ts";
 import { type BlendMember, blendColumn, checkBlends } from "./blends.ts";
 import type { AttributeGroup, Design, DesignColumn } from "./fit.ts";
 import type { FormSource } from "./forms/form.ts";
@@ -45,14 +46,14 @@ export function buildDesign(
   );
   const prices = picked(rows, (at) => sales.price[at]!);
   const soldOn = picked(rows, (at) => sales.soldOn[at]!);
-  const response = model.response === "lnPrice" ? prices.map((price) => Math.log(price)) : prices;
+  const response = model.response === "lnPrice" ? sharedNumbers(prices.map((price) => Math.log(price))) : prices;
   const built: Built = { columns: [], groups: [], notes: [] };
   const sources = model.attributes.map((wanted) => sourceOf(sales, rows, assetClass, wanted));
   addAttributes(built, sources, model);
   addProducts(built, model);
   addMarket(built, model, soldOn);
   const recency = recencyWeights(model.halfLifeMonths ?? null, soldOn, effectiveOn);
-  const weights = recency?.weights ?? null;
+  const weights = recency === null ? null : sharedNumbers(recency.weights);
   if (recency !== null) built.notes.push(recency.note);
   const all = [...built.columns.map((column) => column.values), response];
   return {
@@ -72,7 +73,7 @@ export function buildDesign(
 
 /** One number per row, by a plain loop: a million calls through an iterator would take seconds. */
 function picked(rows: Int32Array, numberAt: (at: number) => number): Float64Array {
-  const numbers = new Float64Array(rows.length);
+  const numbers = doubles(rows.length);
   for (let i = 0; i < rows.length; i++) numbers[i] = numberAt(rows[i]!);
   return numbers;
 }
@@ -200,7 +201,9 @@ function push(
   columns: readonly Pick<DesignColumn, "level" | "values">[],
   group: Omit<AttributeGroup, "columns">,
 ): void {
-  const indexes = columns.map(({ level, values }) => {
+  const shared = sharedColumns(columns.map(({ values }) => values));
+  const indexes = columns.map(({ level }, at) => {
+    const values = shared[at]!;
     built.columns.push({ attribute, level, values, mean: meanOf(values) });
     return built.columns.length - 1;
   });

@@ -1,13 +1,14 @@
 /**
  * Moments of columns in one pass over the rows (`mergeMoments.ts` says what they are): block by block on the kernel of this
- * thread, and on a pool of threads where one is handed in. Summation order depends on the rows alone.
+ * thread, and on a pool of threads where one is handed in or in use (`kernels/sharedPool.ts`). Summation order depends on the rows alone.
  */
 import type { Column } from "./column.ts";
 import type { BlockPool } from "./kernels/blockPool.ts";
-import { sumOnPool } from "./kernels/blockPool.ts";
+import { SHARED_ROWS, sumOnPool } from "./kernels/blockPool.ts";
 import { planColumns } from "./kernels/columnPlan.ts";
 import { currentKernel } from "./kernels/currentKernel.ts";
 import type { Rows } from "./kernels/loadBlock.ts";
+import { sharedPool } from "./kernels/sharedPool.ts";
 import { partCount, partMoments, type RowSums } from "./kernels/sumParts.ts";
 import { emptyMoments, type Moments, mergeMoments } from "./mergeMoments.ts";
 import { NumericsError } from "./numericsError.ts";
@@ -27,9 +28,10 @@ export interface MomentOptions {
  * Moments of the columns. Refuses (shape) no columns, unequal lengths, no rows; (notFinite) values or weights that are not
  * finite and weights below 0; (tooFewRows) weights that are all zero.
  */
-export function accumulateMoments(columns: readonly Column[], { weights, pool }: MomentOptions = {}): Moments {
+export function accumulateMoments(columns: readonly Column[], { weights, ...given }: MomentOptions = {}): Moments {
   const rowCount = checkLengths(columns, weights);
   const rows = weights === undefined ? { start: 0, end: rowCount } : rowsOfWeight(weights);
+  const pool = given.pool ?? (rowCount < SHARED_ROWS ? undefined : sharedPool());
   return sumRows({ columns, weights, rows }, pool);
 }
 

@@ -6,6 +6,7 @@
 import { accumulateMoments } from "./accumulateMoments.ts";
 import type { Column } from "./column.ts";
 import { leverages } from "./leverages.ts";
+import { sharedNumbers } from "./sharedMemory.ts";
 import type { LeastSquaresSolution } from "./solveLeastSquares.ts";
 
 export type HcKind = "HC0" | "HC1" | "HC2" | "HC3";
@@ -29,7 +30,7 @@ export function hcCovariance(
   const isAlone = omega.some((one) => !Number.isFinite(one));
   const isNothing = omega.every((one) => one === 0);
   if (isAlone || isNothing || k === 0) return plainSums(solution, omega, k, isAlone);
-  const middle = accumulateMoments(columns, { weights: omega });
+  const middle = accumulateMoments(columns, { weights: sharedNumbers(omega) });
   // Rows of the influences on each coefficient: C⁻¹d for the slopes, 1/Σw − x̄′C⁻¹d for the intercept.
   const { inverse, means } = solution;
   const spread = (g: ArrayLike<number>, constant: number): number => {

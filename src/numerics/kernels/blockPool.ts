@@ -31,7 +31,7 @@ const DONE = 1;
 const FAILED = 2;
 
 /** From this many rows on, handing over costs less than it saves. */
-const SHARED_ROWS = 100_000;
+export const SHARED_ROWS = 100_000;
 /** How long the caller waits for a part that a thread has taken before it computes the part itself. */
 const PATIENCE_MS = 500;
 

@@ -3,4 +3,6 @@ import { requireNode } from "../nodeVersion.ts";
 
 requireNode();
 const { serveFromArguments } = await import("./serve.ts");
+const { sumOnThreads } = await import("../sumOnThreads.ts");
+sumOnThreads();
 process.exitCode = await serveFromArguments(process.argv.slice(2));

@@ -3,4 +3,6 @@ import { requireNode } from "../nodeVersion.ts";
 
 requireNode();
 const { runCommand } = await import("./runCommand.ts");
+const { sumOnThreads } = await import("../sumOnThreads.ts");
+sumOnThreads();
 process.exitCode = await runCommand(process.argv.slice(2));

@@ -2,6 +2,7 @@
 import { app, BrowserWindow, ipcMain, protocol } from "electron";
 import { usualStorePath } from "../dataFolder.ts";
 import { openWorkshop } from "../openWorkshop.ts";
+import { sumOnThreads } from "../sumOnThreads.ts";
 import { answerFromPage } from "./answerFromPage.ts";
 import { APP_SCHEME, servePages } from "./pages.ts";
 import { refuseEverywhere } from "./refusals.ts";
@@ -30,6 +31,7 @@ export async function openApp(): Promise<void> {
 }
 
 function start(): void {
+  sumOnThreads();
   const workshop = openWorkshop({ storePath: usualStorePath() });
   app.on("will-quit", () => workshop.close());
   servePages(protocol);
