@@ -5,6 +5,7 @@ import { formatNumber, formatPercent } from "../../domain/format.ts";
 import type { PriceModel } from "../../domain/priceModel.ts";
 import { SectionHeading, SegmentedChoice } from "../parts/index.ts";
 import type { Workbench } from "../workbench/workbench.ts";
+import { FitExtras } from "./FitExtras.tsx";
 import { FitSettings } from "./FitSettings.tsx";
 import { isIn, setChannelIn } from "./modelChanges.ts";
 import css from "./PriceModelPlace.module.css";
@@ -87,13 +88,13 @@ function FitFacts({ report, milliseconds }: { report: ModelReport; milliseconds:
         {PATH_WORDS[path]}; about {formatNumber(digitsToTrust)} digits to trust
         <span className="soft">{time}</span>
       </dd>
-      {report.fitted === undefined ? null : <FitWords fitted={report.fitted} />}
+      {report.fitted === undefined ? null : <FitWords fitted={report.fitted} response={report.response} />}
     </>
   );
 }
 
 /** What the fit did to these sales and supposes of them, in sentences. */
-function FitWords({ fitted }: { fitted: FitAccount }) {
+function FitWords({ fitted, response }: { fitted: FitAccount; response: PriceModel["response"] }) {
   return (
     <>
       <dt>In words</dt>
@@ -104,6 +105,7 @@ function FitWords({ fitted }: { fitted: FitAccount }) {
         {fitted.notes.map((note) => (
           <span key={note}> {note}</span>
         ))}
+        <FitExtras fitted={fitted} response={response} />
       </dd>
     </>
   );
