@@ -1,5 +1,5 @@
 /** Threads in use change no bit of an appraisal, and start only when a sum has many rows. */
-import { afterEach, beforeAll, describe, expect, test } from "vitest";
+import { afterEach, beforeAll, describe, expect, test, vi } from "vitest";
 import { type ComputedAppraisal, computeAppraisal, prepareEvidence } from "../../src/app/computeAppraisal.ts";
 import type { BlockPool, PartTask } from "../../src/numerics/kernels/blockPool.ts";
 import { setPool, sharedPool } from "../../src/numerics/kernels/sharedPool.ts";
@@ -75,6 +75,15 @@ describe("threads in use", () => {
     expect(made).toBe(0);
     expect(difference(appraised().appraisal, alone.appraisal)).toBeNull();
     expect(made).toBe(1);
+  });
+
+  test("are none where the caller may not wait for them", () => {
+    const wait = vi.spyOn(Atomics, "wait").mockImplementation(() => {
+      throw new TypeError("Atomics.wait cannot be called in this context");
+    });
+    lendBlockPool(entry, 1);
+    wait.mockRestore();
+    expect(sharedPool()).toBeUndefined();
   });
 
   test("are none for a size below 1, and after being given up", async () => {
