@@ -5,6 +5,7 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { accumulateMoments } from "../../src/numerics/accumulateMoments.ts";
+import { quadraticForm } from "../../src/numerics/leverages.ts";
 import { openLiveFit } from "../../src/numerics/liveFit.ts";
 import { solveLeastSquares } from "../../src/numerics/solveLeastSquares.ts";
 import { drawFrom } from "../fixtures/randomClass.ts";
@@ -58,6 +59,11 @@ describe("a live fit", () => {
         for (const [at, error] of answer.standardErrors.entries()) near(error, fit.standardErrors[at]!, 9);
         near(answer.intercept, fit.intercept!, 9);
         near(answer.residualSumOfSquares, fit.residualSumOfSquares, 10);
+        const x = columns.map((column) => 1.1 * column[0]!);
+        const d = Float64Array.from(answer.columns, (j, at) => x[j]! - fit.means[at]!);
+        const estimate = live.estimateAt(x);
+        near(estimate.fitted, fit.responseMean + d.reduce((sum, one, at) => sum + one * fit.slopes[at]!, 0), 9);
+        near(estimate.leverage, 1 / fit.weightSum + quadraticForm(fit.rootInverse, d), 9);
         expect(answer.residualDf).toBe(fit.residualDf);
         expect(answer.isFinal).toBe(false);
       }),
