@@ -180,8 +180,10 @@ function changesBetween(first: Side, second: Side, sameSales: boolean): Change[]
     if (!membersOf(second).has(key)) return `Leaving out ${label}`;
     return membersOf(first).has(key) ? `Another form of ${label}` : `Taking in ${label}`;
   };
-  const isSingle =
-    keys.length <= MOST_SINGLE && Math.max(first.prepared.used.length, second.prepared.used.length) <= MANY_SALES;
+  const saleCount = Math.max(first.prepared.used.length, second.prepared.used.length);
+  // MM searches anew at each fit, which takes about a second.
+  const isSlow = [first, second].some(({ input }) => input.model.estimator?.kind === "mm");
+  const isSingle = keys.length <= (isSlow ? 1 : MOST_SINGLE) && saleCount <= MANY_SALES;
   const attributes: Change[] = isSingle
     ? keys.map((key) => ({ kind: "attribute" as const, label: changeWords(key), keys: [key] }))
     : [{ kind: "attributes" as const, label: `${keys.length} attributes together`, keys }];

@@ -31,14 +31,20 @@ export function centringOf(moments: Moments, centred: boolean): Centring {
   return { means: Array.from(means, () => ({ hi: 0, lo: 0 })), spreads, scales: spreads.map(powerOfTwoNear) };
 }
 
+const storedBefore = new WeakMap<Float64Array, number>();
+
 /**
  * Largest error that storing a column's values as doubles can have caused: 0 for whole numbers below 2^53, which are
- * stored exactly, else half a unit in the last place of the largest value.
+ * stored exactly, else half a unit in the last place of the largest value. Kept for as long as the column, which must not change.
  */
 export function storedError(column: Column): number {
   if (isIndicator(column)) return 0;
+  const known = storedBefore.get(column);
+  if (known !== undefined) return known;
   const isWhole = column.every(Number.isInteger);
   let largest = 0;
   for (let i = 0; i < column.length; i++) largest = Math.max(largest, Math.abs(column[i]!));
-  return isWhole && largest <= Number.MAX_SAFE_INTEGER ? 0 : largest * 2 ** -53;
+  const error = isWhole && largest <= Number.MAX_SAFE_INTEGER ? 0 : largest * 2 ** -53;
+  storedBefore.set(column, error);
+  return error;
 }
