@@ -7,7 +7,7 @@ import { DAYS_PER_MONTH, dayOf } from "../domain/day.ts";
 import { formatDay, formatNumber, listWords } from "../domain/format.ts";
 import type { MarketForm } from "../domain/priceModel.ts";
 import { indicator } from "../numerics/column.ts";
-import { naturalSpline, splineKnots } from "../numerics/naturalSpline.ts";
+import { naturalSpline, splineColumns, splineKnots } from "../numerics/naturalSpline.ts";
 import type { AttributeGroup, DesignColumn } from "./fit.ts";
 
 type Column = Pick<DesignColumn, "level" | "values">;
@@ -75,12 +75,12 @@ function curve(soldOn: Float64Array): MarketColumns {
     };
   }
   const at = naturalSpline(knots);
-  const rows = Array.from(months, at);
+  const columns = splineColumns(at, months, knots.length - 1);
   const day = (month: number): string => formatDay(dayOf(Math.round(first + month * DAYS_PER_MONTH)));
   return {
     columns: knots.slice(1).map((to, j) => ({
       level: `${day(knots[j]!)} to ${day(to)}`,
-      values: Float64Array.from(rows, (row) => row[j]!),
+      values: columns[j]!,
     })),
     group: {
       ...PLAIN,

@@ -43,6 +43,16 @@ export function naturalSpline(knots: readonly number[]): (x: number) => number[]
   };
 }
 
+/** The columns N of a spline over n values, `count` of them. */
+export function splineColumns(at: (x: number) => number[], values: Float64Array, count: number): Float64Array[] {
+  const columns = Array.from({ length: count }, () => new Float64Array(values.length));
+  for (let i = 0; i < values.length; i++) {
+    const row = at(values[i]!);
+    for (let j = 0; j < count; j++) columns[j]![i] = row[j]!;
+  }
+  return columns;
+}
+
 /** x − t₁ and k − 2 cubic pieces, each linear beyond the last knot. */
 function truncatedPowers(knots: readonly number[]): (x: number) => number[] {
   const first = knots[0]!;

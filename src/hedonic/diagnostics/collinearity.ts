@@ -52,7 +52,7 @@ export const collinearity: Diagnostic = {
   },
 };
 
-interface Shared {
+export interface Shared {
   readonly group: AttributeGroup;
   /** G^(1/d). */
   readonly inflation: number;
@@ -63,7 +63,7 @@ function verdictOn(inflation: number): Verdict {
 }
 
 /** Σw(x − x̄)(x − x̄)′ of the fit's columns, k × k. */
-function crossProductsOf({ design, columns, rule, ...fit }: Fit): Float64Array {
+export function crossProductsOf({ design, columns, rule, ...fit }: Fit): Float64Array {
   const k = columns.length;
   const isAtHand = rule.weights === design.weights;
   const moments = isAtHand
@@ -79,13 +79,13 @@ function placesOf(fit: Fit, group: AttributeGroup): number[] {
   return group.columns.map((index) => fit.columns.indexOf(index));
 }
 
-function sharedBy(fit: Fit, group: AttributeGroup, crossProducts: Float64Array): Shared {
+export function sharedBy(fit: Fit, group: AttributeGroup, crossProducts: Float64Array): Shared {
   const places = placesOf(fit, group);
   const inflation = generalisedInflation(crossProducts, fit.solution.inverse, fit.columns.length, places);
   return { group, inflation: inflation ** (1 / places.length) };
 }
 
-function companionOf(fit: Fit, group: AttributeGroup): AttributeGroup {
+export function companionOf(fit: Fit, group: AttributeGroup): AttributeGroup {
   const closeness = (other: AttributeGroup) =>
     Math.max(
       ...placesOf(fit, group).flatMap((a) =>

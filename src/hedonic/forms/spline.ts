@@ -4,7 +4,7 @@
  */
 import { AppError } from "../../domain/errors.ts";
 import { formatNumber } from "../../domain/format.ts";
-import { naturalSpline, splineKnots } from "../../numerics/naturalSpline.ts";
+import { naturalSpline, splineColumns, splineKnots } from "../../numerics/naturalSpline.ts";
 import { NumericsError } from "../../numerics/numericsError.ts";
 import { type AttributeFormRule, type FormSource, PLAIN } from "./form.ts";
 
@@ -16,14 +16,14 @@ export const spline: AttributeFormRule = {
     const { attribute, stored } = source;
     const knots = knotsOf(source);
     const at = naturalSpline(knots);
-    const rows = Array.from(stored, at);
+    const columns = splineColumns(at, stored, knots.length - 1);
     const unit = attribute?.kind === "built" ? (attribute.unit ?? "years") : (attribute?.unit ?? null);
     const words = (from: number, to: number) => stretchWords(from, to, unit, attribute?.decimals ?? 0);
     return {
       ...PLAIN,
       columns: knots.slice(1).map((to, j) => ({
         level: words(knots[j]!, to),
-        values: Float64Array.from(rows, (row) => row[j]!),
+        values: columns[j]!,
       })),
       reference: null,
       step: 1,
