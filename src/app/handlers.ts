@@ -26,6 +26,7 @@ import { leaveOutHeldBack, listHeldBack, mendHeldBack } from "./mendHeldBack.ts"
 import { openDemo } from "./openDemo.ts";
 import type { Ports } from "./ports.ts";
 import { previewImport } from "./previewImport.ts";
+import { previewWaysOn } from "./previewWaysOn.ts";
 import {
   changeSettings,
   listEditions,
@@ -80,6 +81,7 @@ export function createHandlers(ports: Ports): Handlers {
     compare: (input) => compareModels(ports, input),
     health: (input) => checkHealth(ports, memory, input),
     everySet: (input) => everySet(ports, memory, sets, input),
+    waysOn: (input) => previewWaysOn(ports, memory, input),
     saveEdition: (input) => saveEdition(ports, input),
     previewSheet: (input) => previewSheet(ports, input),
     issueSheet: (input) => issueSheet(ports, input),

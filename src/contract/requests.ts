@@ -17,6 +17,7 @@ import type {
   StoredHeldBackRow,
 } from "../domain/importRecord.ts";
 import type { ModelHealth } from "../domain/modelHealth.ts";
+import type { MovingReport } from "../domain/movingTogether.ts";
 import type { Edition, PriceModel } from "../domain/priceModel.ts";
 import type { Sale } from "../domain/sale.ts";
 import type { SheetRecord, VerificationReport } from "../domain/sheetRecord.ts";
@@ -262,6 +263,12 @@ export const requestInputs = {
   }),
   health: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable() }),
   everySet: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable(), rule: defensibleRule }),
+  waysOn: z.object({
+    classId: id,
+    model: priceModelInput,
+    subject: subjectInput.nullable(),
+    level: z.number().gt(0).lt(1),
+  }),
   saveEdition: z.object({ classId: id, model: priceModelInput }),
   listEditions: byClass,
   saveDraft: z.object({ classId: id, subject: subjectInput, engagement: engagementInput.nullable() }),
@@ -344,6 +351,8 @@ export interface RequestOutputs {
   compare: Comparison;
   health: ModelHealth;
   everySet: EverySet;
+  /** What moves together, and every way on worked out before it is applied. */
+  waysOn: MovingReport;
   saveEdition: Edition;
   listEditions: readonly Edition[];
   saveDraft: { savedAtUtc: string };

@@ -2,6 +2,7 @@
 import { useId } from "react";
 import type { DependencyNotice } from "../../domain/appraisal.ts";
 import { lowerStart } from "../../domain/format.ts";
+import type { ResolvedWays } from "../../domain/movingTogether.ts";
 import { Notice } from "../parts/index.ts";
 import type { Workbench } from "../workbench/workbench.ts";
 import { resolveByLeavingOut } from "./modelChanges.ts";
@@ -10,17 +11,29 @@ import css from "./PriceModelPlace.module.css";
 interface DependencyNoticesProps {
   readonly bench: Workbench;
   readonly dependencies: readonly DependencyNotice[];
+  /** Each resolved in every way there is; empty until it is worked out. */
+  readonly ways: readonly ResolvedWays[];
 }
 
-export function DependencyNotices({ bench, dependencies }: DependencyNoticesProps) {
+export function DependencyNotices({ bench, dependencies, ways }: DependencyNoticesProps) {
   return dependencies.map((notice) => (
     <div key={notice.equation} style={{ marginTop: 8 }}>
-      <OneNotice bench={bench} notice={notice} />
+      <OneNotice
+        bench={bench}
+        notice={notice}
+        shown={ways.find(({ equation }) => equation === notice.equation) ?? null}
+      />
     </div>
   ));
 }
 
-function OneNotice({ bench, notice }: { bench: Workbench; notice: DependencyNotice }) {
+interface OneNoticeProps {
+  readonly bench: Workbench;
+  readonly notice: DependencyNotice;
+  readonly shown: ResolvedWays | null;
+}
+
+function OneNotice({ bench, notice, shown }: OneNoticeProps) {
   const name = useId();
   const keys = notice.choices.map((choice) => choice.key);
   return (
@@ -47,6 +60,7 @@ function OneNotice({ bench, notice }: { bench: Workbench; notice: DependencyNoti
           );
         })}
       </fieldset>
+      {shown === null || shown.sentence === "" ? null : <p className="soft">{shown.sentence}</p>}
     </Notice>
   );
 }

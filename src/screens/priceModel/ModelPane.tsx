@@ -1,6 +1,6 @@
 /** What the model rests on: exact dependencies, what moves together, form and fit, and which sales count. */
 import type { ModelReport } from "../../domain/appraisal.ts";
-import { formatNumber, lowerStart } from "../../domain/format.ts";
+import type { MovingReport } from "../../domain/movingTogether.ts";
 import type { PriceModel } from "../../domain/priceModel.ts";
 import { MovingTogetherMap } from "../charts/MovingTogetherMap.tsx";
 import { SectionHeading } from "../parts/index.ts";
@@ -11,9 +11,11 @@ import { EvidenceChoice } from "./EvidenceChoice.tsx";
 import { PairsAndBlends } from "./PairsAndBlends.tsx";
 import css from "./PriceModelPlace.module.css";
 import { ResponseAndFit } from "./ResponseAndFit.tsx";
+import { useWaysOn, WaysOn } from "./WaysOn.tsx";
 
 export function ModelPane({ bench, model }: { bench: Workbench; model: PriceModel }) {
   const report = bench.appraisal?.report ?? null;
+  const found = useWaysOn(bench);
   return (
     <>
       {report === null || report.dependencies.length === 0 ? null : (
@@ -21,10 +23,10 @@ export function ModelPane({ bench, model }: { bench: Workbench; model: PriceMode
           <SectionHeading>
             {report.dependencies.length === 1 ? "One attribute said twice" : "Attributes said twice"}
           </SectionHeading>
-          <DependencyNotices bench={bench} dependencies={report.dependencies} />
+          <DependencyNotices bench={bench} dependencies={report.dependencies} ways={found?.dependencies ?? []} />
         </div>
       )}
-      {report === null ? null : <MovingTogether bench={bench} report={report} />}
+      {report === null ? null : <MovingTogether bench={bench} report={report} found={found} />}
       <ResponseAndFit bench={bench} model={model} report={report} />
       <AttributeForms bench={bench} model={model} />
       <PairsAndBlends bench={bench} model={model} />
@@ -33,7 +35,13 @@ export function ModelPane({ bench, model }: { bench: Workbench; model: PriceMode
   );
 }
 
-function MovingTogether({ bench, report }: { bench: Workbench; report: ModelReport }) {
+interface MovingTogetherProps {
+  readonly bench: Workbench;
+  readonly report: ModelReport;
+  readonly found: MovingReport | null;
+}
+
+function MovingTogether({ bench, report, found }: MovingTogetherProps) {
   const attributes = (bench.assetClass?.attributes ?? [])
     .filter((one) => report.model.attributes.some((member) => member.key === one.key))
     .map(({ key, label }) => ({ key, label }));
@@ -43,32 +51,8 @@ function MovingTogether({ bench, report }: { bench: Workbench; report: ModelRepo
       <div className={css.map}>
         <MovingTogetherMap report={report} attributes={attributes} justNow={bench.leftOutJustNow} />
       </div>
-      <p className="small">
-        <StrongestPair report={report} />{" "}
-        <span className="soft">Dashed tie: one rises as the other falls. Double line: exact.</span>
-      </p>
+      <p className="small soft">Dashed tie: one rises as the other falls. Double line: exact.</p>
+      {found === null ? null : <WaysOn bench={bench} found={found} />}
     </div>
-  );
-}
-
-/** The strongest pair, and how much wider standing side by side makes their ranges. */
-function StrongestPair({ report }: { report: ModelReport }) {
-  const pair = report.movingTogether[0];
-  if (pair === undefined) return <b>No two attributes move together.</b>;
-  const labelOf = (key: string): string => report.attributeEvidence.find((one) => one.key === key)?.label ?? key;
-  const timesOf = (key: string): number | null => report.widening.find((one) => one.key === key)?.times ?? null;
-  const [a, b] = [timesOf(pair.a), timesOf(pair.b)];
-  const strength = formatNumber(pair.partialCorrelation, 2);
-  return (
-    <>
-      <b>
-        {labelOf(pair.a)} and {lowerStart(labelOf(pair.b))} move together most: {strength}, the others alike.
-      </b>{" "}
-      {a === null || b === null ? null : (
-        <span className="soft">
-          Side by side their ranges are {formatNumber(a, 1)} and {formatNumber(b, 1)} × wider than alone.
-        </span>
-      )}
-    </>
   );
 }

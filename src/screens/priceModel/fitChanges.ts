@@ -1,5 +1,4 @@
 /** What a person can change about how a price model is fitted, each as a new model. Settings at their default are not stored. */
-import type { Attribute } from "../../domain/attribute.ts";
 import type {
   Blend,
   ChoiceReading,
@@ -68,17 +67,7 @@ export function removeInteraction(model: PriceModel, a: string, b: string): Pric
   return withSetting(model, "interactions", rest.length === 0 ? null : rest);
 }
 
-/** A blend of number attributes, signs by the direction each is expected to move the price (the first member's is +). */
-export function blendOf(attributes: readonly Attribute[], weighting: Blend["weighting"]): Blend {
-  const first = attributes[0]?.expectedDirection ?? null;
-  const members = attributes.map(({ key, expectedDirection }) => ({
-    key,
-    sign: expectedDirection !== null && first !== null && expectedDirection !== first ? (-1 as const) : (1 as const),
-    weight: 1,
-  }));
-  const label = attributes.map((one, at) => (at === 0 ? one.label : one.label.toLowerCase())).join(" and ");
-  return { key: `blend_${attributes.map((one) => one.key).join("_")}`, label, members, weighting };
-}
+export { blendOf } from "../../domain/blendOf.ts";
 
 /** Takes in the blend, or puts it in the place of the one with its key. */
 export function putBlend(model: PriceModel, blend: Blend): PriceModel {

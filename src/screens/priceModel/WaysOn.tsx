@@ -1,0 +1,120 @@
+/** The ways on where attributes move together: each worked out before it is applied, with a link that applies it. */
+import { useMemo } from "react";
+import type { RequestInput } from "../../contract/requests.ts";
+import { formatNumber, formatPercent, roundOutward, roundTo } from "../../domain/format.ts";
+import type { MovingReport, WayOn } from "../../domain/movingTogether.ts";
+import { TextLink } from "../parts/index.ts";
+import { isBlank } from "../workbench/blank.ts";
+import { useRead } from "../workbench/useTask.ts";
+import type { Workbench } from "../workbench/workbench.ts";
+import css from "./WaysOn.module.css";
+
+const LEVEL = 0.9;
+
+/** What moves together and each way on, for the model and item on the table; null until it is known. */
+export function useWaysOn({ client, classId, model, subject, assetClass }: Workbench): MovingReport | null {
+  const dataStamp = assetClass?.dataVersion ?? 0;
+  // biome-ignore lint/correctness/useExhaustiveDependencies: the stamp says that the data behind the same question changed
+  const ask = useMemo(() => {
+    if (classId === null || model === null) return null;
+    const item = subject === null || isBlank(subject) ? null : subject;
+    return () => client.ask("waysOn", { classId, model, subject: item, level: LEVEL } as RequestInput<"waysOn">);
+  }, [client, classId, model, subject, dataStamp]);
+  return useRead(ask).value;
+}
+
+export function WaysOn({ bench, found }: { bench: Workbench; found: MovingReport }) {
+  const { groups, ways, priceSentence, currencyCode } = found;
+  return (
+    <div className="small">
+      <p>
+        <b>{found.sentence}</b> {priceSentence}
+      </p>
+      {groups.slice(1).map(({ sentence }) => (
+        <p key={sentence} className="soft">
+          {sentence}
+        </p>
+      ))}
+      {ways.length === 0 ? null : (
+        <div className={css.scroll}>
+          <table className={css.ways}>
+            <caption>Ways on, each worked out before it is applied, {currencyCode}; effects with 19 in 20</caption>
+            <thead>
+              <tr>
+                <th scope="col">way</th>
+                <th scope="col" className="num">
+                  price
+                </th>
+                <th scope="col" className="num">
+                  error
+                </th>
+                <th scope="col">what they then read</th>
+                <th scope="col">
+                  <span className="vh">apply</span>
+                </th>
+              </tr>
+            </thead>
+            <tbody>
+              {ways.map((way) => (
+                <Way key={way.label} way={way} bench={bench} />
+              ))}
+            </tbody>
+          </table>
+        </div>
+      )}
+    </div>
+  );
+}
+
+function Way({ way, bench }: { way: WayOn; bench: Workbench }) {
+  const { label, kind, price, looTypicalError, refused, reads, model } = way;
+  if (refused !== null) {
+    return (
+      <tr>
+        <th scope="row">{label}</th>
+        <td colSpan={4}>{refused}</td>
+      </tr>
+    );
+  }
+  const ends = price === null ? null : roundOutward(price, 100);
+  return (
+    <tr>
+      <th scope="row">{label}</th>
+      <td className="num">
+        {price === null || ends === null ? (
+          "no item"
+        ) : (
+          <>
+            {formatNumber(roundTo(price.amount, 10))}
+            <br />
+            <span className="soft">
+              {formatNumber(ends.low)}–{formatNumber(ends.high)}
+            </span>
+          </>
+        )}
+      </td>
+      <td className="num">{looTypicalError === null ? "" : formatPercent(looTypicalError, 2)}</td>
+      <td>
+        {reads.map((one) => (
+          <div key={`${one.key} ${one.label}`}>
+            {one.label}: {money(one.money)}{" "}
+            <span className="soft">
+              ({money(one.low95)} to {money(one.high95)}) per {one.stepWords}
+            </span>
+          </div>
+        ))}
+      </td>
+      <td>
+        {kind === "keep" ? (
+          <span className="soft">in use</span>
+        ) : (
+          <TextLink onPress={() => bench.changeModel(() => model)}>Use this</TextLink>
+        )}
+      </td>
+    </tr>
+  );
+}
+
+function money(amount: number | null): string {
+  return amount === null ? "not known" : formatNumber(roundTo(amount, 10));
+}
