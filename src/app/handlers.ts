@@ -27,6 +27,7 @@ import { openDemo } from "./openDemo.ts";
 import type { Ports } from "./ports.ts";
 import { previewImport } from "./previewImport.ts";
 import { previewWaysOn } from "./previewWaysOn.ts";
+import { priceLot } from "./priceLot.ts";
 import {
   changeSettings,
   listEditions,
@@ -81,6 +82,7 @@ export function createHandlers(ports: Ports): Handlers {
     compare: (input) => compareModels(ports, input),
     health: (input) => checkHealth(ports, memory, input),
     everySet: (input) => everySet(ports, memory, sets, input),
+    priceLot: (input) => priceLot(ports, memory, input),
     waysOn: (input) => previewWaysOn(ports, memory, input),
     saveEdition: (input) => saveEdition(ports, input),
     previewSheet: (input) => previewSheet(ports, input),

@@ -16,6 +16,7 @@ import type {
   ReadingOptions,
   StoredHeldBackRow,
 } from "../domain/importRecord.ts";
+import type { PricedLot } from "../domain/lot.ts";
 import type { ModelHealth } from "../domain/modelHealth.ts";
 import type { MovingReport } from "../domain/movingTogether.ts";
 import type { Edition, PriceModel } from "../domain/priceModel.ts";
@@ -263,6 +264,7 @@ export const requestInputs = {
   }),
   health: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable() }),
   everySet: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable(), rule: defensibleRule }),
+  priceLot: z.object({ classId: id, model: priceModelInput, subjects: z.array(subjectInput).min(1).max(500), levels }),
   waysOn: z.object({
     classId: id,
     model: priceModelInput,
@@ -351,6 +353,7 @@ export interface RequestOutputs {
   compare: Comparison;
   health: ModelHealth;
   everySet: EverySet;
+  priceLot: PricedLot;
   /** What moves together, and every way on worked out before it is applied. */
   waysOn: MovingReport;
   saveEdition: Edition;

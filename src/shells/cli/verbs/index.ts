@@ -5,6 +5,7 @@ import { demoVerb } from "./demo.ts";
 import { digitsVerb } from "./digits.ts";
 import { healthVerb } from "./health.ts";
 import { importVerb } from "./import.ts";
+import { lotVerb } from "./lot.ts";
 import { priceVerb } from "./price.ts";
 import { refitVerb } from "./refit.ts";
 import { serveVerb } from "./serve.ts";
@@ -18,6 +19,7 @@ export const VERBS: readonly Verb[] = [
   importVerb,
   refitVerb,
   priceVerb,
+  lotVerb,
   setsVerb,
   compareVerb,
   healthVerb,
