@@ -265,6 +265,8 @@ export interface LedgerRow {
     readonly carried: readonly { from: string; amount: number }[];
     readonly moneyOwn: number;
     readonly moneyCarried: readonly { from: string; amount: number }[];
+    /** How many standard errors half a 95 % range is: t at the degrees of freedom that the errors have. */
+    readonly t95: number;
   } | null;
   readonly signTurned: boolean;
   readonly sentence: string;

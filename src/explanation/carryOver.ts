@@ -10,6 +10,7 @@ import type { Fit } from "../hedonic/fit.ts";
 import { type Reading, readingsOf, readOff, stepWordsOf, varianceOf } from "../hedonic/readings.ts";
 import { numbersOf } from "../numerics/column.ts";
 import { solveLeastSquares } from "../numerics/solveLeastSquares.ts";
+import { tUpperQuantile } from "../numerics/studentT.ts";
 import { type Association, carriedCovariance } from "./carriedErrors.ts";
 import { type ComesWith, ledgerHeadline, type Move, rowSentence } from "./ledgerWords.ts";
 
@@ -152,16 +153,20 @@ function describeRow(parts: RowParts): { row: LedgerRow; moves: ComesWith } {
   return { row: { ...row, sentence: rowSentence({ ...row, sentence: "" }, moves, currencyCode) }, moves };
 }
 
+/** Upper tail of a 95 % range. */
+const TAIL_95 = 0.025;
+
 /** Standard errors of the parts; null unless all of them are known. */
 function errorsOf(
-  { ownError, carriedErrors: errors }: RowParts,
+  { report, ownError, carriedErrors: errors }: RowParts,
   perUnit: number,
 ): NonNullable<LedgerRow["errors"]> | null {
   const carried = errors.flatMap(({ from, amount }) => (amount === null ? [] : [{ from, amount }]));
-  if (ownError === null || carried.length < errors.length) return null;
+  const df = report.fitted?.errorsDf ?? report.residualDf;
+  if (ownError === null || carried.length < errors.length || !(df > 0)) return null;
   const size = Math.abs(perUnit);
   const moneyCarried = carried.map(({ from, amount }) => ({ from, amount: amount * size }));
-  return { own: ownError, carried, moneyOwn: ownError * size, moneyCarried };
+  return { own: ownError, carried, moneyOwn: ownError * size, moneyCarried, t95: tUpperQuantile(TAIL_95, df) };
 }
 
 /** "each 1,000 h comes with 0.88 more years": how a step of this column moves the one column of each left-out number. */

@@ -74,6 +74,11 @@ export function CarryOverLedger({ ledger, report, currencyCode }: CarryOverLedge
       <p className="small" style={{ marginTop: 8 }} aria-live="polite">
         {chosen?.sentence}
       </p>
+      {chosen?.rangeWords == null ? null : (
+        <p className="fine soft">
+          {currencyCode}, 95&nbsp;% ranges: {chosen.rangeWords}.
+        </p>
+      )}
       <LeftOutOwn ledger={ledger} currencyCode={currencyCode} />
     </>
   );
@@ -173,6 +178,8 @@ interface LedgerRowViewProps {
 function LedgerRowView({ row, columns, scale, currencyCode, hasRange, isChosen, onChoose }: LedgerRowViewProps) {
   const exact = (amount: number): string => formatMoney(amount, currencyCode, undefined, 2);
   const range = row.range === null ? "none can be given" : `${exact(row.range.low)} to ${exact(row.range.high)}`;
+  const within = (index: number): string =>
+    row.partRanges[index] == null ? "" : `, range, 95\u00a0%: ${row.partRanges[index]}`;
   const spoken = [
     `own part ${formatNumber(row.printed[0]!)}`,
     ...columns.map((column, index) => `carried for ${column.label} ${formatNumber(row.printed[index + 1]!)}`),
@@ -189,17 +196,19 @@ function LedgerRowView({ row, columns, scale, currencyCode, hasRange, isChosen, 
         <CarryOverBars parts={row.parts} scale={scale} label={`${row.name}: ${spoken.join(", ")}`} />
       </td>
       {columns.length === 0 ? null : (
-        <td className="num" title={exact(row.parts[0]!)}>
+        <td className="num" title={`${exact(row.parts[0]!)}${within(0)}`}>
           {formatNumber(row.printed[0]!)}
+          <span className="vh">{within(0)}</span>
         </td>
       )}
       {columns.map((column, index) => (
         <td
           key={column.heading}
           className={`num ${row.mostCarried === index ? css.carried : ""}`}
-          title={exact(row.parts[index + 1]!)}
+          title={`${exact(row.parts[index + 1]!)}${within(index + 1)}`}
         >
           {row.printed[index + 1] === 0 ? "±0" : formatSigned(row.printed[index + 1]!)}
+          <span className="vh">{within(index + 1)}</span>
         </td>
       ))}
       <td className={`num ${css.now}`} title={`${exact(row.exactReads)}; range, 95\u00a0%: ${range}`}>

@@ -5,6 +5,7 @@
 import type { Ledger, LedgerRow } from "../../domain/appraisal.ts";
 import { MARKET_KEY } from "../../domain/attribute.ts";
 import { listWords, lowerStart, roundTo, roundToAddUp } from "../../domain/format.ts";
+import { amountWords, partRanges, rowRangeWords } from "../../domain/ledgerRanges.ts";
 import { rowStep } from "../charts/figures.ts";
 
 export interface LedgerColumn {
@@ -21,6 +22,10 @@ export interface PrintedRow {
   /** Exact: own part, then one per column; their sum is the coefficient in money. */
   readonly parts: readonly number[];
   readonly printed: readonly number[];
+  /** "−710 ± 160" per part, 95 %; null where no range is known or several parts share the column. */
+  readonly partRanges: readonly (string | null)[];
+  /** "own part −710 ± 160; carried for age −1,430 ± 210" */
+  readonly rangeWords: string | null;
   readonly reads: number;
   readonly exactReads: number;
   readonly halfRange: number | null;
@@ -67,6 +72,16 @@ export function nameOf(row: Pick<LedgerRow, "label" | "level" | "attribute" | "s
   return row.attribute === "channel" ? `Sold through ${row.level}` : row.level;
 }
 
+/** A column of several attributes has no range of its own: how their errors move together is not known here. */
+function rangesOf(row: LedgerRow, columns: readonly LedgerColumn[]): (string | null)[] {
+  const ranges = partRanges(row);
+  const keys = [null, ...columns.map((column) => (column.keys.length === 1 ? column.keys[0]! : undefined))];
+  return keys.map((key) => {
+    const one = ranges.find(({ from }) => from === key);
+    return one === undefined || one.halfRange === null ? null : amountWords(one.amount, one.halfRange);
+  });
+}
+
 export function printRow(row: LedgerRow, columns: readonly LedgerColumn[]): PrintedRow {
   const step = rowStep(row.money);
   const parts = [row.money.own, ...columns.map((column) => carriedFrom(row, column.keys))];
@@ -81,6 +96,8 @@ export function printRow(row: LedgerRow, columns: readonly LedgerColumn[]): Prin
     step: row.stepWords === "yes against no" ? "yes" : row.stepWords,
     parts,
     printed,
+    partRanges: rangesOf(row, columns),
+    rangeWords: rowRangeWords(row),
     reads: printed.reduce((sum, part) => sum + part, 0),
     exactReads: row.money.coefficient,
     halfRange: range === null ? null : Math.max(step, roundTo((range.high - range.low) / 2, step)),

@@ -4,6 +4,7 @@
  */
 import type { Appraisal, ModelReport, PricePart } from "../../domain/appraisal.ts";
 import type { DuplicateRow, HeldBackRow } from "../../domain/importRecord.ts";
+import { partRanges } from "../../domain/ledgerRanges.ts";
 
 /** How attributes are named in the answer: by key for a store, by column heading for a file. */
 export type Naming = (key: string) => string;
@@ -77,6 +78,13 @@ function ledgerJson({ ledger }: Appraisal, nameOf: Naming) {
     coefficient: row.coefficient,
     ownPart: row.ownPart,
     carriedParts: row.carriedParts.map(({ from, amount }) => ({ from: nameOf(from), amount })),
+    money: { ...row.money, carried: row.money.carried.map((part) => ({ ...part, from: nameOf(part.from) })) },
+    parts: partRanges(row).map(({ from, amount, halfRange }) => ({
+      from: from === null ? null : nameOf(from),
+      money: amount,
+      low95: halfRange === null ? null : amount - halfRange,
+      high95: halfRange === null ? null : amount + halfRange,
+    })),
   }));
 }
 

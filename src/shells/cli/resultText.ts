@@ -1,6 +1,7 @@
 /** The result for people: sentences first, then a few plain tables. Digits are dropped by domain/format.ts only. */
 import type { Appraisal, Coefficient, ModelReport, PricePart } from "../../domain/appraisal.ts";
 import { formatDay, formatMoney, formatNumber, formatPercent, formatSigned, levelWords } from "../../domain/format.ts";
+import { amountWords, partRanges } from "../../domain/ledgerRanges.ts";
 import { priceSentence } from "../priceSentence.ts";
 import type { FileAccount } from "./resultJson.ts";
 import { table } from "./table.ts";
@@ -83,13 +84,16 @@ function ledgerText(appraisal: Appraisal): string {
   const { ledger } = appraisal;
   if (ledger.leftOut.length === 0) return "";
   const currency = appraisal.assetClass.currencyCode;
-  const rows = ledger.rows.map((row) => [
-    row.level === null ? row.label : `${row.label}: ${row.level}`,
-    row.stepWords,
-    formatMoney(row.money.coefficient, currency),
-    formatMoney(row.money.own, currency),
-    ...ledger.leftOut.map(({ key }) => formatSigned(row.money.carried.find(({ from }) => from === key)?.amount ?? 0)),
-  ]);
+  const rows = ledger.rows.map((row) => {
+    const parts = partRanges(row);
+    const part = (key: string | null): string => {
+      const one = parts.find(({ from }) => from === key);
+      return one === undefined ? "" : amountWords(one.amount, one.halfRange);
+    };
+    const name = row.level === null ? row.label : `${row.label}: ${row.level}`;
+    const keys = [null, ...ledger.leftOut.map(({ key }) => key)];
+    return [name, row.stepWords, formatMoney(row.money.coefficient, currency), ...keys.map(part)];
+  });
   const heading = [
     "attribute",
     "step",
@@ -97,7 +101,7 @@ function ledgerText(appraisal: Appraisal): string {
     "own part",
     ...ledger.leftOut.map(({ label }) => `carried for ${label}`),
   ];
-  return `Carry-over\n${ledger.headline}\n${table(heading, rows, 2)}`;
+  return `Carry-over, parts in ${currency} with their ranges (19 in 20)\n${ledger.headline}\n${table(heading, rows, 2)}`;
 }
 
 function rangesText(priced: PricePart, currencyCode: string): string {
