@@ -38,7 +38,10 @@ export function WaysOn({ bench, found }: { bench: Workbench; found: MovingReport
       {ways.length === 0 ? null : (
         <div className={css.scroll}>
           <table className={css.ways}>
-            <caption>Ways on, each worked out before it is applied, {currencyCode}; effects with 19 in 20</caption>
+            <caption>
+              Ways on, each worked out before it is applied, {currencyCode}: price with 9 in 10, what the effects then
+              read with 19 in 20
+            </caption>
             <thead>
               <tr>
                 <th scope="col">way</th>
@@ -48,7 +51,6 @@ export function WaysOn({ bench, found }: { bench: Workbench; found: MovingReport
                 <th scope="col" className="num">
                   error
                 </th>
-                <th scope="col">what they then read</th>
                 <th scope="col">
                   <span className="vh">apply</span>
                 </th>
@@ -72,46 +74,50 @@ function Way({ way, bench }: { way: WayOn; bench: Workbench }) {
     return (
       <tr>
         <th scope="row">{label}</th>
-        <td colSpan={4}>{refused}</td>
+        <td colSpan={3}>{refused}</td>
       </tr>
     );
   }
   const ends = price === null ? null : roundOutward(price, 100);
   return (
-    <tr>
-      <th scope="row">{label}</th>
-      <td className="num">
-        {price === null || ends === null ? (
-          "no item"
-        ) : (
-          <>
-            {formatNumber(roundTo(price.amount, 10))}
-            <br />
-            <span className="soft">
-              {formatNumber(ends.low)}–{formatNumber(ends.high)}
-            </span>
-          </>
-        )}
-      </td>
-      <td className="num">{looTypicalError === null ? "" : formatPercent(looTypicalError, 2)}</td>
-      <td>
-        {reads.map((one) => (
-          <div key={`${one.key} ${one.label}`}>
-            {one.label}: {money(one.money)}{" "}
-            <span className="soft">
-              ({money(one.low95)} to {money(one.high95)}) per {one.stepWords}
-            </span>
-          </div>
-        ))}
-      </td>
-      <td>
-        {kind === "keep" ? (
-          <span className="soft">in use</span>
-        ) : (
-          <TextLink onPress={() => bench.changeModel(() => model)}>Use this</TextLink>
-        )}
-      </td>
-    </tr>
+    <>
+      <tr className={css.way}>
+        <th scope="row">{label}</th>
+        <td className="num">
+          {price === null || ends === null ? (
+            "no item"
+          ) : (
+            <>
+              {formatNumber(roundTo(price.amount, 10))}
+              <br />
+              <span className="soft">
+                {formatNumber(ends.low)}–{formatNumber(ends.high)}
+              </span>
+            </>
+          )}
+        </td>
+        <td className="num">{looTypicalError === null ? "" : formatPercent(looTypicalError, 2)}</td>
+        <td>
+          {kind === "keep" ? (
+            <span className="soft">in use</span>
+          ) : (
+            <TextLink onPress={() => bench.changeModel(() => model)}>Use this</TextLink>
+          )}
+        </td>
+      </tr>
+      <tr className={css.reads}>
+        <td colSpan={4}>
+          {reads.map((one) => (
+            <div key={`${one.key} ${one.label}`}>
+              {one.label}: {money(one.money)}{" "}
+              <span className="soft">
+                ({money(one.low95)} to {money(one.high95)}) per {one.stepWords}
+              </span>
+            </div>
+          ))}
+        </td>
+      </tr>
+    </>
   );
 }
 
