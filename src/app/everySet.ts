@@ -41,14 +41,16 @@ export function everySet(
 ): RequestOutput<"everySet"> {
   const { classId, model, subject, rule } = input;
   if (subject === null) throw noSubject();
+  const pins = { alwaysIn: input.alwaysIn ?? [], alwaysOut: input.alwaysOut ?? [] };
+  if (pins.alwaysIn.some((key) => pins.alwaysOut.includes(key))) throw heldBothWays();
   const assetClass = ports.store.assetClasses.get(classId);
-  const question = JSON.stringify([classId, assetClass.dataVersion, assetClass.currencyCode, model, subject]);
+  const question = JSON.stringify([classId, assetClass.dataVersion, assetClass.currencyCode, model, subject, pins]);
   if (sets.last?.question !== question) {
     const asked = { assetClass, model, subject, levels: [] };
     const { sales, prepared } = memory.recall(assetClass, asked, () => ports.store.sales.readColumns(classId));
     const computed = fitInUse({ ...asked, sales }, prepared);
     const { fit, row, reference } = computed;
-    const looked = lookAtSets({ reference, fit, row, currencyCode: assetClass.currencyCode });
+    const looked = lookAtSets({ reference, fit, row, currencyCode: assetClass.currencyCode, pins });
     sets.last = { question, looked, shares: sharesOrWhy(computed, assetClass.currencyCode) };
   }
   return everySetOf(sets.last.looked, sets.last.shares, model, rule);
@@ -61,6 +63,16 @@ function noSubject(): AppError {
     what: "No item is described yet, so no set of attributes can price it.",
     where: "Every attribute set",
     whatToDo: "Give at least one of its attributes.",
+  });
+}
+
+function heldBothWays(): AppError {
+  return new AppError({
+    family: "request",
+    code: "held-both-ways",
+    what: "An attribute cannot be held in every set and out of every set at once.",
+    where: "Every attribute set",
+    whatToDo: "Hold it in, hold it out, or leave it free.",
   });
 }
 
@@ -134,6 +146,12 @@ function cautionsOf({ estimator = { kind: "leastSquares" } }: PriceModel, { sets
     cautions.push(
       `All sets are fitted at ${kept} that the model in use was found with; by itself a set would be given its own, and its price would differ a little.`,
     );
+  }
+  const isInUse = ({ key }: { readonly key: string }): boolean => sets.fit.groups.some((group) => group.key === key);
+  const otherwise = [...sets.heldIn.filter((group) => !isInUse(group)), ...sets.heldOut.filter(isInUse)];
+  if (otherwise.length > 0) {
+    const names = listWords(otherwise.map(({ label }) => lowerStart(label)));
+    cautions.push(`The set in use has ${names} the other way; marked as in use is the same set with what is held.`);
   }
   const whole = new Map(sets.fit.design.groups.map(({ key, columns }) => [key, columns.length]));
   const cutShort = [...sets.groups, ...sets.alwaysIn].filter(({ key, columns }) => columns.length < whole.get(key)!);

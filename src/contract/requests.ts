@@ -263,7 +263,15 @@ export const requestInputs = {
     level: z.number().gt(0).lt(1),
   }),
   health: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable() }),
-  everySet: z.object({ classId: id, model: priceModelInput, subject: subjectInput.nullable(), rule: defensibleRule }),
+  everySet: z.object({
+    classId: id,
+    model: priceModelInput,
+    subject: subjectInput.nullable(),
+    rule: defensibleRule,
+    /** Attributes held in every set, or out of every set. */
+    alwaysIn: z.array(z.string()).max(200).optional(),
+    alwaysOut: z.array(z.string()).max(200).optional(),
+  }),
   priceLot: z.object({ classId: id, model: priceModelInput, subjects: z.array(subjectInput).min(1).max(500), levels }),
   waysOn: z.object({
     classId: id,

@@ -98,6 +98,9 @@ export interface AttributeSets {
   readonly alwaysIn: readonly { readonly key: string; readonly label: string }[];
   /** Those of `alwaysIn` that the fit can least do without, where more than fifteen could be in or out. */
   readonly pinned: readonly { readonly key: string; readonly label: string }[];
+  /** Held in every set, or out of every set, by wish; absent: nothing is. */
+  readonly heldIn?: readonly { readonly key: string; readonly label: string }[];
+  readonly heldOut?: readonly { readonly key: string; readonly label: string }[];
   /** In no set, because the subject's value is not known. */
   readonly notKnown: readonly { readonly key: string; readonly label: string }[];
   readonly sales: number;
@@ -193,15 +196,22 @@ export function hasAttribute(set: number, g: number): boolean {
  * any goes, else it would come back in place of one of them; what is not known for the item stays as it was.
  */
 export function leftOutFor(
-  { attributes, alwaysIn, notKnown }: Pick<AttributeSets, "attributes" | "alwaysIn" | "notKnown">,
+  {
+    attributes,
+    alwaysIn,
+    notKnown,
+    heldOut = [],
+  }: Pick<AttributeSets, "attributes" | "alwaysIn" | "notKnown" | "heldOut">,
   set: number,
   model: { readonly attributes: readonly { readonly key: string }[]; readonly leftOut: readonly string[] },
 ): string[] {
   const out = attributes.flatMap(({ key }, g) => (hasAttribute(set, g) ? [] : [key]));
-  const looked = new Set([...attributes, ...alwaysIn, ...notKnown].map(({ key }) => key));
+  const held = heldOut.map(({ key }) => key);
+  const looked = new Set([...attributes, ...alwaysIn, ...notKnown, ...heldOut].map(({ key }) => key));
   const repeating = model.attributes.map(({ key }) => key).filter((key) => !looked.has(key));
   const stay = model.leftOut.filter((key) => notKnown.some((one) => one.key === key) || repeating.includes(key));
-  return [...new Set([...stay, ...out, ...(out.length === 0 ? [] : repeating)])];
+  const fewer = out.length + held.length > 0;
+  return [...new Set([...stay, ...held, ...out, ...(fewer ? repeating : [])])];
 }
 
 const NAMED = 3;

@@ -74,6 +74,8 @@ export function judgeSets(looked: LookedAtSets, rule: DefensibleRule = USUAL_RUL
     attributes: named(groups),
     alwaysIn: named(alwaysIn),
     pinned: named(sets.pinned),
+    heldIn: named(sets.heldIn),
+    heldOut: named(sets.heldOut),
     notKnown: named(notKnown),
     sales: fit.design.n,
     figures: figuresOf(sets, prices, error),

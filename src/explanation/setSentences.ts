@@ -23,12 +23,14 @@ const LITTLE_DOUBT = 0.1;
 
 /** `offered`: sets that there are; `untested`: those without an error out of sample. */
 export function setSentences(found: Found, offered: number, untested: number, currencyCode: string): Words {
-  const { alwaysIn, pinned, price, defensible } = found;
+  const { alwaysIn, pinned, heldIn = [], price, defensible } = found;
   const counted = countedWords(found, offered);
   const headline = price === null ? counted : headlineOf(found, currencyCode);
   const turns = turnsOf(found, offered);
   const doubt = doubtOf(found);
-  const others = alwaysIn.filter(({ key }) => !pinned.some((one) => one.key === key)).map(({ label }) => label);
+  const named = new Set([...pinned, ...heldIn].map(({ key }) => key));
+  const others = alwaysIn.filter(({ key }) => !named.has(key)).map(({ label }) => label);
+  const held = heldWords(found);
   const cannot = `${formatNumber(untested)} of them cannot be tested so: without some sale or tenth a coefficient is not determined.`;
   const sentences = [
     counted,
@@ -36,10 +38,21 @@ export function setSentences(found: Found, offered: number, untested: number, cu
     ...(price === null ? [] : [headline]),
     ...(defensible.length > 1 ? [turns] : []),
     ...(doubt === null ? [] : [doubt]),
+    ...(held === null ? [] : [held]),
     ...(pinned.length === 0 ? [] : [pinnedWords(found)]),
     ...(others.length === 0 ? [] : [`In every set: ${listWords(others)}.`]),
   ];
   return { headline, turns, doubt, sentences };
+}
+
+/** "Held in every set by wish: hours; out of every set: age." */
+function heldWords({ heldIn = [], heldOut = [] }: Found): string | null {
+  const names = (some: Found["attributes"]): string => listWords(some.map(({ label }) => lowerStart(label)));
+  const parts = [
+    ...(heldIn.length === 0 ? [] : [`in every set by wish: ${names(heldIn)}`]),
+    ...(heldOut.length === 0 ? [] : [`out of every set by wish: ${names(heldOut)}`]),
+  ];
+  return parts.length === 0 ? null : `Held ${parts.join("; ")}.`;
 }
 
 function pinnedWords({ pinned, attributes }: Found): string {

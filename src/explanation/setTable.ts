@@ -16,6 +16,9 @@ export interface SetTable {
   readonly alwaysIn: readonly AttributeGroup[];
   /** Those of alwaysIn that are there because no more than fifteen can be in or out. */
   readonly pinned: readonly AttributeGroup[];
+  /** Held in every set, or out of every set, by wish. */
+  readonly heldIn: readonly AttributeGroup[];
+  readonly heldOut: readonly AttributeGroup[];
   readonly notKnown: readonly AttributeGroup[];
   readonly table: SubsetTable;
   /** The set of the fit in use. */
@@ -28,23 +31,35 @@ export interface SetTableInput {
   /** The fit in use: some of these groups. */
   readonly fit: Fit;
   readonly row: SubjectRow | null;
+  /** Keys that are in every set, or in none; the others are free. */
+  readonly pins?: Pins;
 }
+
+export interface Pins {
+  readonly alwaysIn: readonly string[];
+  readonly alwaysOut: readonly string[];
+}
+
+const NO_PINS: Pins = { alwaysIn: [], alwaysOut: [] };
 
 const FOLDS = 10;
 /** Attributes that can be in or out: 32,768 sets. */
 const MOST_FREE = 15;
 
 /** `coefficients`: whether those of every set are kept in the table. */
-export function buildSetTable({ reference, fit, row }: SetTableInput, coefficients = true): SetTable {
+export function buildSetTable({ reference, fit, row, pins = NO_PINS }: SetTableInput, coefficients = true): SetTable {
   const { design, rule } = fit;
   const values: Column[] = design.columns.map((column) => column.values);
   const moments = accumulateMoments([...values, design.response], { weights: rule.weights ?? undefined });
   const isKnown = ({ key, columns }: AttributeGroup): boolean =>
     row === null || (!row.notKnown.includes(key) && columns.every((j) => Number.isFinite(row.x[j]!)));
-  const known = reference.filter(isKnown);
+  const isHeld = (keys: readonly string[]) => (group: AttributeGroup) => !group.isMarket && keys.includes(group.key);
+  const known = reference.filter((group) => isKnown(group) && !isHeld(pins.alwaysOut)(group));
+  const heldIn = known.filter(isHeld(pins.alwaysIn));
+  const isGiven = (group: AttributeGroup): boolean => group.isMarket || heldIn.includes(group);
   const free = mostInDoubt(
-    known.filter((group) => !group.isMarket),
-    known.filter((group) => group.isMarket),
+    known.filter((group) => !isGiven(group)),
+    known.filter(isGiven),
     moments,
     rule.penalty,
   );
@@ -61,7 +76,9 @@ export function buildSetTable({ reference, fit, row }: SetTableInput, coefficien
     moments,
     groups: free,
     alwaysIn,
-    pinned: alwaysIn.filter((group) => !group.isMarket),
+    pinned: alwaysIn.filter((group) => !isGiven(group)),
+    heldIn,
+    heldOut: reference.filter((group) => isKnown(group) && isHeld(pins.alwaysOut)(group)),
     notKnown: reference.filter((group) => !isKnown(group)),
     table,
     current: free.reduce((set, group, g) => set + (isInUse(group) ? 2 ** g : 0), 0),
@@ -71,13 +88,13 @@ export function buildSetTable({ reference, fit, row }: SetTableInput, coefficien
 /** Of more than fifteen groups those that can go at the least loss of fit from the whole set, one by one, in their own order. */
 function mostInDoubt(
   groups: readonly AttributeGroup[],
-  market: readonly AttributeGroup[],
+  given: readonly AttributeGroup[],
   moments: Moments,
   penalty: Float64Array | null,
 ): readonly AttributeGroup[] {
   if (groups.length <= MOST_FREE) return groups;
   const lossOf = (group: AttributeGroup): number => {
-    const rest = [...market, ...groups].filter((other) => other !== group);
+    const rest = [...given, ...groups].filter((other) => other !== group);
     const alwaysIn = rest.flatMap(({ columns }) => [...columns]);
     return allSubsets(moments, [], { alwaysIn, penalty }).residualSums[0]!;
   };

@@ -19,6 +19,7 @@ export function leftOutKeys(
   names: readonly string[],
   model: PriceModel,
   attributes: readonly NamedAttribute[],
+  option = "--leave-out",
 ): string[] {
   return names.map((name) => {
     const found = attributes.find(
@@ -26,13 +27,14 @@ export function leftOutKeys(
     );
     if (found !== undefined && model.attributes.some(({ key }) => key === found.key)) return found.key;
     const known = model.attributes.map(({ key }) => key).join(", ");
-    throw refuse("unknown-attribute", `The model has no attribute "${name}".`, "--leave-out", `Use some of: ${known}.`);
+    throw refuse("unknown-attribute", `The model has no attribute "${name}".`, option, `Use some of: ${known}.`);
   });
 }
 
 export interface Chosen {
   readonly input: AppraiseInput;
   readonly edition: Edition | null;
+  readonly named: readonly NamedAttribute[];
   readonly file: Record<string, unknown>;
 }
 
@@ -50,6 +52,7 @@ export async function chosenAppraisal(ask: Ask, classId: number, given: Given): 
   return {
     input: { classId, model: plainModel({ ...model, leftOut }), subject, levels: levelsOf(given) },
     edition,
+    named,
     file,
   };
 }

@@ -64,3 +64,26 @@ describe("sets", () => {
     expect(err).toMatch(/could not be read/);
   });
 });
+
+test("holds attributes in every set and out of every set; sets of the rest are priced as before", async () => {
+  const read = async (...more: string[]) => JSON.parse((await run("sets", ...common, ...more, "--json")).out);
+  const all = await read();
+  const held = await read("--always-in", "hours", "--always-out", "age");
+  expect(held.attributes).toHaveLength(all.attributes.length - 2);
+  expect(held.marks.price).toHaveLength(2 ** held.attributes.length);
+  expect(held.sentences.join(" ")).toContain("Held in every set by wish: hours; out of every set by wish: age.");
+  const keys: string[] = all.attributes.map(({ key }: { key: string }) => key);
+  const wider = (set: number): number =>
+    held.attributes.reduce(
+      (sum: number, { key }: { key: string }, g: number) => sum + (((set >> g) & 1) === 1 ? 2 ** keys.indexOf(key) : 0),
+      2 ** keys.indexOf("hours"),
+    );
+  held.marks.price.forEach((price: number | null, set: number) => {
+    const before = all.marks.price[wider(set)];
+    if (price === null || before === null) expect(price).toBe(before);
+    else expect(Math.abs(price / before - 1)).toBeLessThan(1e-9);
+  });
+  const both = await run("sets", ...common, "--always-in", "age", "--always-out", "age");
+  expect(both.code).toBe(1);
+  expect(both.err).toMatch(/at once/);
+});

@@ -9,18 +9,22 @@ import {
   roundOutward,
   roundTo,
 } from "../../../domain/format.ts";
-import { chosenAppraisal } from "../chosenModel.ts";
+import type { PriceModel } from "../../../domain/priceModel.ts";
+import { chosenAppraisal, leftOutKeys } from "../chosenModel.ts";
 import { table } from "../table.ts";
-import { type Given, optional, refuse, required, type Verb, type VerbInput, type VerbOutput } from "../verb.ts";
+import { type Given, listOf, optional, refuse, required, type Verb, type VerbInput, type VerbOutput } from "../verb.ts";
 import { requireClass, withStore } from "../withStore.ts";
 
 async function run({ given }: VerbInput): Promise<VerbOutput> {
   const rule = { kind: "error" as const, share: shareOf(given) };
   return withStore({ storePath: required(given, "store"), create: false }, async (ask) => {
     const classId = await requireClass(ask, required(given, "class"));
-    const { input } = await chosenAppraisal(ask, classId, given);
+    const { input, named } = await chosenAppraisal(ask, classId, given);
     const { model, subject } = input;
-    const found = await ask("everySet", { classId, model, subject, rule } as RequestInput<"everySet">);
+    const held = (option: "always-in" | "always-out"): string[] =>
+      leftOutKeys(listOf(given, option), input.model as PriceModel, named, `--${option}`);
+    const pins = { alwaysIn: held("always-in"), alwaysOut: held("always-out") };
+    const found = await ask("everySet", { classId, model, subject, rule, ...pins } as RequestInput<"everySet">);
     return { text: setsText(found), json: { ok: true, ...found } };
   });
 }
@@ -144,13 +148,19 @@ function sharesText({ shares, sharesRefused, response, currencyCode }: EverySet)
 export const setsVerb: Verb = {
   name: "sets",
   does: "prices one item with every attribute set, and says how far price and coefficients depend on the choice",
-  usage: ["sets --store S --class C --subject S.json", "     [--effective-date D] [--leave-out a,…] [--within 10]"],
+  usage: [
+    "sets --store S --class C --subject S.json",
+    "     [--effective-date D] [--leave-out a,…] [--within 10]",
+    "     [--always-in a,…] [--always-out b,…]",
+  ],
   meanings: [
     ["--store S", "the store's file"],
     ["--class C", "asset class by name or number"],
     ["--subject S.json", 'the item: { "attribute": value, … }, null or absent where it is not known'],
     ["--effective-date D", "the day the price speaks of, YYYY-MM-DD; else the subject's own, else today"],
     ["--leave-out a,…", "attributes that are not in the set in use; sets with them are looked at too"],
+    ["--always-in a,…", "attributes that are held in every set"],
+    ["--always-out b,…", "attributes that are held out of every set"],
     ["--within 10", "sets count whose error is within so many percent of the best"],
   ],
   options: {
@@ -159,6 +169,8 @@ export const setsVerb: Verb = {
     subject: { type: "string" },
     "effective-date": { type: "string" },
     "leave-out": { type: "string" },
+    "always-in": { type: "string" },
+    "always-out": { type: "string" },
     within: { type: "string" },
   },
   places: 0,
