@@ -4,6 +4,7 @@ import { createHandlers } from "../../../src/app/handlers.ts";
 import type { EverySet } from "../../../src/domain/attributeSets.ts";
 import { formatMoney, formatNumber, formatPercent, formatSigned, roundTo } from "../../../src/domain/format.ts";
 import type { Subject } from "../../../src/domain/subject.ts";
+import { HoldChoices } from "../../../src/screens/appraise/everySet/HoldChoices.tsx";
 import { SetsOutcome } from "../../../src/screens/appraise/everySet/SetsOutcome.tsx";
 import { SetsPane } from "../../../src/screens/appraise/everySet/SetsPane.tsx";
 import { countWithin, fineStepOf } from "../../../src/screens/appraise/everySet/setWords.ts";
@@ -22,7 +23,17 @@ let left: string;
 
 function stateOf(answer: EverySet | null, over: Partial<EverySetState> = {}): EverySetState {
   const nothing = () => undefined;
-  return { found: answer, error: null, isAwaited: false, share: 0.1, setShare: nothing, choose: nothing, ...over };
+  return {
+    found: answer,
+    error: null,
+    isAwaited: false,
+    share: 0.1,
+    setShare: nothing,
+    holds: new Map(),
+    hold: nothing,
+    choose: nothing,
+    ...over,
+  };
 }
 
 beforeAll(async () => {
@@ -110,6 +121,21 @@ describe("every attribute set on screen", () => {
     } as const;
     expect(wordsOf(draw(bench, <SetsOutcome bench={bench} state={stateOf(null, { error })} />))).toContain(
       "Too few sales.",
+    );
+  });
+});
+
+describe("attributes held in or out", () => {
+  test("are three-way choices for the keyboard, and the sentence says which are held and how many sets are left", async () => {
+    const holds = new Map([["hours", "in"] as const, ["built", "out"] as const]);
+    const named = (key: string) => found.attributes.filter((one) => one.key === key);
+    const rest = found.attributes.filter(({ key }) => !holds.has(key as "hours"));
+    const held = { ...found, attributes: rest, heldIn: named("hours"), heldOut: named("built") };
+    const drawn = draw(bench, <HoldChoices state={stateOf(held, { holds })} found={held} />);
+    expect(drawn.match(/role="radiogroup"/g)).toHaveLength(found.attributes.length);
+    expect(drawn.match(/aria-checked="true"[^>]*title="In every set"/g)).toHaveLength(1);
+    expect(wordsOf(drawn)).toContain(
+      `hours in, age out; ${formatNumber(2 ** rest.length)} sets of the other ${rest.length}`,
     );
   });
 });

@@ -71,10 +71,14 @@ function Found({ bench, state, found }: FoundProps) {
 }
 
 /** The set of the saved edition where it differs from the one in use. */
-function editionSet({ attributes, current }: EverySet, edition: Edition | null): { set: number; name: string } | null {
+function editionSet(
+  { attributes, heldIn = [], heldOut = [], current }: EverySet,
+  edition: Edition | null,
+): { set: number; name: string } | null {
   if (edition === null) return null;
   const { leftOut } = edition.model;
   const has = (key: string) => edition.model.attributes.some((one) => one.key === key) && !leftOut.includes(key);
+  if (heldIn.some(({ key }) => !has(key)) || heldOut.some(({ key }) => has(key))) return null;
   const set = attributes.reduce((sum, { key }, g) => sum + (key.includes("*") || has(key) ? 2 ** g : 0), 0);
   return set === current ? null : { set, name: `edition ${edition.number}` };
 }

@@ -4,6 +4,7 @@ import { hasAttribute, setName } from "../../../domain/attributeSets.ts";
 import { formatNumber, formatPercent, formatSigned, listWords, lowerStart, roundTo } from "../../../domain/format.ts";
 import { Busy, SectionHeading } from "../../parts/index.ts";
 import css from "./everySet.module.css";
+import { HoldChoices } from "./HoldChoices.tsx";
 import { amountStep, fineStepOf } from "./setWords.ts";
 import type { EverySetState } from "./useEverySet.ts";
 
@@ -13,6 +14,7 @@ export function SetsPane({ state }: { readonly state: EverySetState }) {
   return (
     <div className={css.pane} aria-busy={state.isAwaited}>
       <WhichCount state={state} found={found} />
+      <HoldChoices state={state} found={found} />
       <HeavySets state={state} found={found} />
       <Switches found={found} />
     </div>
@@ -49,14 +51,15 @@ function WhichCount({ state, found }: { readonly state: EverySetState; readonly 
   );
 }
 
-function countWords({ attributes, sales, notKnown, alwaysIn, errorKind }: EverySet): string {
+function countWords({ attributes, sales, notKnown, alwaysIn, heldOut = [], errorKind }: EverySet): string {
   const k = attributes.length;
   const each = `${formatNumber(k)} attributes known for this item can be in or out: ${formatNumber(2 ** k)} sets, all on the same ${formatNumber(sales)} sales.`;
   const names = (some: EverySet["alwaysIn"]) => listWords(some.map(({ label }) => lowerStart(label)));
   const always = alwaysIn.length === 0 ? "" : ` In each: ${names(alwaysIn)}.`;
+  const held = heldOut.length === 0 ? "" : ` In none, by wish: ${names(heldOut)}.`;
   const never = notKnown.length === 0 ? "" : ` Sets with ${names(notKnown)} cannot price it.`;
   const how = errorKind === "leave-one-out" ? "" : " Errors: each tenth of the sales priced by the rest.";
-  return `${each}${always}${never}${how}`;
+  return `${each}${always}${held}${never}${how}`;
 }
 
 const SHOWN = 8;
