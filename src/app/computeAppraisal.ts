@@ -13,6 +13,7 @@ import { selectEvidence } from "../evidence/selectEvidence.ts";
 import { carryOver } from "../explanation/carryOver.ts";
 import { nearSales } from "../explanation/nearSales.ts";
 import { pull, pullWeights } from "../explanation/pull.ts";
+import { summariseSets } from "../explanation/setSummary.ts";
 import { accountForFit, errorsFor } from "../hedonic/accountForFit.ts";
 import { buildDesign } from "../hedonic/buildDesign.ts";
 import type { FitErrors } from "../hedonic/errorRules/errors.ts";
@@ -39,6 +40,8 @@ export interface AppraisalInput {
   readonly levels: readonly number[];
   /** Bounds the evidence where there is no subject; a subject brings its own effective date. */
   readonly effectiveOn?: Day;
+  /** Also every attribute set in brief, as a sheet prints it. */
+  readonly withSets?: boolean;
 }
 
 export interface ComputedAppraisal {
@@ -84,7 +87,21 @@ export function computeAppraisal(input: AppraisalInput, prepared = prepareEviden
   const report = reportModel({ fit: short, model, resolved, leftOut, reference: long ?? short, errors, fitted });
   const ledger = ledgerOf(long, short, report, assetClass.currencyCode);
   const priced =
-    subject === null || row === null ? null : pricePart(input, short, long, row, subject, errors, estimated);
+    subject === null || row === null
+      ? null
+      : {
+          ...pricePart(input, short, long, row, subject, errors, estimated),
+          ...(input.withSets
+            ? {
+                sets: summariseSets({
+                  reference: resolved.referenceGroups,
+                  fit: short,
+                  row,
+                  currencyCode: assetClass.currencyCode,
+                }),
+              }
+            : {}),
+        };
   const { name, itemWord, currencyCode, invented } = assetClass;
   const found = { assetClass: { name, itemWord, currencyCode, invented }, evidence: account, report, ledger, priced };
   return {
@@ -235,10 +252,10 @@ function pricePart(
  * The same from a sheet's own evidence: its rows are all evidence already. What the rows cannot tell (how many sales were
  * read and why others were out) is taken as stated; everything else is worked out again.
  */
-export function recomputeAppraisal(input: AppraisalInput, stated: EvidenceAccount): Appraisal {
-  const { appraisal } = computeAppraisal(input);
+export function recomputeAppraisal(input: AppraisalInput, stated: Appraisal): Appraisal {
+  const { appraisal } = computeAppraisal({ ...input, withSets: stated.priced?.sets !== undefined });
   const { evidence } = appraisal;
-  const account = { ...evidence, read: stated.read, out: stated.out };
+  const account = { ...evidence, read: stated.evidence.read, out: stated.evidence.out };
   const found = { ...appraisal, evidence: account };
   return { ...found, caveats: writeCaveats(found) };
 }

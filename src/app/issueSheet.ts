@@ -18,7 +18,11 @@ function prepare(ports: Ports, classId: number, request: SheetRequest) {
   const assetClass = ports.store.assetClasses.get(classId);
   const sales = ports.store.sales.readColumns(classId);
   const { model, subject, levels } = request;
-  return { assetClass, sales, computed: computeAppraisal({ assetClass, sales, model, subject, levels }) };
+  return {
+    assetClass,
+    sales,
+    computed: computeAppraisal({ assetClass, sales, model, subject, levels, withSets: true }),
+  };
 }
 
 /** A draft: no number, nothing stored, nothing asked of the headline but a price. */

@@ -46,23 +46,44 @@ function waysOf(input: AppraisalInput, prepared: PreparedEvidence, { members }: 
   const offered = members.filter(({ key }) => model.attributes.some((one) => one.key === key));
   const blended = keys.flatMap((key) => assetClass.attributes.filter((one) => one.key === key));
   const keep: WayOn = { kind: "keep", label: "Keep them all", model, refused: null, ...figuresOf(now, keys) };
-  const without = offered.map(({ key, label }) => {
-    const changed = { ...model, leftOut: [...model.leftOut, key] };
-    return tried("leaveOut", `Leave out ${lowerStart(label)}`, changed, keys, () =>
+  const { dependencies } = now.report;
+  const without = offered.map((one) => {
+    const gone = [one, ...copiesOf(dependencies, [one.key])];
+    const changed = { ...model, leftOut: [...model.leftOut, ...gone.map(({ key }) => key)] };
+    return tried("leaveOut", `Leave out ${namesOf(gone)}`, changed, keys, () =>
       computeAppraisal({ ...input, model: changed }, prepared),
     );
   });
-  return [keep, ...without, ...blendsOf(input, blended, keys)];
+  return [keep, ...without, ...blendsOf(input, blended, copiesOf(dependencies, keys), keys.length)];
 }
 
-function blendsOf(input: AppraisalInput, attributes: readonly Attribute[], keys: readonly string[]): WayOn[] {
-  const canBlend =
-    attributes.length === keys.length && attributes.every(({ kind }) => kind === "number" || kind === "built");
+/** What would say the same again in the place of attributes that are no longer there: scaled copies that exact dependencies name. */
+function copiesOf(dependencies: readonly DependencyNotice[], keys: readonly string[]): DependencyNotice["choices"] {
+  const copies = dependencies.flatMap(({ choices }) =>
+    choices.length === 2 && choices.some(({ key }) => keys.includes(key)) ? choices : [],
+  );
+  return copies.filter(({ key }, at) => !keys.includes(key) && copies.findIndex((one) => one.key === key) === at);
+}
+
+function namesOf(attributes: readonly { readonly label: string }[]): string {
+  return listWords(attributes.map(({ label }) => lowerStart(label)));
+}
+
+function blendsOf(
+  input: AppraisalInput,
+  attributes: readonly Attribute[],
+  copies: DependencyNotice["choices"],
+  count: number,
+): WayOn[] {
+  const canBlend = attributes.length === count && attributes.every(({ kind }) => kind === "number" || kind === "built");
   if (!canBlend) return [];
   return (["equal", "firstComponent"] as const).map((weighting) => {
     const blend = blendOf(attributes, weighting);
-    const changed: PriceModel = { ...input.model, blends: [...(input.model.blends ?? []), blend] };
-    const label = weighting === "equal" ? "Blend them, equal weights" : "Blend them, first component";
+    const { blends = [], leftOut } = input.model;
+    const gone = copies.map(({ key }) => key);
+    const changed: PriceModel = { ...input.model, blends: [...blends, blend], leftOut: [...leftOut, ...gone] };
+    const how = weighting === "equal" ? "Blend them, equal weights" : "Blend them, first component";
+    const label = copies.length === 0 ? how : `${how}, without ${namesOf(copies)}`;
     return tried("blend", label, changed, [blend.key], () => computeAppraisal({ ...input, model: changed }));
   });
 }
@@ -138,7 +159,7 @@ function resolvedWords(
   const meant =
     staying.length === 0 || resolvedBy === null
       ? ""
-      : `What ${listWords(staying)} ${staying.length === 1 ? "reads" : "read"} speaks for ${lowerStart(resolvedBy.label)} too; every other coefficient is the same whichever is left out.`;
+      : `What ${listWords(staying)} ${staying.length === 1 ? "reads" : "read"} speaks for ${lowerStart(resolvedBy.label)} too.`;
   if (apart === null) return meant;
   if (apart > SAME)
     return `Leaving out a whole attribute takes more than the repetition away here: the prices run from ${formatMoney(Math.min(...prices), currencyCode)} to ${formatMoney(Math.max(...prices), currencyCode)}.`;

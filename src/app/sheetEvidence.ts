@@ -101,6 +101,6 @@ export function recomputeFromSheet(evidence: SheetEvidence): Appraisal {
       subject: request.subject,
       levels: request.levels,
     },
-    evidence.appraisal.evidence,
+    evidence.appraisal,
   );
 }

@@ -5,6 +5,7 @@
  * "Reads" in ln models: coefficients are in ln; money per step is read at the average sale, P̄(e^(b·step) − 1).
  */
 import type { AttributeKind } from "./attribute.ts";
+import type { SetSummary } from "./attributeSets.ts";
 import type { Day } from "./day.ts";
 import type { AttributeForm, PriceModel, RangeKind, ResponseForm } from "./priceModel.ts";
 import type { Subject } from "./subject.ts";
@@ -373,6 +374,8 @@ export interface PricePart {
   readonly reach: Reach;
   readonly notKnown: readonly NotKnownEffect[];
   readonly notKnowing?: NotKnowing | null;
+  /** Worked out for a sheet; null where there is no attribute to be in or out. */
+  readonly sets?: SetSummary | null;
 }
 
 export interface Caveat {

@@ -135,6 +135,22 @@ export interface AttributeSets {
   readonly sentences: readonly string[];
 }
 
+/** What a sheet says of every attribute set: prices in words, and what switching each attribute alone would do. */
+export interface SetSummary {
+  readonly attributes: number;
+  readonly defensible: number;
+  readonly rule: DefensibleRule;
+  readonly step: number;
+  readonly price: Span | null;
+  readonly averaged: Omit<AveragedPrice, "weights"> | null;
+  readonly stacked: Omit<StackedPrice, "weights"> | null;
+  /** Money that the price would read with this attribute alone put in or left out; null where no such set can be fitted. */
+  readonly switched: readonly { readonly label: string; readonly isIn: boolean; readonly price: number | null }[];
+  readonly headline: string;
+  /** Everything else there is to say. */
+  readonly sentences: readonly string[];
+}
+
 /** One attribute's shares; both kinds add up over attributes. */
 export interface AttributeShare {
   readonly key: string;

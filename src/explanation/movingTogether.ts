@@ -73,7 +73,7 @@ function groupOf(
   return { members, conditionIndex, sentence };
 }
 
-/** h₀ of the item; the average over the sales is p/n at equal weights. */
+/** h₀ of the item; the average of w·h over the sales is p/n. */
 export function leverageOf({ solution, columns }: Fit, { x }: SubjectRow): number {
   const k = columns.length;
   const d = columns.map((index, j) => x[index]! - solution.means[j]!);
@@ -84,10 +84,10 @@ export function leverageOf({ solution, columns }: Fit, { x }: SubjectRow): numbe
 
 function priceWords(fit: Fit, row: SubjectRow): string {
   const own = leverageOf(fit, row);
-  const average = (fit.columns.length + 1) / fit.solution.weightSum;
+  const average = (fit.columns.length + 1) / fit.design.n;
   const adds = formatPercent(Math.sqrt(1 + own) - 1, 1);
   const ratio = formatNumber(own / average, 1);
   return own > FAR_TIMES * average
-    ? `The price suffers: this item lies ${ratio} × as far out as an average sale, and not knowing the coefficients exactly widens its range by ${adds}.`
-    : `The price does not suffer: this item lies ${ratio} × as far out as an average sale, and not knowing the coefficients exactly widens its range by ${adds} only.`;
+    ? `The price suffers: with ${ratio} × the leverage of an average sale, not knowing the coefficients exactly widens its range by ${adds}.`
+    : `The price does not suffer: with ${ratio} × the leverage of an average sale, not knowing the coefficients exactly widens its range by ${adds} only.`;
 }

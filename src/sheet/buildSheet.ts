@@ -18,6 +18,7 @@ import { firstPage } from "./parts/firstPage.ts";
 import { ledgerSection } from "./parts/ledger.ts";
 import { pullSection } from "./parts/pull.ts";
 import { reachSection } from "./parts/reach.ts";
+import { setsSection } from "./parts/sets.ts";
 import type { Sheet } from "./sheetContent.ts";
 
 /** Number of a sheet that has not been issued. */
@@ -49,6 +50,7 @@ export function buildSheet(evidence: SheetEvidence, missing: readonly string[] =
     sections: [
       builtUpSection(context),
       ledgerSection(context),
+      setsSection(context),
       evidenceSection(context),
       pullSection(context),
       reachSection(context),

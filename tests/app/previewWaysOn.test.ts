@@ -56,6 +56,28 @@ describe("what moves together in the demo class", () => {
     }
   });
 
+  test("takes with an attribute its copies, so that what is left is told more surely", async () => {
+    const [keep, ...others] = found.ways;
+    const keys = found.groups[0]!.members.map(({ key }) => key);
+    const copies = found.dependencies.flatMap(({ choices }) =>
+      choices.some(({ key }) => keys.includes(key))
+        ? choices.map(({ key }) => key).filter((key) => !keys.includes(key))
+        : [],
+    );
+    expect(copies.length).toBeGreaterThan(0);
+    const widthOf = ({ low95, high95 }: MovingReport["ways"][number]["reads"][number]): number => high95! - low95!;
+    for (const { kind, model: changed, reads } of others) {
+      const { report } = await appraised(changed);
+      const gone = kind === "leaveOut" ? changed.leftOut : [...keys, ...copies];
+      const without = changed.leftOut.filter((key) => !model.leftOut.includes(key));
+      expect(without.length).toBeGreaterThan(0);
+      expect(report.attributes.filter((key) => gone.includes(key))).toEqual([]);
+      for (const read of reads.filter(({ key }) => keys.includes(key))) {
+        expect(widthOf(read)).toBeLessThan(widthOf(keep!.reads.find(({ key }) => key === read.key)!));
+      }
+    }
+  });
+
   test("shows for each exact dependency that the price is the same whichever is left out", async () => {
     const { dependencies } = (await appraised(model)).report;
     expect(found.dependencies.map(({ equation }) => equation)).toEqual(dependencies.map(({ equation }) => equation));

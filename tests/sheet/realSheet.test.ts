@@ -90,6 +90,38 @@ describe("each demo class", () => {
     }
   });
 
+  test("says how far the price depends on the attributes included, in the figures of its sets", () => {
+    for (const { evidence } of sheets) {
+      const { sets, price } = evidence.appraisal.priced!;
+      const section = buildSheet(evidence).sections.find(({ heading }) => heading === "Had other attributes been in");
+      const [paragraphs] = section!.parts;
+      if (paragraphs?.kind !== "paragraphs") throw new Error("no words");
+      const words = paragraphs.items.map((item) =>
+        typeof item === "string" ? item : item.map(({ text }) => text).join(""),
+      );
+      expect(words).toEqual(expect.arrayContaining([...sets!.sentences]));
+      expect(sets!.price!.low).toBeLessThan(price.amount);
+      expect(sets!.price!.high).toBeGreaterThan(price.amount);
+      const most = sets!.switched.reduce((a, b) =>
+        Math.abs(b.price! - price.amount) > Math.abs(a.price! - price.amount) ? b : a,
+      );
+      const how = most.isIn ? "without" : "with";
+      expect(words.at(-1)).toContain(`${how} ${most.label.charAt(0).toLowerCase()}${most.label.slice(1)}`);
+    }
+  });
+
+  test("prices an item with one attribute switched as the model so changed does", async () => {
+    const { evidence } = sheets[0]!;
+    const { sets } = evidence.appraisal.priced!;
+    const labels = evidence.assetClass.attributes.map(({ label }) => label);
+    const switched = sets!.switched.find(({ isIn, label }) => isIn && labels.includes(label))!;
+    const { key } = evidence.assetClass.attributes.find(({ label }) => label === switched.label)!;
+    const { request } = evidence;
+    const model = { ...request.model, leftOut: [...request.model.leftOut, key] };
+    const without = recomputeFromSheet({ ...evidence, request: { ...request, model } });
+    expect(Math.abs(switched.price! / without.priced!.price.amount - 1)).toBeLessThan(1e-10);
+  });
+
   test("is fitted again from its sheet to the last bit", async () => {
     for (const { bytes } of sheets) {
       const report = await verify(bytes);
@@ -124,6 +156,16 @@ describe("a sheet rebuilt with a fresh digest", () => {
         bytesIntact: true,
       });
     }
+  });
+
+  test("with another price for a set of attributes is caught", async () => {
+    const { evidence } = sheets[0]!;
+    const priced = evidence.appraisal.priced!;
+    const switched = priced.sets!.switched.map((one, k) => (k === 1 ? { ...one, price: one.price! * 1.01 } : one));
+    const appraisal = { ...evidence.appraisal, priced: { ...priced, sets: { ...priced.sets!, switched } } };
+    const report = await verify(await renderSheetPdf({ ...evidence, appraisal }, FONTS));
+    expect(report).toMatchObject({ verdict: "altered", differentCount: 1 });
+    expect(report.figures.find(({ equal }) => !equal)!.name).toContain(switched[1]!.label);
   });
 
   test("with a caveat taken away is caught", async () => {
