@@ -5,6 +5,7 @@
 import { z } from "zod";
 import type { Appraisal, GlancedPrice } from "../domain/appraisal.ts";
 import type { AssetClass, AssetClassSummary } from "../domain/assetClass.ts";
+import type { AttributePair } from "../domain/attributePair.ts";
 import type { EverySet } from "../domain/attributeSets.ts";
 import type { Comparison } from "../domain/comparison.ts";
 import type {
@@ -273,6 +274,14 @@ export const requestInputs = {
     alwaysOut: z.array(z.string()).max(200).optional(),
   }),
   priceLot: z.object({ classId: id, model: priceModelInput, subjects: z.array(subjectInput).min(1).max(500), levels }),
+  /** How two attributes move together among the evidence. */
+  pairOf: z.object({
+    classId: id,
+    model: priceModelInput,
+    subject: subjectInput.nullable(),
+    a: z.string(),
+    b: z.string(),
+  }),
   waysOn: z.object({
     classId: id,
     model: priceModelInput,
@@ -362,6 +371,8 @@ export interface RequestOutputs {
   health: ModelHealth;
   everySet: EverySet;
   priceLot: PricedLot;
+  /** Null where there is no picture of the two. */
+  pairOf: AttributePair | null;
   /** What moves together, and every way on worked out before it is applied. */
   waysOn: MovingReport;
   saveEdition: Edition;
