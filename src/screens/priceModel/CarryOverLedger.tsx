@@ -2,6 +2,7 @@
 import { useMemo, useState } from "react";
 import type { Ledger, ModelReport } from "../../domain/appraisal.ts";
 import { formatMoney, formatNumber, formatSigned, lowerStart, roundTo } from "../../domain/format.ts";
+import type { PriceModel } from "../../domain/priceModel.ts";
 import {
   type BarScale,
   barAt,
@@ -13,11 +14,14 @@ import {
 } from "../charts/CarryOverBars.tsx";
 import { rowStep } from "../charts/figures.ts";
 import { useWidth } from "../charts/useWidth.ts";
-import { SectionHeading } from "../parts/index.ts";
+import { SectionHeading, TextLink } from "../parts/index.ts";
+import type { Workbench } from "../workbench/workbench.ts";
 import { type LedgerColumn, type PrintedRow, printLedger } from "./ledgerTable.ts";
+import { PairFigure, type PairKeys, usePair } from "./PairFigure.tsx";
 import css from "./PriceModelPlace.module.css";
 
 interface CarryOverLedgerProps {
+  readonly bench: Workbench;
   readonly ledger: Ledger;
   readonly report: ModelReport;
   readonly currencyCode: string;
@@ -29,7 +33,7 @@ const NUMBER_WIDTH = 76;
 /** In a narrower pane the range gives way; it stays on hover of what the row reads. */
 const NARROW = 640;
 
-export function CarryOverLedger({ ledger, report, currencyCode }: CarryOverLedgerProps) {
+export function CarryOverLedger({ bench, ledger, report, currencyCode }: CarryOverLedgerProps) {
   const { columns, rows } = useMemo(() => printLedger(ledger), [ledger]);
   const { box, width } = useWidth<HTMLDivElement>(900);
   const [chosenId, choose] = useState<string | null>(null);
@@ -41,6 +45,7 @@ export function CarryOverLedger({ ledger, report, currencyCode }: CarryOverLedge
     picture,
   );
   const chosen = rows.find((row) => row.id === chosenId) ?? hottest(rows);
+  const pair = usePair(bench, pairKeys(chosen));
   if (rows.length === 0) return null;
   return (
     <>
@@ -79,9 +84,14 @@ export function CarryOverLedger({ ledger, report, currencyCode }: CarryOverLedge
           {currencyCode}, 95&nbsp;% ranges: {chosen.rangeWords}.
         </p>
       )}
-      <LeftOutOwn ledger={ledger} currencyCode={currencyCode} />
+      {pair === null || chosen?.carriesFor == null ? null : <PairFigure pair={pair} />}
+      <LeftOutOwn bench={bench} ledger={ledger} currencyCode={currencyCode} />
     </>
   );
+}
+
+function pairKeys(row: PrintedRow | undefined): PairKeys | null {
+  return row === undefined || row.carriesFor === null ? null : { a: row.attribute, b: row.carriesFor };
 }
 
 function hottest(rows: readonly PrintedRow[]): PrintedRow | undefined {
@@ -224,8 +234,18 @@ function LedgerRowView({ row, columns, scale, currencyCode, hasRange, isChosen, 
   );
 }
 
+function putIn(model: PriceModel, key: string): PriceModel {
+  return { ...model, leftOut: model.leftOut.filter((one) => one !== key) };
+}
+
 /** What the left-out attributes say beside the whole reference set. */
-function LeftOutOwn({ ledger, currencyCode }: { ledger: Ledger; currencyCode: string }) {
+interface LeftOutOwnProps {
+  readonly bench: Workbench;
+  readonly ledger: Ledger;
+  readonly currencyCode: string;
+}
+
+function LeftOutOwn({ bench, ledger, currencyCode }: LeftOutOwnProps) {
   if (ledger.leftOutOwn.length === 0) {
     return <p className="small soft">Parts are rounded to add up.</p>;
   }
@@ -242,6 +262,12 @@ function LeftOutOwn({ ledger, currencyCode }: { ledger: Ledger; currencyCode: st
             {formatSigned(roundTo(one.money, step(one.money)))}
           </span>{" "}
           ({one.stepWords})
+          {one.key === ledger.leftOutOwn[index + 1]?.key ? null : (
+            <>
+              {" "}
+              <TextLink onPress={() => bench.changeModel((now) => putIn(now, one.key))}>Put it in</TextLink>
+            </>
+          )}
         </span>
       ))}
       . Parts are rounded to add up.

@@ -27,6 +27,7 @@ export function ModelOutcome({ bench }: { bench: Workbench }) {
       </div>
       <SecondLine bench={bench} appraisal={appraisal} />
       <CarryOverLedger
+        bench={bench}
         ledger={appraisal.ledger}
         report={appraisal.report}
         currencyCode={appraisal.assetClass.currencyCode}

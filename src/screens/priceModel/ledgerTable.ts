@@ -34,6 +34,9 @@ export interface PrintedRow {
   readonly sentence: string;
   /** Index of the carried column that moves this row most, when it moves it noticeably. */
   readonly mostCarried: number | null;
+  readonly attribute: string;
+  /** Key of the attribute that this row carries most for; null where it carries nothing. */
+  readonly carriesFor: string | null;
 }
 
 const MOST_COLUMNS = 2;
@@ -82,6 +85,11 @@ function rangesOf(row: LedgerRow, columns: readonly LedgerColumn[]): (string | n
   });
 }
 
+function carriesMost({ money }: LedgerRow): string | null {
+  const sorted = [...money.carried].sort((a, b) => Math.abs(b.amount) - Math.abs(a.amount));
+  return sorted[0]?.from ?? null;
+}
+
 export function printRow(row: LedgerRow, columns: readonly LedgerColumn[]): PrintedRow {
   const step = rowStep(row.money);
   const parts = [row.money.own, ...columns.map((column) => carriedFrom(row, column.keys))];
@@ -105,6 +113,8 @@ export function printRow(row: LedgerRow, columns: readonly LedgerColumn[]): Prin
     signTurned: row.signTurned,
     sentence: row.sentence,
     mostCarried: isNoticeable ? most : null,
+    attribute: row.attribute,
+    carriesFor: carriesMost(row),
   };
 }
 
