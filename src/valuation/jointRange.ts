@@ -46,7 +46,7 @@ export function jointRange(fit: Fit, items: readonly SubjectRow[], levels: reado
       sum: Math.exp(sum.centre),
       rangesOfSum: ranges(sum.centre, sum.spread, Math.exp),
       sentence:
-        "If distances from the model are normal, the range of the average holds the geometric mean of the prices as often as asked; the range of the sum is an approximation, as if a sum of prices had the shape that one price has.",
+        "If distances from the model are normal, the range of the average holds the geometric mean of the prices as often as asked; the sum is a median too, more than the single medians added, and its range an approximation, as if a sum of prices had the shape that one price has.",
     };
   }
   return {

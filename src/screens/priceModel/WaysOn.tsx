@@ -1,8 +1,9 @@
 /** The ways on where attributes move together: each worked out before it is applied, with a link that applies it. */
 import { useMemo } from "react";
 import type { RequestInput } from "../../contract/requests.ts";
-import { formatNumber, formatPercent, roundOutward, roundTo } from "../../domain/format.ts";
+import { formatNumber, formatPercent, roundingStep, roundOutward, roundTo } from "../../domain/format.ts";
 import type { MovingReport, WayOn } from "../../domain/movingTogether.ts";
+import { rowStep } from "../charts/figures.ts";
 import { TextLink } from "../parts/index.ts";
 import { isBlank } from "../workbench/blank.ts";
 import { useRead } from "../workbench/useTask.ts";
@@ -78,7 +79,8 @@ function Way({ way, bench }: { way: WayOn; bench: Workbench }) {
       </tr>
     );
   }
-  const ends = price === null ? null : roundOutward(price, 100);
+  const step = price === null ? 1 : roundingStep(price);
+  const ends = price === null ? null : roundOutward(price, step);
   return (
     <>
       <tr className={css.way}>
@@ -88,7 +90,7 @@ function Way({ way, bench }: { way: WayOn; bench: Workbench }) {
             "no item"
           ) : (
             <>
-              {formatNumber(roundTo(price.amount, 10))}
+              {formatNumber(roundTo(price.amount, step))}
               <br />
               <span className="soft">
                 {formatNumber(ends.low)}–{formatNumber(ends.high)}
@@ -109,9 +111,9 @@ function Way({ way, bench }: { way: WayOn; bench: Workbench }) {
         <td colSpan={4}>
           {reads.map((one) => (
             <div key={`${one.key} ${one.label}`}>
-              {one.label}: {money(one.money)}{" "}
+              {one.label}: {moneyTo(stepOf(one), one.money)}{" "}
               <span className="soft">
-                ({money(one.low95)} to {money(one.high95)}) per {one.stepWords}
+                ({moneyTo(stepOf(one), one.low95)} to {moneyTo(stepOf(one), one.high95)}) per {one.stepWords}
               </span>
             </div>
           ))}
@@ -121,6 +123,10 @@ function Way({ way, bench }: { way: WayOn; bench: Workbench }) {
   );
 }
 
-function money(amount: number | null): string {
-  return amount === null ? "not known" : formatNumber(roundTo(amount, 10));
+function stepOf({ money, low95, high95 }: WayOn["reads"][number]): number {
+  return rowStep({ own: Math.max(Math.abs(low95 ?? 0), Math.abs(high95 ?? 0)), coefficient: money ?? 0 });
+}
+
+function moneyTo(step: number, amount: number | null): string {
+  return amount === null ? "not known" : formatNumber(roundTo(amount, step));
 }

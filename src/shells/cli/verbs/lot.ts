@@ -19,7 +19,10 @@ async function run({ given }: VerbInput): Promise<VerbOutput> {
     const named = [...assetClass.attributes, { key: CHANNEL_KEY, label: "Channel", kind: "choice" as const }];
     const path = required(given, "subjects");
     const days = { given: optional(given, "effective-date"), today: localToday() };
-    const subjects = itemsIn(readJsonObject(path), path).map((item) => subjectOf(item, path, named, days));
+    const subjects = itemsIn(readJsonObject(path), path).map((item, at) => {
+      const subject = subjectOf(item, path, named, days);
+      return "title" in item ? subject : { ...subject, title: `Item ${at + 1}` };
+    });
     const names = listOf(given, "leave-out");
     const leftOut = names.length === 0 ? model.leftOut : leftOutKeys(names, model, named);
     const asked = { classId, model: plainModel({ ...model, leftOut }), subjects, levels: levelsOf(given) };
@@ -68,15 +71,15 @@ export const lotVerb: Verb = {
   does: "prices several items, each on its own and together, with the errors they share",
   usage: [
     "lot --store S --class C --subjects items.json",
-    "    [--effective-date D] [--leave-out a,…] [--levels 0.5,0.9]",
+    "    [--effective-date D] [--leave-out a,…] [--levels 50,80,90,95]",
   ],
   meanings: [
     ["--store S", "the store's file"],
     ["--class C", "asset class by name or number"],
     ["--subjects items.json", 'the items: { "items": [ { "attribute": value, … }, … ] }'],
     ["--effective-date D", "the day the prices speak of, YYYY-MM-DD; else the items' own, else today"],
-    ["--leave-out a,…", "attributes that are not in the set in use"],
-    ["--levels 0.5,0.9", "how sure the ranges are"],
+    ["--leave-out a,…", "attributes of the reference set that stay out of the model"],
+    ["--levels 50,80,…", "how sure the ranges are to be, in percent"],
   ],
   options: {
     store: { type: "string" },
