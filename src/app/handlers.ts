@@ -24,7 +24,7 @@ import { importSales, startClassFromFile } from "./importSales.ts";
 import { issueSheet, previewSheet, verifySheet } from "./issueSheet.ts";
 import { leaveOutHeldBack, listHeldBack, mendHeldBack } from "./mendHeldBack.ts";
 import { openDemo } from "./openDemo.ts";
-import { pairOf } from "./pairOf.ts";
+import { ifPutIn, pairOf } from "./pairOf.ts";
 import type { Ports } from "./ports.ts";
 import { previewImport } from "./previewImport.ts";
 import { previewWaysOn } from "./previewWaysOn.ts";
@@ -84,6 +84,7 @@ export function createHandlers(ports: Ports): Handlers {
     health: (input) => checkHealth(ports, memory, input),
     everySet: (input) => everySet(ports, memory, sets, input),
     pairOf: (input) => pairOf(ports, memory, input),
+    ifPutIn: (input) => ifPutIn(ports, memory, input),
     priceLot: (input) => priceLot(ports, memory, input),
     waysOn: (input) => previewWaysOn(ports, memory, input),
     saveEdition: (input) => saveEdition(ports, input),

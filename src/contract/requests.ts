@@ -21,6 +21,7 @@ import type { PricedLot } from "../domain/lot.ts";
 import type { ModelHealth } from "../domain/modelHealth.ts";
 import type { MovingReport } from "../domain/movingTogether.ts";
 import type { Edition, PriceModel } from "../domain/priceModel.ts";
+import type { PuttingIn } from "../domain/puttingIn.ts";
 import type { Sale } from "../domain/sale.ts";
 import type { SheetRecord, VerificationReport } from "../domain/sheetRecord.ts";
 import type { Subject } from "../domain/subject.ts";
@@ -274,6 +275,13 @@ export const requestInputs = {
     alwaysOut: z.array(z.string()).max(200).optional(),
   }),
   priceLot: z.object({ classId: id, model: priceModelInput, subjects: z.array(subjectInput).min(1).max(500), levels }),
+  /** What each left-out attribute would do, alone put in; money is read at the average price of the model in use. */
+  ifPutIn: z.object({
+    classId: id,
+    model: priceModelInput,
+    subject: subjectInput.nullable(),
+    averagePrice: z.number().positive(),
+  }),
   /** How two attributes move together among the evidence. */
   pairOf: z.object({
     classId: id,
@@ -373,6 +381,7 @@ export interface RequestOutputs {
   priceLot: PricedLot;
   /** Null where there is no picture of the two. */
   pairOf: AttributePair | null;
+  ifPutIn: readonly PuttingIn[];
   /** What moves together, and every way on worked out before it is applied. */
   waysOn: MovingReport;
   saveEdition: Edition;
