@@ -2,7 +2,6 @@
 import { useMemo, useState } from "react";
 import type { Ledger, ModelReport } from "../../domain/appraisal.ts";
 import { formatMoney, formatNumber, formatSigned, lowerStart, roundTo } from "../../domain/format.ts";
-import type { PriceModel } from "../../domain/priceModel.ts";
 import {
   type BarScale,
   barAt,
@@ -14,11 +13,12 @@ import {
 } from "../charts/CarryOverBars.tsx";
 import { rowStep } from "../charts/figures.ts";
 import { useWidth } from "../charts/useWidth.ts";
-import { SectionHeading, TextLink } from "../parts/index.ts";
+import { SectionHeading } from "../parts/index.ts";
 import type { Workbench } from "../workbench/workbench.ts";
 import { type LedgerColumn, type PrintedRow, printLedger } from "./ledgerTable.ts";
 import { PairFigure, type PairKeys, usePair } from "./PairFigure.tsx";
 import css from "./PriceModelPlace.module.css";
+import { PutInLines, usePutIn } from "./PutInLines.tsx";
 
 interface CarryOverLedgerProps {
   readonly bench: Workbench;
@@ -46,6 +46,7 @@ export function CarryOverLedger({ bench, ledger, report, currencyCode }: CarryOv
   );
   const chosen = rows.find((row) => row.id === chosenId) ?? hottest(rows);
   const pair = usePair(bench, pairKeys(chosen));
+  const coming = usePutIn(bench, report.averagePrice, ledger.leftOutOwn.length > 0);
   if (rows.length === 0) return null;
   return (
     <>
@@ -85,7 +86,8 @@ export function CarryOverLedger({ bench, ledger, report, currencyCode }: CarryOv
         </p>
       )}
       {pair === null || chosen?.carriesFor == null ? null : <PairFigure pair={pair} />}
-      <LeftOutOwn bench={bench} ledger={ledger} currencyCode={currencyCode} />
+      <LeftOutOwn ledger={ledger} currencyCode={currencyCode} />
+      {coming === null || ledger.leftOutOwn.length === 0 ? null : <PutInLines bench={bench} found={coming} />}
     </>
   );
 }
@@ -234,18 +236,8 @@ function LedgerRowView({ row, columns, scale, currencyCode, hasRange, isChosen, 
   );
 }
 
-function putIn(model: PriceModel, key: string): PriceModel {
-  return { ...model, leftOut: model.leftOut.filter((one) => one !== key) };
-}
-
 /** What the left-out attributes say beside the whole reference set. */
-interface LeftOutOwnProps {
-  readonly bench: Workbench;
-  readonly ledger: Ledger;
-  readonly currencyCode: string;
-}
-
-function LeftOutOwn({ bench, ledger, currencyCode }: LeftOutOwnProps) {
+function LeftOutOwn({ ledger, currencyCode }: { ledger: Ledger; currencyCode: string }) {
   if (ledger.leftOutOwn.length === 0) {
     return <p className="small soft">Parts are rounded to add up.</p>;
   }
@@ -262,12 +254,6 @@ function LeftOutOwn({ bench, ledger, currencyCode }: LeftOutOwnProps) {
             {formatSigned(roundTo(one.money, step(one.money)))}
           </span>{" "}
           ({one.stepWords})
-          {one.key === ledger.leftOutOwn[index + 1]?.key ? null : (
-            <>
-              {" "}
-              <TextLink onPress={() => bench.changeModel((now) => putIn(now, one.key))}>Put it in</TextLink>
-            </>
-          )}
         </span>
       ))}
       . Parts are rounded to add up.
