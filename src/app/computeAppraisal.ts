@@ -13,6 +13,7 @@ import { selectEvidence } from "../evidence/selectEvidence.ts";
 import { carryOver } from "../explanation/carryOver.ts";
 import { nearSales } from "../explanation/nearSales.ts";
 import { pull, pullWeights } from "../explanation/pull.ts";
+import { pullBySource } from "../explanation/pullBySource.ts";
 import { summariseSets } from "../explanation/setSummary.ts";
 import { accountForFit, errorsFor } from "../hedonic/accountForFit.ts";
 import { buildDesign } from "../hedonic/buildDesign.ts";
@@ -205,13 +206,14 @@ function pricePart(
 ): PricePart {
   const { assetClass, sales, levels } = input;
   const weights = pullWeights(short, row);
+  const refitRule = refitRuleOf(short, input.model);
   const range = chooseRange({
     fit: short,
     row,
     levels,
     model: input.model,
     isExact: estimated.exactRange,
-    refitRule: refitRuleOf(short, input.model),
+    refitRule,
   });
   const price = {
     ...estimatePrice(short, row, levels, marketHeldAt(short.design, subject), errors),
@@ -226,14 +228,17 @@ function pricePart(
     subject,
     price,
     builtUp: buildUp(short, row, subject),
-    pull: pull({
-      fit: short,
-      row,
-      sales,
-      fitted: price.fitted,
-      amount: price.amount,
-      currencyCode: assetClass.currencyCode,
-    }),
+    pull: {
+      ...pull({
+        fit: short,
+        row,
+        sales,
+        fitted: price.fitted,
+        amount: price.amount,
+        currencyCode: assetClass.currencyCode,
+      }),
+      bySource: pullBySource({ fit: short, row, sales, weights, refitRule }),
+    },
     near: nearSales({
       fit: short,
       row,

@@ -314,6 +314,17 @@ export interface PullReport {
   readonly restCount: number;
   readonly negativeCount: number;
   readonly sentence: string;
+  /** Sources that weigh most first; empty where there is one only. */
+  readonly bySource?: readonly SourcePull[];
+}
+
+export interface SourcePull {
+  readonly source: string;
+  /** Its sales among the evidence, and their weight together. */
+  readonly count: number;
+  readonly weight: number;
+  /** Null where the other sales cannot carry the coefficients; not there where fitting again would take long. */
+  readonly priceWithout?: number | null;
 }
 
 /** A sale much like the subject, adjusted to it by the model. */

@@ -122,6 +122,33 @@ describe("each demo class", () => {
     expect(Math.abs(switched.price! / without.priced!.price.amount - 1)).toBeLessThan(1e-10);
   });
 
+  test("has the pull of each source, and the price without it that a fit of the other sales gives", () => {
+    for (const { evidence } of sheets) {
+      const { table, pull } = { table: evidence.evidence, pull: evidence.appraisal.priced!.pull };
+      const sources = new Set(table.rows.map(({ source }) => source));
+      expect(pull.bySource).toHaveLength(sources.size === 1 ? 0 : sources.size);
+      if (sources.size === 1) continue;
+      const all = pull.top.reduce((sum, { weight }) => sum + weight, pull.restWeight);
+      expect(Math.abs(pull.bySource!.reduce((sum, { weight }) => sum + weight, -all))).toBeLessThan(1e-10);
+      const lastDay = (rows: typeof table.rows): string => rows.reduce((a, b) => (b.soldOn > a.soldOn ? b : a)).soldOn;
+      let compared = 0;
+      for (const { source, count, priceWithout } of pull.bySource!) {
+        const rows = table.rows.filter((row) => row.source !== source);
+        expect(rows.length).toBe(table.rows.length - count);
+        // Only its sales have some level: no fit of these columns without it.
+        const channels = new Set(rows.map(({ channel }) => channel));
+        expect(priceWithout === null).toBe(table.rows.some(({ channel }) => !channels.has(channel)));
+        // The market is held after the last sale; a source with that sale moves it in a fit of the others.
+        if (priceWithout === null || lastDay(rows) !== lastDay(table.rows)) continue;
+        compared++;
+        const { amount } = recomputeFromSheet({ ...evidence, evidence: { ...table, rows } }).priced!.price;
+        expect(Math.abs(priceWithout! / amount - 1)).toBeLessThan(1e-10);
+      }
+      expect(compared).toBeGreaterThan(1);
+    }
+    expect(sheets.some(({ evidence }) => evidence.appraisal.priced!.pull.bySource!.length > 1)).toBe(true);
+  });
+
   test("is fitted again from its sheet to the last bit", async () => {
     for (const { bytes } of sheets) {
       const report = await verify(bytes);

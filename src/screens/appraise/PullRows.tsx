@@ -1,6 +1,6 @@
 /** Sales that pull hardest: weight as a bar, what was sold, how it differs, and what the price moves by without it. */
 import { useState } from "react";
-import type { ModelReport, PricePart, Pull } from "../../domain/appraisal.ts";
+import type { ModelReport, PricePart, Pull, SourcePull } from "../../domain/appraisal.ts";
 import { formatDay, formatNumber, formatSigned, lowerStart, niceStep, roundTo } from "../../domain/format.ts";
 import { SectionHeading, TextLink } from "../parts/index.ts";
 import css from "./PullRows.module.css";
@@ -72,8 +72,53 @@ export function PullRows({ priced, report, currencyCode }: PullRowsProps) {
           The other {formatNumber(restCount)} sales weigh {formatNumber(restWeight * 100, 1)} % together.
         </p>
       ) : null}
+      <SourceRows sources={priced.pull.bySource ?? []} amount={priced.price.amount} />
     </section>
   );
+}
+
+function SourceRows({ sources, amount }: { sources: readonly SourcePull[]; amount: number }) {
+  if (sources.length === 0) return null;
+  return (
+    <div className={css.scroll}>
+      <table>
+        <caption className="vh">Sources by pull on this price</caption>
+        <thead>
+          <tr>
+            <th scope="col">source</th>
+            <th scope="col" className="num">
+              sales
+            </th>
+            <th scope="col" className="num">
+              pull, %
+            </th>
+            <th scope="col" className="num">
+              without it
+            </th>
+          </tr>
+        </thead>
+        <tbody>
+          {sources.map(({ source, count, weight, priceWithout }) => (
+            <tr key={source}>
+              <th scope="row">{source === "" ? "not stated" : source}</th>
+              <td className="num">{formatNumber(count)}</td>
+              <td className="num">{formatNumber(weight * 100, 1)}</td>
+              <td className="num">
+                <b>{priceWithout === undefined ? "" : moveWords(priceWithout, amount)}</b>
+              </td>
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </div>
+  );
+}
+
+function moveWords(priceWithout: number | null, amount: number): string {
+  if (priceWithout === null) return "no fit";
+  const move = priceWithout - amount;
+  const rounded = roundTo(move, Math.max(1, Math.min(10, niceStep(Math.abs(move) / 10))));
+  return rounded === 0 ? "±0" : formatSigned(rounded);
 }
 
 interface RowProps {
@@ -85,8 +130,6 @@ interface RowProps {
 
 function Row({ pull, amount, largest, shown }: RowProps) {
   const width = (BAR * Math.abs(pull.weight)) / largest;
-  const move = pull.priceWithout === null ? null : pull.priceWithout - amount;
-  const step = Math.max(1, Math.min(10, niceStep(Math.abs(move ?? 0) / 10)));
   return (
     <tr>
       <th
@@ -117,7 +160,7 @@ function Row({ pull, amount, largest, shown }: RowProps) {
         </td>
       ))}
       <td className="num">
-        <b>{move === null ? "no fit" : roundTo(move, step) === 0 ? "±0" : formatSigned(roundTo(move, step))}</b>
+        <b>{moveWords(pull.priceWithout, amount)}</b>
       </td>
     </tr>
   );

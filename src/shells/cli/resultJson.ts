@@ -96,6 +96,7 @@ function pricedJson(priced: PricePart | null, nameOf: Naming) {
     builtUp: { ...priced.builtUp, steps: priced.builtUp.steps.map((step) => ({ ...step, key: nameOf(step.key) })) },
     notKnown: priced.notKnown.map((one) => ({ ...one, key: nameOf(one.key) })),
     pull: pull.top,
+    pullBySource: pull.bySource,
     pullRest: { count: pull.restCount, weight: pull.restWeight },
     reach: { ...reach, attributes: reach.attributes.map((one) => ({ ...one, key: nameOf(one.key) })) },
   };

@@ -138,7 +138,16 @@ function pullText(priced: PricePart, currencyCode: string): string {
       formatPercent(one.weight, 2),
       one.priceWithout === null ? "" : formatMoney(one.priceWithout, currencyCode),
     ]);
-  return `Pull\n${pull.sentence}\n${table(["sale", "item", "sold at", "weight", "price without it"], rows, 2)}`;
+  const listed = `Pull\n${pull.sentence}\n${table(["sale", "item", "sold at", "weight", "price without it"], rows, 2)}`;
+  const { bySource = [] } = pull;
+  if (bySource.length === 0) return listed;
+  const sources = bySource.map(({ source, count, weight, priceWithout }) => [
+    source,
+    formatNumber(count),
+    formatPercent(weight, 1),
+    priceWithout == null ? (priceWithout === null ? "no fit" : "") : formatMoney(priceWithout, currencyCode),
+  ]);
+  return `${listed}\n\nPull of each source\n${table(["source", "sales", "weight", "price without it"], sources)}`;
 }
 
 function pricedParts(priced: PricePart, currencyCode: string): string[] {
