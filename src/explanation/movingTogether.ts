@@ -19,11 +19,11 @@ const FAR_TIMES = 3;
 export function movingTogether(fit: Fit, row: SubjectRow | null): MovingTogether {
   const priceSentence = row === null ? null : priceWords(fit, row);
   if (fit.rule.penalty !== null)
-    return { groups: [], sentence: "Effects are drawn in, which is what moving together is met with.", priceSentence };
+    return { groups: [], sentence: "Coefficients are drawn in, which is what moving together is met with.", priceSentence };
   if (fit.groups.length < 2)
     return { groups: [], sentence: "Fewer than two attributes are in the model.", priceSentence };
   const groups = groupsOf(fit);
-  const sentence = groups[0]?.sentence ?? "No attributes move together so much that single effects cannot be told.";
+  const sentence = groups[0]?.sentence ?? "No attributes move together so much that single coefficients cannot be told.";
   return { groups, sentence, priceSentence };
 }
 
@@ -69,7 +69,7 @@ function groupOf(
   const members = tied.map(({ group: { key, label }, share }) => ({ key, label, times: times.get(key)!, tied: share }));
   const names = listWords(members.map(({ label }, at) => (at === 0 ? label : lowerStart(label))));
   const wide = listWords(members.map((one) => formatNumber(one.times, 1)));
-  const sentence = `${names} move together: the ranges of their effects are ${wide} × as wide as they would be alone.`;
+  const sentence = `${names} move together: the ranges of their coefficients are ${wide} × as wide as they would be alone.`;
   return { members, conditionIndex, sentence };
 }
 
