@@ -19,11 +19,16 @@ const FAR_TIMES = 3;
 export function movingTogether(fit: Fit, row: SubjectRow | null): MovingTogether {
   const priceSentence = row === null ? null : priceWords(fit, row);
   if (fit.rule.penalty !== null)
-    return { groups: [], sentence: "Coefficients are drawn in, which is what moving together is met with.", priceSentence };
+    return {
+      groups: [],
+      sentence: "Coefficients are drawn in, which is what moving together is met with.",
+      priceSentence,
+    };
   if (fit.groups.length < 2)
     return { groups: [], sentence: "Fewer than two attributes are in the model.", priceSentence };
   const groups = groupsOf(fit);
-  const sentence = groups[0]?.sentence ?? "No attributes move together so much that single coefficients cannot be told.";
+  const sentence =
+    groups[0]?.sentence ?? "No attributes move together so much that single coefficients cannot be told.";
   return { groups, sentence, priceSentence };
 }
 

@@ -40,8 +40,8 @@ export function WaysOn({ bench, found }: { bench: Workbench; found: MovingReport
         <div className={css.scroll}>
           <table className={css.ways}>
             <caption>
-              Ways on, each worked out before it is applied, {currencyCode}: price with 9 in 10, what the coefficients then
-              read with 19 in 20
+              Ways on, each worked out before it is applied, {currencyCode}: price with 9 in 10, what the coefficients
+              then read with 19 in 20
             </caption>
             <thead>
               <tr>
